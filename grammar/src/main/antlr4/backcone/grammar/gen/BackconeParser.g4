@@ -1,0 +1,149 @@
+/*
+ * One grammar for drives and handbook texts. What may stand where is checked on the tree.
+ *
+ * The token list has already decided where an entry starts, what it is and where it ends (backcone.grammar.Tokens), and
+ * its braces are balanced. So every choice here is made on one token or two, an error never looks past its entry, and
+ * every token list is a file: `rest` takes what an entry could not use.
+ */
+parser grammar BackconeParser;
+
+options { tokenVocab = BackconeLexer; }
+
+file : entries EOF ;
+entries : (entry | end)* ;
+end : NL | SEMI ;
+
+entry
+    : (fact | factFor | requirement | block | declaration | stray
+      | drive | use | let | rate | require | assertion | override | accept | waive | variant | family
+      | quantity | source | choice | kind | chapter | method | include | function | table | parts | part | role
+      | collect | cases | eachBlock | editions | relation | check | limit | applies | example | gives)
+      rest?
+    ;
+
+/** What an entry could not use, up to its end. Bodies in it still hold entries. */
+rest : (junk | body | rows | arms | words)+ ;
+junk
+    : ~(NL | SEMI | LBRACE | ROWS_OPEN | ARMS_OPEN | WORDS_OPEN | RBRACE | WORD_COMMA
+      | FACT | FACT_FOR | REQUIREMENT | BLOCK | DECLARATION | STRAY | ROW | ARM | WORD
+      | DRIVE | USE | LET | RATE | REQUIRE | ASSERT | OVERRIDE | ACCEPT | WAIVE | VARIANT | FAMILY
+      | QUANTITY | SOURCE | CHOICE | KIND | CHAPTER | METHOD | INCLUDE | FUNCTION | TABLE | PARTS | PART | ROLE
+      | COLLECT | CASES | EACH_BLOCK | EDITIONS | RELATION | CHECK | LIMIT | APPLIES | EXAMPLE | GIVES)
+    ;
+stray : STRAY ;
+
+body : LBRACE entries RBRACE ;
+rows : ROWS_OPEN (row | end)* RBRACE ;
+row : ROW cell (PIPE cell)* rest? ;
+cell : value (COMMA value)* ;
+arms : ARMS_OPEN (arm | end)* RBRACE ;
+arm : ARM (ELSE | expr) ARROW expr rest? ;
+words : WORDS_OPEN (word | WORD_COMMA | end)* RBRACE ;
+word : WORD NAME text? rest? ;
+
+// ---- blocks and facts
+
+fact : FACT path ASSIGN value note* ;
+factFor : FACT_FOR id=NAME FOR other=NAME ASSIGN value note* ;
+requirement : REQUIREMENT path cmpSign sum note* ;
+block : BLOCK head=NAME id=NAME? (ON shaft=NAME)? text? body? ;
+declaration : DECLARATION id=NAME symbol=NAME? text? COLON ofKind=NAME (IN UNIT)? definition? note* ;
+definition : ASSIGN value | DEFAULT value | RELATED expr ;
+
+// ---- drives
+
+drive : DRIVE id=NAME text? body ;
+use : USE (text (AS alias=NAME)? | id=NAME FOR path) note* ;
+let : LET id=NAME ASSIGN value note* ;
+rate : RATE path BY id=NAME rateWord* body? ;
+rateWord : EDITION NUMBER | AS NAME | UNDER NAME ;
+require : REQUIRE expr (BETWEEN low=sum AND high=sum | WITHIN tolerance=sum (OF middle=sum)?)? note* ;
+assertion : ASSERT expr note* ;
+override : OVERRIDE path ASSIGN value note* ;
+accept : ACCEPT path cmpSign sum note* ;
+waive : WAIVE path note* ;
+variant : VARIANT id=NAME OF base=NAME text? body ;
+family : FAMILY id=NAME OF base=NAME text? rows ;
+
+// ---- handbook
+
+quantity : QUANTITY id=NAME IN UNIT text? WHOLE? (UNLIKE names)? ;
+source : SOURCE id=NAME text ;
+choice : CHOICE id=NAME text? words ;
+kind : KIND id=NAME (IS base=NAME)? text? body ;
+chapter : CHAPTER id=NAME FOR ofKind=NAME text? body ;
+method : METHOD id=NAME FOR ofKind=NAME text? body ;
+include : INCLUDE names ;
+function : FUNCTION id=NAME LPAREN parameters? RPAREN text? COLON ofKind=NAME ASSIGN expr note* ;
+parameters : parameter (COMMA parameter)* ;
+parameter : id=NAME COLON ofKind=NAME ;
+table : TABLE id=NAME text? BY names (COLON ofKind=NAME (IN UNIT)?)? note* rows ;
+parts : PARTS names COLON ofKind=NAME (AS alias=NAME)? ;
+part : PART id=NAME COLON ofKind=NAME text? ;
+role : ROLE id=NAME ASSIGN expr ;
+collect : COLLECT id=NAME ASSIGN ofKind=NAME WHERE expr ;
+cases : CASES id=NAME words ;
+eachBlock : EACH_BLOCK id=NAME body ;
+editions : EDITIONS NUMBER (COMMA NUMBER)* ;
+relation : RELATION text? (WHEN condition=expr)? COLON equation=expr note* ;
+check : CHECK id=NAME text? (COLON ofKind=NAME)? ASSIGN expr note* ;
+limit : LIMIT id=NAME text? (AS level=NAME)? (FOR names)? COLON expr note* ;
+applies : APPLIES WHEN expr note* ;
+example : EXAMPLE text note* body ;
+gives : GIVES path ASSIGN value (WITHIN sum)? ;
+
+names : NAME (COMMA NAME)* ;
+text : STRING | OPENSTRING ;
+
+// ---- notes
+
+note
+    : PER (said=text | id=NAME said=text?) (ON DATE)? (COMMA trust=NAME seen=text?)?   # perNote
+    | MEASURED text?                                             # measuredNote
+    | ASSUMED (BECAUSE text)?                                    # assumedNote
+    | BECAUSE text                                               # becauseNote
+    | UNTIL DATE                                                 # untilNote
+    | BY text                                                    # byNote
+    | ELSE text                                                  # elseNote
+    | TAKING taken (COMMA taken)*                                # takingNote
+    | READING id=NAME ASSIGN expr                                   # readingNote
+    | RANGE low=sum TO high=sum                                           # rangeNote
+    | ROWS rowWord (COMMA rowWord)*                              # rowsNote
+    | WORST NAME                                                 # worstNote
+    | IS NAME                                                    # isNote
+    | NEEDED text?                                               # neededNote
+    | OFFER expr                                                 # offerNote
+    | WITHIN sum                                                 # withinNote
+    ;
+taken : path (AS alias=NAME)? IN UNIT ;
+rowWord : NAME NAME? ;
+
+// ---- values and expressions
+
+value
+    : head=NAME id=NAME                                                  # refValue
+    | expr (DOTDOT high=sum | TOL from=sum DOTDOT to=sum | ON DATE)?          # exprValue
+    ;
+expr : conj (OR conj)* ;
+conj : neg (AND neg)* ;
+neg : NOT* compare ;
+compare : sum (cmpSign sum)* ;
+cmpSign : EQ | NE | LE | GE | LT | GT ;
+sum : term ((PLUS | MINUS) term)* ;
+term : unary ((STAR | SLASH) unary)* ;
+unary : (MINUS | PLUS)* power ;
+power : post (CARET (MINUS | PLUS)* post)* ;
+post : primary (IN UNIT)* ;
+primary
+    : NUMBER UNIT?                                               # numberExpr
+    | text                                                       # textExpr
+    | DATE                                                       # dateExpr
+    | LPAREN expr RPAREN                                         # parenExpr
+    | path (LPAREN (arg (COMMA arg)*)? RPAREN (DOT NAME)*)?      # pathExpr
+    | GIVEN path                                                 # givenExpr
+    | CHOOSE sum? arms                                           # chooseExpr
+    | ROOT OF left=sum EQ right=sum BETWEEN low=sum AND high=sum (ELSE text)?        # rootExpr
+    | SETTLE what=sum FROM begin=sum WITHIN tolerance=sum AT MOST most=sum (ELSE text)?    # settleExpr
+    ;
+arg : EACH NAME (COLON expr)? | expr ;
+path : NAME (DOT NAME)* ;

@@ -1,0 +1,429 @@
+package backcone.grammar;
+
+import backcone.grammar.gen.BackconeLexer;
+import java.util.List;
+import org.jspecify.annotations.Nullable;
+
+/** Looks ahead on the token list: what starts here, and does this line go on with the one above. */
+final class EntryStarts {
+    private final List<Tok> in;
+
+    EntryStarts(List<Tok> in) {
+        this.in = in;
+    }
+
+    private Tok at(int index) {
+        return in.get(Math.min(index, in.size() - 1));
+    }
+
+    private int type(int index) {
+        return at(index).getType();
+    }
+
+    private boolean isName(int index) {
+        return type(index) == BackconeLexer.NAME;
+    }
+
+    private boolean isText(int index) {
+        int t = type(index);
+        return t == BackconeLexer.STRING || t == BackconeLexer.OPENSTRING;
+    }
+
+    private boolean isEnd(int index) {
+        int t = type(index);
+        return t == BackconeLexer.NL
+                || t == BackconeLexer.SEMI
+                || t == BackconeLexer.RBRACE
+                || t == BackconeLexer.EOF;
+    }
+
+    static boolean isComparison(int type) {
+        return type >= BackconeLexer.EQ && type <= BackconeLexer.GT;
+    }
+
+    static boolean isEntryWord(int type) {
+        return type >= BackconeLexer.DRIVE && type <= BackconeLexer.GIVES;
+    }
+
+    /** The index behind the dotted name that starts at {@code index}. */
+    int behindPath(int index) {
+        int k = index + 1;
+        while (type(k) == BackconeLexer.DOT && isName(k + 1)) {
+            k += 2;
+        }
+        return k;
+    }
+
+    /** True when the first line of a brace holds a bar: it is a table then. */
+    boolean firstLineHasBar(int brace) {
+        int k = brace + 1;
+        while (type(k) == BackconeLexer.NL) {
+            k++;
+        }
+        for (; ; k++) {
+            switch (type(k)) {
+                case BackconeLexer.PIPE:
+                    return true;
+                case BackconeLexer.NL:
+                case BackconeLexer.LBRACE:
+                case BackconeLexer.RBRACE:
+                case BackconeLexer.SEMI:
+                case BackconeLexer.EOF:
+                    return false;
+                default:
+                    break;
+            }
+        }
+    }
+
+    // ---- what starts here
+
+    /** The marker or entry word of the entry that starts at {@code index}; sets how many names its head may hold. */
+    int classify(int index, Lines.Item item) {
+        item.headNames = 1;
+        if (!isName(index)) {
+            item.headNames = 0;
+            return BackconeLexer.STRAY;
+        }
+        Tok first = at(index);
+        String word = first.getText();
+        if (word.equals("each")) {
+            return BackconeLexer.EACH_BLOCK;
+        }
+        if (Words.reserved(word) != null) {
+            item.headNames = 0;
+            return BackconeLexer.STRAY;
+        }
+        int k = behindPath(index);
+        int next = type(k);
+        if (next == BackconeLexer.ASSIGN) {
+            return BackconeLexer.FACT;
+        }
+        if (isComparison(next)) {
+            return BackconeLexer.REQUIREMENT;
+        }
+        if (k > index + 1 || next == BackconeLexer.DOT) {
+            return BackconeLexer.FACT;
+        }
+        Integer entryWord = entryWord(word, index);
+        if (entryWord != null) {
+            boolean expressionFollows = entryWord == BackconeLexer.REQUIRE
+                    || entryWord == BackconeLexer.ASSERT
+                    || entryWord == BackconeLexer.APPLIES
+                    || entryWord == BackconeLexer.RELATION;
+            item.headNames = expressionFollows ? 0 : 1;
+            return entryWord;
+        }
+        if (next == BackconeLexer.COLON) {
+            return BackconeLexer.DECLARATION;
+        }
+        if (isText(k)) {
+            return behindText(k);
+        }
+        if (isName(k)) {
+            return twoNames(index, k, item);
+        }
+        return next == BackconeLexer.LBRACE ? BackconeLexer.BLOCK : BackconeLexer.FACT;
+    }
+
+    /** {@code NAME "…"}: a declaration when a colon follows or was forgotten, else a block with its title. */
+    private int behindText(int text) {
+        int next = type(text + 1);
+        return next == BackconeLexer.COLON || next == BackconeLexer.NAME || next == BackconeLexer.ASSIGN
+                ? BackconeLexer.DECLARATION
+                : BackconeLexer.BLOCK;
+    }
+
+    private int twoNames(int index, int second, Lines.Item item) {
+        String word = at(second).getText();
+        int next = type(second + 1);
+        if (word.equals("on")) {
+            return BackconeLexer.BLOCK;
+        }
+        if (word.equals("for") && (isName(second + 1) || isEnd(second + 1))) {
+            return BackconeLexer.FACT_FOR;
+        }
+        boolean clause = Words.inside(word) != null
+                && (isName(second + 1) || isText(second + 1) || type(second + 1) == BackconeLexer.NUMBER)
+                && !lineEndsWithBrace(second);
+        if (clause && next != BackconeLexer.COLON && !colonBehindText(second + 1)) {
+            boolean declares = word.equals("default") || word.equals("range") || word.equals("is");
+            return declares ? BackconeLexer.DECLARATION : BackconeLexer.FACT;
+        }
+        if (next == BackconeLexer.COLON) {
+            item.headNames = 2;
+            return BackconeLexer.DECLARATION;
+        }
+        if (isText(second + 1)) {
+            item.headNames = 2;
+            return behindText(second + 1);
+        }
+        if (next == BackconeLexer.ASSIGN || next == BackconeLexer.DOT || next == BackconeLexer.LPAREN) {
+            return BackconeLexer.FACT;
+        }
+        if (isComparison(next)) {
+            return BackconeLexer.REQUIREMENT;
+        }
+        item.headNames = 2;
+        return BackconeLexer.BLOCK;
+    }
+
+    private boolean colonBehindText(int index) {
+        return isText(index) && type(index + 1) == BackconeLexer.COLON;
+    }
+
+    private boolean lineEndsWithBrace(int index) {
+        int k = index;
+        while (!isEnd(k)) {
+            if (type(k) == BackconeLexer.LBRACE) {
+                return true;
+            }
+            k++;
+        }
+        return false;
+    }
+
+    /** The entry word at {@code index}, when what follows shows that it is one and no name. */
+    private @Nullable Integer entryWord(String word, int index) {
+        Integer type = Words.entry(word);
+        if (type == null) {
+            return null;
+        }
+        int next = index + 1;
+        if (isEnd(next)) {
+            return type;
+        }
+        boolean fits;
+        switch (type) {
+            case BackconeLexer.USE:
+                fits = isName(next) || isText(next) && type(next + 1) != BackconeLexer.COLON;
+                break;
+            case BackconeLexer.EDITIONS:
+                fits = type(next) == BackconeLexer.NUMBER;
+                break;
+            case BackconeLexer.RELATION:
+                fits = isText(next) || type(next) == BackconeLexer.COLON || at(next).is("when");
+                break;
+            case BackconeLexer.EXAMPLE:
+                fits = isText(next) && type(next + 1) != BackconeLexer.COLON;
+                break;
+            case BackconeLexer.REQUIRE:
+            case BackconeLexer.ASSERT:
+                fits = isName(next)
+                        || type(next) == BackconeLexer.NUMBER
+                        || type(next) == BackconeLexer.LPAREN
+                        || type(next) == BackconeLexer.MINUS;
+                break;
+            default:
+                fits = isName(next);
+        }
+        return fits ? type : null;
+    }
+
+    // ---- does the line go on
+
+    /** Does the line at {@code index} go on with the entry above, outside of brackets? */
+    boolean goesOn(int index, Lines.Item item, boolean inArms) {
+        switch (type(index)) {
+            case BackconeLexer.STAR:
+            case BackconeLexer.SLASH:
+            case BackconeLexer.PLUS:
+            case BackconeLexer.MINUS:
+            case BackconeLexer.CARET:
+            case BackconeLexer.ASSIGN:
+            case BackconeLexer.EQ:
+            case BackconeLexer.NE:
+            case BackconeLexer.LE:
+            case BackconeLexer.GE:
+            case BackconeLexer.LT:
+            case BackconeLexer.GT:
+            case BackconeLexer.DOTDOT:
+            case BackconeLexer.COLON:
+            case BackconeLexer.COMMA:
+            case BackconeLexer.ARROW:
+                return true;
+            case BackconeLexer.LBRACE:
+                return takesBody(item);
+            case BackconeLexer.NAME:
+                return clauseGoesOn(index, item, inArms);
+            default:
+                return false;
+        }
+    }
+
+    private static boolean takesBody(Lines.Item item) {
+        switch (item.type) {
+            case BackconeLexer.BLOCK:
+            case BackconeLexer.DRIVE:
+            case BackconeLexer.RATE:
+            case BackconeLexer.VARIANT:
+            case BackconeLexer.FAMILY:
+            case BackconeLexer.CHOICE:
+            case BackconeLexer.KIND:
+            case BackconeLexer.CHAPTER:
+            case BackconeLexer.METHOD:
+            case BackconeLexer.TABLE:
+            case BackconeLexer.CASES:
+            case BackconeLexer.EACH_BLOCK:
+            case BackconeLexer.EXAMPLE:
+                return true;
+            default:
+                return item.choosing;
+        }
+    }
+
+    private boolean clauseGoesOn(int index, Lines.Item item, boolean inArms) {
+        String word = at(index).getText();
+        switch (word) {
+            case "and":
+            case "or":
+            case "in":
+                return true;
+            case "else":
+                return !inArms || isText(index + 1);
+            default:
+                break;
+        }
+        if (Words.inside(word) == null || isEntryLike(index)) {
+            return false;
+        }
+        int next = index + 1;
+        boolean declares = item.type == BackconeLexer.DECLARATION;
+        switch (word) {
+            case "per":
+                return isName(next) || isText(next) || isEnd(next);
+            case "taking":
+            case "because":
+            case "until":
+            case "within":
+                return true;
+            case "reading":
+                return isName(next) || isEnd(next);
+            case "rows":
+                return item.type == BackconeLexer.TABLE;
+            case "measured":
+            case "assumed":
+                return isEnd(next) || isText(next) || isName(next);
+            case "by":
+                return isText(next) || item.type == BackconeLexer.RATE || item.type == BackconeLexer.TABLE;
+            case "range":
+            case "default":
+            case "worst":
+            case "needed":
+            case "offer":
+                return declares && !isEnd(next);
+            case "relation":
+                return declares && !isEnd(next) && !at(next).is("when");
+            case "is":
+                return declares && isName(next) || item.type == BackconeLexer.KIND;
+            case "as":
+            case "under":
+                return item.type == BackconeLexer.RATE && isName(next);
+            case "between":
+                return item.type == BackconeLexer.REQUIRE || item.rooting;
+            case "from":
+            case "at":
+                return item.settling;
+            case "on":
+                return type(next) == BackconeLexer.DATE;
+            case "where":
+                return item.type == BackconeLexer.COLLECT;
+            default:
+                return false;
+        }
+    }
+
+    /** A fact, a requirement, a declaration or a block, whatever its first word spells. */
+    private boolean isEntryLike(int index) {
+        int k = behindPath(index);
+        if (type(k) == BackconeLexer.ASSIGN || isComparison(type(k))) {
+            return true;
+        }
+        if (k > index + 1) {
+            return false;
+        }
+        if (type(k) == BackconeLexer.LBRACE) {
+            return true;
+        }
+        if (isName(k)) {
+            k++;
+        }
+        if (isText(k)) {
+            k++;
+        }
+        return type(k) == BackconeLexer.COLON;
+    }
+
+    /** Does the line at {@code index} go on with an expression whose bracket is still open? */
+    boolean goesOnInBracket(int index, boolean inArms, boolean lineIsIncomplete) {
+        switch (type(index)) {
+            case BackconeLexer.RBRACE:
+            case BackconeLexer.LBRACE:
+            case BackconeLexer.SEMI:
+            case BackconeLexer.EOF:
+                return false;
+            case BackconeLexer.NAME:
+                if (!nameGoesOnInBracket(index, lineIsIncomplete)) {
+                    return false;
+                }
+                break;
+            default:
+                break;
+        }
+        return !inArms || !lineHasArrow(index);
+    }
+
+    private boolean nameGoesOnInBracket(int index, boolean lineIsIncomplete) {
+        String word = at(index).getText();
+        if (word.equals("each")) {
+            return !(isName(index + 1) && type(index + 2) == BackconeLexer.LBRACE);
+        }
+        if (word.equals("else")) {
+            return false;
+        }
+        if (Words.reserved(word) != null) {
+            return true;
+        }
+        int k = behindPath(index);
+        int next = type(k);
+        if (next == BackconeLexer.ASSIGN) {
+            return false;
+        }
+        if (isComparison(next)) {
+            return lineIsIncomplete;
+        }
+        if (k > index + 1) {
+            return true;
+        }
+        if (next == BackconeLexer.COLON || next == BackconeLexer.LBRACE || isText(k)) {
+            return false;
+        }
+        if (isName(k)) {
+            String second = at(k).getText();
+            boolean operator = word.equals("given") || word.equals("root") || word.equals("settle");
+            boolean infix = Words.reserved(second) != null || Words.inside(second) != null;
+            return operator || infix;
+        }
+        return !(next == BackconeLexer.NUMBER || next == BackconeLexer.DATE)
+                || word.equals("from")
+                || word.equals("within")
+                || word.equals("between")
+                || word.equals("at");
+    }
+
+    private boolean lineHasArrow(int index) {
+        for (int k = index; ; k++) {
+            switch (type(k)) {
+                case BackconeLexer.ARROW:
+                    return true;
+                case BackconeLexer.NL:
+                case BackconeLexer.EOF:
+                case BackconeLexer.LBRACE:
+                case BackconeLexer.RBRACE:
+                    return false;
+                default:
+                    break;
+            }
+        }
+    }
+}
