@@ -4,7 +4,6 @@ import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.graph.Shapes;
 import backcone.engine.model.LibraryBuilder;
 import backcone.engine.parse.Parser;
-import backcone.engine.parse.TreeCodec;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import java.io.IOException;
@@ -64,13 +63,6 @@ public final class Handbook {
     }
 
     private static FileSyntax tree(String name, FileId id) {
-        try (InputStream in = Handbook.class.getResourceAsStream(FOLDER + name + ".tree")) {
-            if (in != null) {
-                return TreeCodec.read(in.readAllBytes());
-            }
-        } catch (IOException e) {
-            throw new UncheckedIOException(e);
-        }
         String text = text(id);
         return Parser.parse(id, text == null ? "" : text).tree();
     }
