@@ -36,7 +36,6 @@ final class Relations {
                 nested(e, e, e.shape, List.of());
             }
         }
-        if (System.getenv("DBG") != null) { for (RelationUse r : graph.relations) System.err.println(r.ctx.self()+" "+r.def.syntax().meaning()+" active="+r.active+" "+r.slots); }
         boolean progress = true;
         while (progress) {
             progress = false;
@@ -87,7 +86,6 @@ final class Relations {
             if (when != null) {
                 Val v = graph.compiler.eval(when, ctx, Frame.at(def.file(), false));
                 use.active = v instanceof Val.Fixed x && x.is();
-                if (System.getenv("DBG") != null) System.err.println("WHEN "+e+" "+def.syntax().meaning()+" "+v+" "+when);
                 if (v instanceof Val.Truth) {
                     graph.problems.add(Code.NOT_SOLVABLE, def.file(), when.span(), "The condition of a relation speaks of words, references and what is given, not of numbers.");
                 }
