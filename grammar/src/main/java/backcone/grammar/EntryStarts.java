@@ -54,8 +54,8 @@ final class EntryStarts {
         return k;
     }
 
-    /** True when the first line of a brace holds a bar: it is a table then. */
-    boolean firstLineHasBar(int brace) {
+    /** What a brace holds as far as its first line shows: a bar makes it a table, an arrow a choice. */
+    Lines.Holds firstLineHolds(int brace) {
         int k = brace + 1;
         while (type(k) == BackconeLexer.NL) {
             k++;
@@ -63,13 +63,15 @@ final class EntryStarts {
         for (; ; k++) {
             switch (type(k)) {
                 case BackconeLexer.PIPE:
-                    return true;
+                    return Lines.Holds.ROWS;
+                case BackconeLexer.ARROW:
+                    return Lines.Holds.ARMS;
                 case BackconeLexer.NL:
                 case BackconeLexer.LBRACE:
                 case BackconeLexer.RBRACE:
                 case BackconeLexer.SEMI:
                 case BackconeLexer.EOF:
-                    return false;
+                    return Lines.Holds.BODY;
                 default:
                     break;
             }
@@ -334,8 +336,13 @@ final class EntryStarts {
         }
     }
 
+    /** An entry word with what belongs to it. */
+    boolean startsWithEntryWord(int index) {
+        return isName(index) && !isEnd(index + 1) && entryWord(at(index).getText(), index) != null;
+    }
+
     /** A fact, a requirement, a declaration or a block, whatever its first word spells. */
-    private boolean isEntryLike(int index) {
+    boolean isEntryLike(int index) {
         int k = behindPath(index);
         if (type(k) == BackconeLexer.ASSIGN || isComparison(type(k))) {
             return true;

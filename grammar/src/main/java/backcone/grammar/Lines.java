@@ -160,7 +160,9 @@ final class Lines {
             Tok close = Tok.inserted(before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
             out.add(close);
             frames.pop();
-            missing(close);
+            if (before.getType() != BackconeLexer.RBRACE || !before.isInserted()) {
+                missing(close);
+            }
         }
     }
 
@@ -185,6 +187,9 @@ final class Lines {
         if (item.type == 0) {
             start(t);
         }
+        if (t.faulty) {
+            fault();
+        }
         if (item.choosing) {
             holds = Holds.ARMS;
             item.choosing = false;
@@ -193,7 +198,7 @@ final class Lines {
         } else if (item.type == BackconeLexer.CHOICE || item.type == BackconeLexer.CASES) {
             holds = Holds.WORDS;
         } else {
-            holds = starts.firstLineHasBar(i) ? Holds.ROWS : Holds.BODY;
+            holds = starts.firstLineHolds(i);
         }
         switch (holds) {
             case ARMS:
@@ -214,8 +219,12 @@ final class Lines {
     }
 
     private void closeBrace(Tok t) {
-        out.add(t);
         Frame frame = frames.pop();
+        if (t.isInserted()) {
+            // the entry before a forgotten brace is half-typed as a rule: said once, of the brace
+            fault();
+        }
+        out.add(t);
         item = frame.item();
         if (frame.holds() == Holds.ARMS) {
             return;
