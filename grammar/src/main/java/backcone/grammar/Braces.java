@@ -91,7 +91,7 @@ final class Braces {
             }
             before = line;
         }
-        return deeper > flat || deeper + flat == 0;
+        return deeper >= flat;
     }
 
     private int type(int index) {

@@ -89,7 +89,7 @@ final class EntryStarts {
         }
         Tok first = at(index);
         String word = first.getText();
-        if (word.equals("each")) {
+        if (word.equals("each") && (isName(index + 1) || isEnd(index + 1))) {
             return BackconeLexer.EACH_BLOCK;
         }
         if (Words.reserved(word) != null) {
@@ -232,7 +232,6 @@ final class EntryStarts {
             case BackconeLexer.PLUS:
             case BackconeLexer.MINUS:
             case BackconeLexer.CARET:
-            case BackconeLexer.ASSIGN:
             case BackconeLexer.EQ:
             case BackconeLexer.NE:
             case BackconeLexer.LE:
@@ -244,6 +243,8 @@ final class EntryStarts {
             case BackconeLexer.COMMA:
             case BackconeLexer.ARROW:
                 return true;
+            case BackconeLexer.ASSIGN:
+                return !item.pastSign;
             case BackconeLexer.LBRACE:
                 return takesBody(item);
             case BackconeLexer.NAME:
@@ -279,7 +280,7 @@ final class EntryStarts {
         switch (word) {
             case "and":
             case "or":
-                return !isEnd(index + 1);
+                return !isEnd(index + 1) && type(index + 1) != BackconeLexer.ASSIGN;
             case "else":
                 return isText(index + 1) || !inArms && !isEnd(index + 1);
             default:
@@ -293,6 +294,9 @@ final class EntryStarts {
             // a clause word alone is half-typed: the entry above is not to suffer
             return false;
         }
+        // an equation still to come, or a head that lacks it
+        boolean declares = item.type == BackconeLexer.DECLARATION
+                || !item.pastSign && (item.type == BackconeLexer.FACT || item.type == BackconeLexer.BLOCK);
         switch (word) {
             case "per":
                 return isName(next) || isText(next);
@@ -314,11 +318,11 @@ final class EntryStarts {
             case "worst":
             case "needed":
             case "offer":
-                return true;
+                return declares;
             case "relation":
-                return !isText(next) && !at(next).is("when");
+                return declares && !isText(next) && !at(next).is("when");
             case "is":
-                return isName(next);
+                return declares && isName(next) || item.type == BackconeLexer.KIND;
             case "as":
             case "under":
                 return item.type == BackconeLexer.RATE && isName(next);

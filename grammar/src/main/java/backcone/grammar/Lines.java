@@ -267,6 +267,9 @@ final class Lines {
             case BackconeLexer.GE:
             case BackconeLexer.LT:
             case BackconeLexer.GT:
+                if (splitsRequirement(t)) {
+                    return;
+                }
                 item.pastSign = true;
                 break;
             case BackconeLexer.COMMA:
@@ -343,6 +346,35 @@ final class Lines {
         fault();
         endItem(Tok.inserted(t, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
         return true;
+    }
+
+    /**
+     * {@code pitting >= 1.1 bending >= 1.4}: what was glued as a unit is the name of a second requirement, since a
+     * requirement holds one comparison.
+     */
+    private boolean splitsRequirement(Tok comparison) {
+        Tok last = out.get(out.size() - 1);
+        boolean splits = item.type == BackconeLexer.REQUIREMENT
+                && item.pastSign
+                && holds() == Holds.BODY
+                && comparison.getType() != BackconeLexer.ASSIGN
+                && last.getType() == BackconeLexer.UNIT
+                && last == in.get(i - 1)
+                && isWord(last.getText());
+        if (!splits) {
+            return false;
+        }
+        out.remove(out.size() - 1);
+        last.setType(BackconeLexer.NAME);
+        findings.add(new Finding(Finding.Kind.TWO_ENTRIES, last.start(), last.end(), last.getText(), ""));
+        fault();
+        endItem(Tok.inserted(last, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
+        i--;
+        return true;
+    }
+
+    private static boolean isWord(String unit) {
+        return Character.isLetter(unit.charAt(0)) && unit.chars().allMatch(c -> Character.isLetterOrDigit(c) || c == '_');
     }
 
     /** Decides whether a word inside an entry is a keyword. */
