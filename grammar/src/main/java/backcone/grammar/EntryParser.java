@@ -4,7 +4,6 @@ import backcone.grammar.gen.BackconeLexer;
 import org.antlr.v4.runtime.Parser;
 import org.antlr.v4.runtime.Token;
 import org.antlr.v4.runtime.TokenStream;
-import org.antlr.v4.runtime.WritableToken;
 
 /**
  * The part of the parser that is not grammar. What an entry could not use gets token types of its own once the entry is
@@ -28,7 +27,7 @@ public abstract class EntryParser extends Parser {
                 if (ends(type)) {
                     return;
                 }
-                ((WritableToken) t).setType(opens ? lostBrace(type) : BackconeLexer.LOST);
+                ((Tok) t).lose(opens ? lostBrace(type) : BackconeLexer.LOST);
             }
             if (opens) {
                 depth++;

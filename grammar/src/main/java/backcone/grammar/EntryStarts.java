@@ -54,8 +54,8 @@ final class EntryStarts {
         return k;
     }
 
-    /** True when the first line of a brace holds a bar: it is a table then. */
-    boolean firstLineHasBar(int brace) {
+    /** What a brace holds as far as its first line shows: a bar makes it a table, an arrow a choice. */
+    Lines.Holds firstLineHolds(int brace) {
         int k = brace + 1;
         while (type(k) == BackconeLexer.NL) {
             k++;
@@ -63,13 +63,15 @@ final class EntryStarts {
         for (; ; k++) {
             switch (type(k)) {
                 case BackconeLexer.PIPE:
-                    return true;
+                    return Lines.Holds.ROWS;
+                case BackconeLexer.ARROW:
+                    return Lines.Holds.ARMS;
                 case BackconeLexer.NL:
                 case BackconeLexer.LBRACE:
                 case BackconeLexer.RBRACE:
                 case BackconeLexer.SEMI:
                 case BackconeLexer.EOF:
-                    return false;
+                    return Lines.Holds.BODY;
                 default:
                     break;
             }
@@ -87,7 +89,7 @@ final class EntryStarts {
         }
         Tok first = at(index);
         String word = first.getText();
-        if (word.equals("each")) {
+        if (word.equals("each") && (isName(index + 1) || isEnd(index + 1))) {
             return BackconeLexer.EACH_BLOCK;
         }
         if (Words.reserved(word) != null) {
@@ -230,7 +232,6 @@ final class EntryStarts {
             case BackconeLexer.PLUS:
             case BackconeLexer.MINUS:
             case BackconeLexer.CARET:
-            case BackconeLexer.ASSIGN:
             case BackconeLexer.EQ:
             case BackconeLexer.NE:
             case BackconeLexer.LE:
@@ -242,6 +243,8 @@ final class EntryStarts {
             case BackconeLexer.COMMA:
             case BackconeLexer.ARROW:
                 return true;
+            case BackconeLexer.ASSIGN:
+                return !item.pastSign;
             case BackconeLexer.LBRACE:
                 return takesBody(item);
             case BackconeLexer.NAME:
@@ -277,7 +280,7 @@ final class EntryStarts {
         switch (word) {
             case "and":
             case "or":
-                return !isEnd(index + 1);
+                return !isEnd(index + 1) && type(index + 1) != BackconeLexer.ASSIGN;
             case "else":
                 return isText(index + 1) || !inArms && !isEnd(index + 1);
             default:
@@ -291,6 +294,9 @@ final class EntryStarts {
             // a clause word alone is half-typed: the entry above is not to suffer
             return false;
         }
+        // an equation still to come, or a head that lacks it
+        boolean declares = item.type == BackconeLexer.DECLARATION
+                || !item.pastSign && (item.type == BackconeLexer.FACT || item.type == BackconeLexer.BLOCK);
         switch (word) {
             case "per":
                 return isName(next) || isText(next);
@@ -312,11 +318,11 @@ final class EntryStarts {
             case "worst":
             case "needed":
             case "offer":
-                return true;
+                return declares;
             case "relation":
-                return !isText(next) && !at(next).is("when");
+                return declares && !isText(next) && !at(next).is("when");
             case "is":
-                return isName(next);
+                return declares && isName(next) || item.type == BackconeLexer.KIND;
             case "as":
             case "under":
                 return item.type == BackconeLexer.RATE && isName(next);
@@ -334,8 +340,13 @@ final class EntryStarts {
         }
     }
 
+    /** An entry word with what belongs to it. */
+    boolean startsWithEntryWord(int index) {
+        return isName(index) && !isEnd(index + 1) && entryWord(at(index).getText(), index) != null;
+    }
+
     /** A fact, a requirement, a declaration or a block, whatever its first word spells. */
-    private boolean isEntryLike(int index) {
+    boolean isEntryLike(int index) {
         int k = behindPath(index);
         if (type(k) == BackconeLexer.ASSIGN || isComparison(type(k))) {
             return true;

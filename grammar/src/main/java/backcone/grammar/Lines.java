@@ -160,7 +160,9 @@ final class Lines {
             Tok close = Tok.inserted(before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
             out.add(close);
             frames.pop();
-            missing(close);
+            if (before.getType() != BackconeLexer.RBRACE || !before.isInserted()) {
+                missing(close);
+            }
         }
     }
 
@@ -185,6 +187,9 @@ final class Lines {
         if (item.type == 0) {
             start(t);
         }
+        if (t.faulty) {
+            fault();
+        }
         if (item.choosing) {
             holds = Holds.ARMS;
             item.choosing = false;
@@ -193,7 +198,7 @@ final class Lines {
         } else if (item.type == BackconeLexer.CHOICE || item.type == BackconeLexer.CASES) {
             holds = Holds.WORDS;
         } else {
-            holds = starts.firstLineHasBar(i) ? Holds.ROWS : Holds.BODY;
+            holds = starts.firstLineHolds(i);
         }
         switch (holds) {
             case ARMS:
@@ -214,8 +219,12 @@ final class Lines {
     }
 
     private void closeBrace(Tok t) {
-        out.add(t);
         Frame frame = frames.pop();
+        if (t.isInserted()) {
+            // the entry before a forgotten brace is half-typed as a rule: said once, of the brace
+            fault();
+        }
+        out.add(t);
         item = frame.item();
         if (frame.holds() == Holds.ARMS) {
             return;
@@ -258,6 +267,9 @@ final class Lines {
             case BackconeLexer.GE:
             case BackconeLexer.LT:
             case BackconeLexer.GT:
+                if (splitsRequirement(t)) {
+                    return;
+                }
                 item.pastSign = true;
                 break;
             case BackconeLexer.COMMA:
@@ -334,6 +346,35 @@ final class Lines {
         fault();
         endItem(Tok.inserted(t, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
         return true;
+    }
+
+    /**
+     * {@code pitting >= 1.1 bending >= 1.4}: what was glued as a unit is the name of a second requirement, since a
+     * requirement holds one comparison.
+     */
+    private boolean splitsRequirement(Tok comparison) {
+        Tok last = out.get(out.size() - 1);
+        boolean splits = item.type == BackconeLexer.REQUIREMENT
+                && item.pastSign
+                && holds() == Holds.BODY
+                && comparison.getType() != BackconeLexer.ASSIGN
+                && last.getType() == BackconeLexer.UNIT
+                && last == in.get(i - 1)
+                && isWord(last.getText());
+        if (!splits) {
+            return false;
+        }
+        out.remove(out.size() - 1);
+        last.setType(BackconeLexer.NAME);
+        findings.add(new Finding(Finding.Kind.TWO_ENTRIES, last.start(), last.end(), last.getText(), ""));
+        fault();
+        endItem(Tok.inserted(last, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
+        i--;
+        return true;
+    }
+
+    private static boolean isWord(String unit) {
+        return Character.isLetter(unit.charAt(0)) && unit.chars().allMatch(c -> Character.isLetterOrDigit(c) || c == '_');
     }
 
     /** Decides whether a word inside an entry is a keyword. */

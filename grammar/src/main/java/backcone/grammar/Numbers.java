@@ -368,7 +368,19 @@ final class Numbers {
     // ---- findings
 
     private void times(Tok number, Tok next, String word) {
-        find(Finding.Kind.MISSING_TIMES, span(number, next), word);
+        Tok last = next;
+        String factor = word;
+        int k = i + 1;
+        while (last.touches(at(k)) && typeAt(k) == BackconeLexer.DOT && typeAt(k + 1) == BackconeLexer.NAME) {
+            last = at(k + 1);
+            factor += "." + last.getText();
+            k += 2;
+        }
+        if (next.getType() == BackconeLexer.NAME && last.touches(at(k)) && typeAt(k) == BackconeLexer.LPAREN) {
+            last = at(k);
+            factor += "(";
+        }
+        find(Finding.Kind.MISSING_TIMES, span(number, last), factor);
         Tok star = Tok.inserted(next, BackconeLexer.STAR, next.start());
         star.faulty = true;
         out.add(star);

@@ -49,7 +49,7 @@ final class TreeBuilder {
     /** The body, or the one that stands in the text the entry could not use, so that its entries are not lost. */
     private @Nullable List<Entry> bodyOrNull(
             BackconeParser.@Nullable BodyContext c, BackconeParser.@Nullable RestContext rest) {
-        if (c != null) {
+        if (c != null && c.LBRACE() != null) {
             return entries(c.entries());
         }
         if (rest == null || rest.entries().isEmpty()) {
@@ -462,7 +462,7 @@ final class TreeBuilder {
 
     private List<Entry.Word> words(
             BackconeParser.@Nullable WordsContext own, BackconeParser.@Nullable RestContext rest) {
-        BackconeParser.WordListContext c = own == null ? null : own.wordList();
+        BackconeParser.WordListContext c = own == null || own.WORDS_OPEN() == null ? null : own.wordList();
         if (c == null && rest != null && !rest.wordList().isEmpty()) {
             c = rest.wordList(0);
         }
@@ -482,7 +482,7 @@ final class TreeBuilder {
     }
 
     private List<Entry.Row> rows(BackconeParser.@Nullable RowsContext own, BackconeParser.@Nullable RestContext rest) {
-        BackconeParser.RowListContext c = own == null ? null : own.rowList();
+        BackconeParser.RowListContext c = own == null || own.ROWS_OPEN() == null ? null : own.rowList();
         if (c == null && rest != null && !rest.rowList().isEmpty()) {
             c = rest.rowList(0);
         }
