@@ -26,15 +26,17 @@ public final class Handbook {
 
     private Handbook() {
         LibraryBuilder builder = new LibraryBuilder();
+        List<Diagnostic> found = new ArrayList<>();
         for (String name : names()) {
             FileId id = new FileId(FileId.HANDBOOK + name + ".method");
-            FileSyntax tree = tree(name, id);
+            FileSyntax tree = tree(name, id, found);
             trees.put(id, tree);
             builder.add(id, tree);
         }
         LibraryBuilder.Built built = builder.build();
         shapes = new Shapes(built.library());
-        problems = built.problems();
+        found.addAll(built.problems());
+        problems = List.copyOf(found);
     }
 
     /** Loaded once per process and shared. */
@@ -62,9 +64,11 @@ public final class Handbook {
         return out;
     }
 
-    private static FileSyntax tree(String name, FileId id) {
+    private static FileSyntax tree(String name, FileId id, List<Diagnostic> found) {
         String text = text(id);
-        return Parser.parse(id, text == null ? "" : text).tree();
+        Parser.Parsed p = Parser.parse(id, text == null ? "" : text);
+        found.addAll(p.problems());
+        return p.tree();
     }
 
     /** The text of a shipped file, for explanations and for reading it. */

@@ -277,10 +277,9 @@ final class EntryStarts {
         switch (word) {
             case "and":
             case "or":
-            case "in":
-                return true;
+                return !isEnd(index + 1);
             case "else":
-                return !inArms || isText(index + 1);
+                return isText(index + 1) || !inArms && !isEnd(index + 1);
             default:
                 break;
         }
@@ -288,19 +287,21 @@ final class EntryStarts {
             return false;
         }
         int next = index + 1;
-        boolean declares = item.type == BackconeLexer.DECLARATION;
+        if (isEnd(next) && !word.equals("measured") && !word.equals("assumed")) {
+            // a clause word alone is half-typed: the entry above is not to suffer
+            return false;
+        }
         switch (word) {
             case "per":
-                return isName(next) || isText(next) || isEnd(next);
+                return isName(next) || isText(next);
             case "taking":
             case "because":
             case "until":
             case "within":
                 return true;
             case "reading":
-                return isName(next) || isEnd(next);
             case "rows":
-                return item.type == BackconeLexer.TABLE;
+                return isName(next);
             case "measured":
             case "assumed":
                 return isEnd(next) || isText(next) || isName(next);
@@ -311,11 +312,11 @@ final class EntryStarts {
             case "worst":
             case "needed":
             case "offer":
-                return declares && !isEnd(next);
+                return true;
             case "relation":
-                return declares && !isEnd(next) && !at(next).is("when");
+                return !isText(next) && !at(next).is("when");
             case "is":
-                return declares && isName(next) || item.type == BackconeLexer.KIND;
+                return isName(next);
             case "as":
             case "under":
                 return item.type == BackconeLexer.RATE && isName(next);

@@ -32,7 +32,8 @@ final class Lines {
         /** Names of its head that are still to come and are names whatever they spell. */
         int headNames;
 
-        boolean pastAssign;
+        /** Behind the sign of a fact or requirement. */
+        boolean pastSign;
         boolean choosing;
         boolean settling;
         boolean rooting;
@@ -251,7 +252,13 @@ final class Lines {
                 }
                 break;
             case BackconeLexer.ASSIGN:
-                item.pastAssign = true;
+            case BackconeLexer.EQ:
+            case BackconeLexer.NE:
+            case BackconeLexer.LE:
+            case BackconeLexer.GE:
+            case BackconeLexer.LT:
+            case BackconeLexer.GT:
+                item.pastSign = true;
                 break;
             case BackconeLexer.COMMA:
                 if (holds() == Holds.WORDS) {
@@ -311,9 +318,9 @@ final class Lines {
 
     /** {@code teeth = 16 hand = left}: two entries on one line. Reads on as if a semicolon stood between. */
     private boolean splitsEntry(Tok t) {
-        boolean fact = item.type == BackconeLexer.FACT && item.pastAssign;
         boolean requirement = item.type == BackconeLexer.REQUIREMENT;
-        if (!fact && !requirement || holds() == Holds.BRACKET || !behindOperand()) {
+        boolean splits = item.pastSign && (requirement || item.type == BackconeLexer.FACT);
+        if (!splits || holds() == Holds.BRACKET || !behindOperand()) {
             return false;
         }
         int k = starts.behindPath(i);

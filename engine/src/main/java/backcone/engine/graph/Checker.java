@@ -71,19 +71,12 @@ public final class Checker {
         graph.activeCase = sample("case");
         element(graph.drive, new ArrayList<>());
         for (KindDef k : graph.shapes.library.kinds.values()) {
-            if (k.name().equals("drive")) {
+            if (k.name().equals("drive") || isPart(k.name())) {
                 continue;
             }
             Element e = sample(k.name());
-            if (e == null) {
-                continue;
-            }
-            element(e, new ArrayList<>());
-            for (Object x : new ArrayList<>(e.named.values())) {
-                if (x instanceof Element part && part.fixed) {
-                    element(part, new ArrayList<>());
-                    break;
-                }
+            if (e != null) {
+                whole(e);
             }
         }
         for (List<MethodDef> ms : graph.shapes.library.methods.values()) {
@@ -100,6 +93,39 @@ public final class Checker {
         for (FunctionDef f : graph.shapes.library.functions.values()) {
             function(f);
         }
+    }
+
+    /** An element with its parts; of a fixed collection one member stands for all. */
+    private void whole(Element e) {
+        element(e, new ArrayList<>());
+        Set<String> done = new HashSet<>();
+        for (Object x : new ArrayList<>(e.named.values())) {
+            if (x instanceof Element part && part.parent == e && part.shape != Shapes.WORD && (!part.fixed || done.add(part.collection))) {
+                whole(part);
+            }
+        }
+    }
+
+    /** Kinds that stand only inside others are read there, where the names around them exist. */
+    private boolean isPart(String kind) {
+        for (KindDef k : graph.shapes.library.kinds.values()) {
+            Shape s = graph.shapes.of(k.name());
+            for (Entry.Parts p : s.parts) {
+                if (Shape.fixed(p) && related(kind, p.kind().text())) {
+                    return true;
+                }
+            }
+            for (Entry.Part p : s.part) {
+                if (!k.name().equals("drive") && related(kind, p.kind().text())) {
+                    return true;
+                }
+            }
+        }
+        return false;
+    }
+
+    private boolean related(String a, String b) {
+        return graph.shapes.library.isKind(a, b) || graph.shapes.library.isKind(b, a);
     }
 
     private void function(FunctionDef f) {

@@ -727,7 +727,7 @@ final class Compiler {
         if (known instanceof Val v) {
             return v;
         }
-        Val v = eval(r.value(), Ctx.of(holder), Frame.at(graph.fileOf(holder), false));
+        Val v = eval(r.value(), Ctx.of(holder), Frame.at(holder.shape.homes.getOrDefault(r, graph.fileOf(holder)), false));
         holder.named.put("role " + r.name().text(), v);
         return v;
     }
@@ -746,7 +746,7 @@ final class Compiler {
             if (!e.collection.isEmpty() && e.fixed && e.parent != null) {
                 ctx = new Ctx(e.parent, List.of(new Axis(e.collection, e)), locals);
             }
-            Val v = eval(c.where(), ctx, Frame.at(graph.fileOf(holder), false));
+            Val v = eval(c.where(), ctx, Frame.at(holder.shape.homes.getOrDefault(c, graph.fileOf(holder)), false));
             if (v instanceof Val.Fixed x && x.is()) {
                 out.add(e);
             }
@@ -978,6 +978,15 @@ final class Compiler {
         }
         if (r instanceof Val.Picked p && l instanceof Val.Word w && eq) {
             return picked(p, w.text(), yes);
+        }
+        if (l instanceof Val.Picked x && r instanceof Val.Picked y && eq) {
+            int any = constant(0);
+            for (String w : x.words()) {
+                if (y.words().contains(w)) {
+                    any = op(Op.OR, any, op(Op.AND, op(Op.EQ, x.register(), constant(x.words().indexOf(w))), op(Op.EQ, y.register(), constant(y.words().indexOf(w)))));
+                }
+            }
+            return new Val.Truth(yes ? any : op(Op.NOT, any));
         }
         if (l instanceof Val.Text x && r instanceof Val.Text y && eq) {
             return new Val.Fixed(x.value().equals(y.value()) == yes);

@@ -137,6 +137,9 @@ public final class DriveBuilder {
                 }
             }
             for (Element e : new ArrayList<>(g.elements)) {
+                if (g.isSharedBlock(e)) {
+                    continue;
+                }
                 limits(g, e, Ctx.of(e), e.shape, e);
                 if (e.isSpace() || !e.fixed) {
                     nestedLimits(g, e, e.shape, List.of());

@@ -219,6 +219,11 @@ public final class DriveGraph {
         return out;
     }
 
+    /** A block that only lends its facts to members of meshes; what a member needs around it is not there. */
+    boolean isSharedBlock(Element e) {
+        return e.parent == drive && sharedBlocks.containsKey(e.name);
+    }
+
     /** The fixed members of the mesh that a method's space belongs to. */
     List<Element> membersOf(Element space) {
         Element mesh = space.isSpace() ? space.parent : space;

@@ -28,6 +28,9 @@ final class Relations {
 
     void orient() {
         for (Element e : new ArrayList<>(graph.elements)) {
+            if (graph.isSharedBlock(e)) {
+                continue;
+            }
             gather(e, Ctx.of(e), e.shape);
             if (e.isSpace() || !e.fixed) {
                 nested(e, e, e.shape, List.of());

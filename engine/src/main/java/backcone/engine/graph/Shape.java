@@ -29,6 +29,9 @@ final class Shape {
     final Map<String, Shape> each = new LinkedHashMap<>();
     final Map<String, @Nullable Shape> partShapes = new HashMap<>();
 
+    /** The files that roles and collections stand in. */
+    final Map<Entry, backcone.engine.text.FileId> homes = new java.util.IdentityHashMap<>();
+
     /** Names declared twice, for the check of handbook texts. */
     final List<Decl> clashes = new ArrayList<>();
 
@@ -68,9 +71,11 @@ final class Shape {
         part.addAll(body.part);
         cases.addAll(body.cases);
         for (Entry.Role r : body.roles) {
+            homes.put(r, body.file);
             names.put(r.name().text(), r);
         }
         for (Entry.Collect c : body.collects) {
+            homes.put(c, body.file);
             names.put(c.name().text(), c);
         }
         body.each.forEach((k, v) -> eachBodies.computeIfAbsent(k, x -> new ArrayList<>()).addAll(v));

@@ -62,7 +62,30 @@ final class Exprs {
         if (c == null) {
             return hole(owner);
         }
-        List<BackconeParser.ConjContext> parts = c.conj();
+        if (c instanceof BackconeParser.RootExprContext) {
+            BackconeParser.RootExprContext r = (BackconeParser.RootExprContext) c;
+            return new Expr.Root(
+                    sum(r.left, c),
+                    sum(r.right, c),
+                    sum(r.low, c),
+                    sum(r.high, c),
+                    textOrNull(r.text()),
+                    places.of(c));
+        }
+        if (c instanceof BackconeParser.SettleExprContext) {
+            BackconeParser.SettleExprContext s = (BackconeParser.SettleExprContext) c;
+            return new Expr.Settle(
+                    sum(s.what, c),
+                    sum(s.begin, c),
+                    sum(s.tolerance, c),
+                    sum(s.most, c),
+                    textOrNull(s.text()),
+                    places.of(c));
+        }
+        if (!(c instanceof BackconeParser.OrExprContext)) {
+            return hole(c);
+        }
+        List<BackconeParser.ConjContext> parts = ((BackconeParser.OrExprContext) c).conj();
         if (parts.isEmpty()) {
             return hole(c);
         }
@@ -248,26 +271,6 @@ final class Exprs {
         if (c instanceof BackconeParser.ChooseExprContext) {
             return choose((BackconeParser.ChooseExprContext) c);
         }
-        if (c instanceof BackconeParser.RootExprContext) {
-            BackconeParser.RootExprContext r = (BackconeParser.RootExprContext) c;
-            return new Expr.Root(
-                    sum(r.left, c),
-                    sum(r.right, c),
-                    sum(r.low, c),
-                    sum(r.high, c),
-                    textOrNull(r.text()),
-                    places.of(c));
-        }
-        if (c instanceof BackconeParser.SettleExprContext) {
-            BackconeParser.SettleExprContext s = (BackconeParser.SettleExprContext) c;
-            return new Expr.Settle(
-                    sum(s.what, c),
-                    sum(s.begin, c),
-                    sum(s.tolerance, c),
-                    sum(s.most, c),
-                    textOrNull(s.text()),
-                    places.of(c));
-        }
         return hole(c);
     }
 
@@ -326,14 +329,12 @@ final class Exprs {
     private Expr choose(BackconeParser.ChooseExprContext c) {
         Expr subject = c.sum() == null ? null : sum(c.sum(), c);
         List<Expr.Arm> arms = new ArrayList<>();
-        if (c.arms() != null) {
-            for (BackconeParser.ArmContext a : c.arms().arm()) {
+        if (c.arms() != null && c.arms().armList() != null) {
+            for (BackconeParser.ArmContext a : c.arms().armList().arm()) {
                 check.check(a, a.rest());
-                List<BackconeParser.ExprContext> parts = a.expr();
-                boolean otherwise = a.ELSE() != null;
-                Expr when = otherwise ? null : expr(parts.isEmpty() ? null : parts.get(0), a);
-                int index = otherwise ? 0 : 1;
-                Expr value = expr(parts.size() > index ? parts.get(index) : null, a);
+                BackconeParser.OneArmContext arm = a.oneArm();
+                Expr when = arm.ELSE() != null ? null : expr(arm.when, arm);
+                Expr value = expr(arm.then, arm);
                 arms.add(new Expr.Arm(when, value, places.of(a)));
             }
         }

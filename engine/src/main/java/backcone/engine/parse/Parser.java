@@ -51,7 +51,9 @@ public final class Parser {
     }
 
     private static BackconeParser.FileContext tree(Tokens tokens, Recovery recovery) {
-        BackconeParser parser = new BackconeParser(new CommonTokenStream(new ListTokenSource(tokens.list())));
+        CommonTokenStream stream = new CommonTokenStream(new ListTokenSource(tokens.list()));
+        stream.fill();
+        BackconeParser parser = new BackconeParser(stream);
         parser.removeErrorListeners();
         parser.setErrorHandler(recovery);
         // every choice is made on one or two tokens, so the cheap mode gives the same tree as the full one

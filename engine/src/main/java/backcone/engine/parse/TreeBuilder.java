@@ -52,12 +52,12 @@ final class TreeBuilder {
         if (c != null) {
             return entries(c.entries());
         }
-        if (rest == null || rest.body().isEmpty()) {
+        if (rest == null || rest.entries().isEmpty()) {
             return null;
         }
         List<Entry> list = new ArrayList<>();
-        for (BackconeParser.BodyContext b : rest.body()) {
-            list.addAll(entries(b.entries()));
+        for (BackconeParser.EntriesContext inner : rest.entries()) {
+            list.addAll(entries(inner));
         }
         return List.copyOf(list);
     }
@@ -274,7 +274,7 @@ final class TreeBuilder {
         }
         if (e instanceof BackconeParser.ChoiceContext) {
             BackconeParser.ChoiceContext c = (BackconeParser.ChoiceContext) e;
-            return new Entry.Choice(places.name(c.id, c), Exprs.textOrNull(c.text()), words(c.words()), span);
+            return new Entry.Choice(places.name(c.id, c), Exprs.textOrNull(c.text()), words(c.words(), rest), span);
         }
         if (e instanceof BackconeParser.KindContext) {
             BackconeParser.KindContext k = (BackconeParser.KindContext) e;
@@ -343,7 +343,7 @@ final class TreeBuilder {
         if (e instanceof BackconeParser.CasesContext) {
             BackconeParser.CasesContext c = (BackconeParser.CasesContext) e;
             List<Name> list = new ArrayList<>();
-            for (Entry.Word w : words(c.words())) {
+            for (Entry.Word w : words(c.words(), rest)) {
                 list.add(w.name());
             }
             return new Entry.Cases(places.name(c.id, c), List.copyOf(list), span);
@@ -460,25 +460,31 @@ final class TreeBuilder {
         return List.copyOf(list);
     }
 
-    private List<Entry.Word> words(BackconeParser.@Nullable WordsContext c) {
+    private List<Entry.Word> words(
+            BackconeParser.@Nullable WordsContext own, BackconeParser.@Nullable RestContext rest) {
+        BackconeParser.WordListContext c = own == null ? null : own.wordList();
+        if (c == null && rest != null && !rest.wordList().isEmpty()) {
+            c = rest.wordList(0);
+        }
         if (c == null) {
             return List.of();
         }
         List<Entry.Word> list = new ArrayList<>();
         for (BackconeParser.WordContext w : c.word()) {
             check.check(w, w.rest());
-            if (w.NAME() != null) {
+            BackconeParser.OneWordContext word = w.oneWord();
+            if (word.NAME() != null) {
                 list.add(new Entry.Word(
-                        places.name(w.NAME().getSymbol(), w), Exprs.textOrNull(w.text()), places.of(w)));
+                        places.name(word.NAME().getSymbol(), w), Exprs.textOrNull(word.text()), places.of(w)));
             }
         }
         return List.copyOf(list);
     }
 
     private List<Entry.Row> rows(BackconeParser.@Nullable RowsContext own, BackconeParser.@Nullable RestContext rest) {
-        BackconeParser.RowsContext c = own;
-        if (c == null && rest != null && !rest.rows().isEmpty()) {
-            c = rest.rows(0);
+        BackconeParser.RowListContext c = own == null ? null : own.rowList();
+        if (c == null && rest != null && !rest.rowList().isEmpty()) {
+            c = rest.rowList(0);
         }
         if (c == null) {
             return List.of();
@@ -486,8 +492,8 @@ final class TreeBuilder {
         List<Entry.Row> list = new ArrayList<>();
         for (BackconeParser.RowContext r : c.row()) {
             check.check(r, r.rest());
-            List<Entry.Cell> cells = new ArrayList<>(r.cell().size());
-            for (BackconeParser.CellContext cell : r.cell()) {
+            List<Entry.Cell> cells = new ArrayList<>(r.cells().cell().size());
+            for (BackconeParser.CellContext cell : r.cells().cell()) {
                 cells.add(cell(cell, r));
             }
             list.add(new Entry.Row(List.copyOf(cells), places.of(r)));

@@ -4,6 +4,7 @@ public final class Numbers {
     private Numbers() {}
 
     public static String format(double v, int n) {
+        if (Double.isNaN(v) || Double.isInfinite(v)) return "?";
         return exact(new java.math.BigDecimal(v).round(new java.math.MathContext(n)).doubleValue());
     }
 

@@ -23,7 +23,9 @@ tokens {
     // braces by what they hold; all are closed by RBRACE
     ROWS_OPEN, ARMS_OPEN, WORDS_OPEN,
     // the comma between words of a list in braces
-    WORD_COMMA
+    WORD_COMMA,
+    // what an entry could not use, set by the parser while it reads
+    LOST, LOST_BODY, LOST_ROWS, LOST_ARMS, LOST_WORDS
 }
 
 NL : '\r'? '\n' | '\r' ;

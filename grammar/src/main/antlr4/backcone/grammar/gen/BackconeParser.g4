@@ -3,11 +3,18 @@
  *
  * The token list has already decided where an entry starts, what it is and where it ends (backcone.grammar.Tokens), and
  * its braces are balanced. So every choice here is made on one token or two, an error never looks past its entry, and
- * every token list is a file: `rest` takes what an entry could not use.
+ * every token list is a file: what an entry could not use is marked LOST when the entry is over, and `rest` takes it.
  */
 parser grammar BackconeParser;
 
-options { tokenVocab = BackconeLexer; }
+options {
+    tokenVocab = BackconeLexer;
+    superClass = EntryParser;
+}
+
+@header {
+import backcone.grammar.EntryParser;
+}
 
 file : entries EOF ;
 entries : (entry | end)* ;
@@ -18,28 +25,33 @@ entry
       | drive | use | let | rate | require | assertion | override | accept | waive | variant | family
       | quantity | source | choice | kind | chapter | method | include | function | table | parts | part | role
       | collect | cases | eachBlock | editions | relation | check | limit | applies | example | gives)
-      rest?
+      {loseRest();} rest?
     ;
 
 /** What an entry could not use, up to its end. Bodies in it still hold entries. */
-rest : (junk | body | rows | arms | words)+ ;
-junk
-    : ~(NL | SEMI | LBRACE | ROWS_OPEN | ARMS_OPEN | WORDS_OPEN | RBRACE | WORD_COMMA
-      | FACT | FACT_FOR | REQUIREMENT | BLOCK | DECLARATION | STRAY | ROW | ARM | WORD
-      | DRIVE | USE | LET | RATE | REQUIRE | ASSERT | OVERRIDE | ACCEPT | WAIVE | VARIANT | FAMILY
-      | QUANTITY | SOURCE | CHOICE | KIND | CHAPTER | METHOD | INCLUDE | FUNCTION | TABLE | PARTS | PART | ROLE
-      | COLLECT | CASES | EACH_BLOCK | EDITIONS | RELATION | CHECK | LIMIT | APPLIES | EXAMPLE | GIVES)
+rest
+    : (LOST
+      | LOST_BODY entries RBRACE
+      | LOST_ROWS rowList RBRACE
+      | LOST_ARMS armList RBRACE
+      | LOST_WORDS wordList RBRACE)+
     ;
 stray : STRAY ;
 
 body : LBRACE entries RBRACE ;
-rows : ROWS_OPEN (row | end)* RBRACE ;
-row : ROW cell (PIPE cell)* rest? ;
+rows : ROWS_OPEN rowList RBRACE ;
+rowList : (row | end)* ;
+row : cells {loseRest();} rest? ;
+cells : ROW cell (PIPE cell)* ;
 cell : value (COMMA value)* ;
-arms : ARMS_OPEN (arm | end)* RBRACE ;
-arm : ARM (ELSE | expr) ARROW expr rest? ;
-words : WORDS_OPEN (word | WORD_COMMA | end)* RBRACE ;
-word : WORD NAME text? rest? ;
+arms : ARMS_OPEN armList RBRACE ;
+armList : (arm | end)* ;
+arm : oneArm {loseRest();} rest? ;
+oneArm : ARM (ELSE | when=expr) ARROW then=expr ;
+words : WORDS_OPEN wordList RBRACE ;
+wordList : (word | WORD_COMMA | end)* ;
+word : oneWord {loseRest();} rest? ;
+oneWord : WORD NAME text? ;
 
 // ---- blocks and facts
 
@@ -47,7 +59,7 @@ fact : FACT path ASSIGN value note* ;
 factFor : FACT_FOR id=NAME FOR other=NAME ASSIGN value note* ;
 requirement : REQUIREMENT path cmpSign sum note* ;
 block : BLOCK head=NAME id=NAME? (ON shaft=NAME)? text? body? ;
-declaration : DECLARATION id=NAME symbol=NAME? text? COLON ofKind=NAME (IN UNIT)? definition? note* ;
+declaration : DECLARATION id=NAME symbol=NAME? text? COLON ofKind=NAME (IN UNIT)? note* (definition note*)? ;
 definition : ASSIGN value | DEFAULT value | RELATED expr ;
 
 // ---- drives
@@ -124,7 +136,11 @@ value
     : head=NAME id=NAME                                                  # refValue
     | expr (DOTDOT high=sum | TOL from=sum DOTDOT to=sum | ON DATE)?          # exprValue
     ;
-expr : conj (OR conj)* ;
+expr
+    : conj (OR conj)*                                                                # orExpr
+    | ROOT OF left=sum EQ right=sum BETWEEN low=sum AND high=sum (ELSE text)?        # rootExpr
+    | SETTLE what=sum FROM begin=sum WITHIN tolerance=sum AT MOST most=sum (ELSE text)?    # settleExpr
+    ;
 conj : neg (AND neg)* ;
 neg : NOT* compare ;
 compare : sum (cmpSign sum)* ;
@@ -142,8 +158,6 @@ primary
     | path (LPAREN (arg (COMMA arg)*)? RPAREN (DOT NAME)*)?      # pathExpr
     | GIVEN path                                                 # givenExpr
     | CHOOSE sum? arms                                           # chooseExpr
-    | ROOT OF left=sum EQ right=sum BETWEEN low=sum AND high=sum (ELSE text)?        # rootExpr
-    | SETTLE what=sum FROM begin=sum WITHIN tolerance=sum AT MOST most=sum (ELSE text)?    # settleExpr
     ;
 arg : EACH NAME (COLON expr)? | expr ;
 path : NAME (DOT NAME)* ;
