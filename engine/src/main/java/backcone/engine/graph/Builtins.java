@@ -1,6 +1,7 @@
 package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
+import backcone.engine.model.English;
 import backcone.engine.model.FunctionDef;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.TableDef;
@@ -109,7 +110,7 @@ final class Builtins {
                         Code.DIMENSION_MISMATCH,
                         f,
                         at.args().get(Math.min(i, at.args().size() - 1)).span(),
-                        "`" + fn.name() + "` takes a " + q.kind().meaning() + " as its " + ordinal(i)
+                        "`" + fn.name() + "` takes " + English.a(q.kind().meaning()) + " as its " + ordinal(i)
                                 + " value; this is of dimension " + n.dimension() + ".");
                 v = compiler.bad(q.kind().shown().dimension());
             }

@@ -2,6 +2,7 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.model.English;
 import backcone.engine.model.ChoiceKind;
 import backcone.engine.model.FunctionDef;
 import backcone.engine.model.QuantityKind;
@@ -259,7 +260,7 @@ final class Compiler {
                         Code.NOT_A_BLOCK,
                         f,
                         e.span(),
-                        "`" + s.decl.name + "` refers to a " + r.kind() + "; `" + ref.element().name + "` is a "
+                        "`" + s.decl.name + "` refers to " + English.a(r.kind()) + "; `" + ref.element().name + "` is a "
                                 + (ref.element().kind().isEmpty()
                                         ? "word"
                                         : ref.element().kind()) + ".");
@@ -272,7 +273,7 @@ final class Compiler {
                     Code.NOT_A_BLOCK,
                     f,
                     e.span(),
-                    "`" + s.decl.name + "` refers to a " + r.kind() + " by name; found " + what(v) + ".");
+                    "`" + s.decl.name + "` refers to " + English.a(r.kind()) + " by name; found " + what(v) + ".");
             return BAD;
         }
         if (kind instanceof ValueKind.Text && !(v instanceof Val.Text) && !(v instanceof Val.Open)) {
@@ -299,7 +300,7 @@ final class Compiler {
                         Code.WRONG_FORM,
                         f,
                         e.span(),
-                        "`" + s.decl.name + "` is a number, a " + q.meaning() + "; found " + what(v) + ".");
+                        "`" + s.decl.name + "` is a number, " + English.a(q.meaning()) + "; found " + what(v) + ".");
             }
             return bad(want);
         }
@@ -310,8 +311,7 @@ final class Compiler {
                         Code.DIMENSION_MISMATCH,
                         f,
                         e.span(),
-                        "With `in " + result.text() + "` the right side must be a pure number; it is a "
-                                + units.nameOf(n.dimension()) + ".");
+                        "With `in " + result.text() + "` the right side must be a pure number; it is " + English.a(units.nameOf(n.dimension())) + ".");
                 return bad(want);
             }
             n = scaled(n, result);
@@ -324,7 +324,7 @@ final class Compiler {
                         Code.MISSING_UNIT,
                         f.file,
                         e.span(),
-                        "`" + s.decl.name + "` is a " + q.meaning() + " and needs its unit, for example `"
+                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + " and needs its unit, for example `"
                                 + textOf(e, f) + " " + say + "`.");
                 problems.add(d.withFix(
                         "add the unit " + say, new Span(e.span().end(), e.span().end()), " " + say));
@@ -333,7 +333,7 @@ final class Compiler {
                         Code.WRONG_UNIT,
                         f,
                         e.span(),
-                        "`" + s.decl.name + "` is a " + q.meaning() + "; found a " + units.nameOf(n.dimension())
+                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + "; found " + English.a(units.nameOf(n.dimension()))
                                 + ". Write it in " + q.shown().text() + " or another unit of that kind.");
             } else {
                 problem(
@@ -385,7 +385,7 @@ final class Compiler {
                         f,
                         n.unit().span(),
                         "`" + n.unit().text() + "` is a unit of " + (other == null ? k : other.meaning()) + "; `"
-                                + s.decl.name + "` is a " + q.meaning() + ". Write it in "
+                                + s.decl.name + "` is " + English.a(q.meaning()) + ". Write it in "
                                 + q.shown().text() + ".");
             }
         } else if (e instanceof Expr.Range r) {
@@ -675,7 +675,7 @@ final class Compiler {
                                     Code.DIMENSION_MISMATCH,
                                     f,
                                     t.span(),
-                                    "`" + t.path().text() + "` is a " + units.nameOf(n.dimension())
+                                    "`" + t.path().text() + "` is " + English.a(units.nameOf(n.dimension()))
                                             + " and cannot be taken in " + u.text() + ".");
                             return bad(Dimension.NONE);
                         }
@@ -877,7 +877,7 @@ final class Compiler {
                     Code.DIMENSION_MISMATCH,
                     f,
                     i.span(),
-                    "This is a " + units.nameOf(n.dimension()) + " and cannot be taken in " + u.text() + ".");
+                    "This is " + English.a(units.nameOf(n.dimension())) + " and cannot be taken in " + u.text() + ".");
             return bad(Dimension.NONE);
         }
         return bare(n, u);
@@ -936,7 +936,7 @@ final class Compiler {
                     Code.DIMENSION_MISMATCH,
                     f,
                     at.span(),
-                    "A " + units.nameOf(a) + " and a " + units.nameOf(b) + " can't be " + done + ".");
+                    English.capital(English.a(units.nameOf(a))) + " and " + English.a(units.nameOf(b)) + " can't be " + done + ".");
             return null;
         }
         return a;
@@ -948,7 +948,7 @@ final class Compiler {
                     Code.DIMENSION_MISMATCH,
                     f,
                     at.span(),
-                    "An exponent is a pure number; this one is a " + units.nameOf(r.dimension()) + ".");
+                    "An exponent is a pure number; this one is " + English.a(units.nameOf(r.dimension())) + ".");
             return bad(null);
         }
         Dimension d = l.dimension();
@@ -960,7 +960,7 @@ final class Compiler {
                         Code.DIMENSION_MISMATCH,
                         f,
                         at.span(),
-                        "A " + units.nameOf(d) + " can only be raised to a fixed simple power.");
+                        English.capital(English.a(units.nameOf(d))) + " can only be raised to a fixed simple power.");
                 return bad(null);
             }
             d = d.power(fraction[0], fraction[1]);

@@ -162,6 +162,11 @@ public final class DriveBuilder {
                     nestedLimits(g, e, e.shape, List.of());
                 }
             }
+            for (RelationUse r : g.relations) {
+                if (r.solved != null && r.solved.isWhole()) {
+                    g.compiler.value(r.solved);
+                }
+            }
             agreements(g);
             if (requirements != null) {
                 requirements.compile(ofDrive);

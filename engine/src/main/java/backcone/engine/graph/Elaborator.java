@@ -2,6 +2,7 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.model.English;
 import backcone.engine.model.Decl;
 import backcone.engine.model.MethodDef;
 import backcone.engine.model.Suggest;
@@ -716,7 +717,7 @@ final class Elaborator {
                     Code.UNKNOWN_METHOD,
                     file,
                     r.method().span(),
-                    "`" + method + "` rates a " + other.get(0).kind() + "; `" + mesh.name + "` is a " + mesh.kind()
+                    "`" + method + "` rates " + English.a(other.get(0).kind()) + "; `" + mesh.name + "` is " + English.a(mesh.kind())
                             + ".");
             return;
         }
@@ -739,8 +740,7 @@ final class Elaborator {
                     Code.METHOD_NOT_HERE,
                     file,
                     r.method().span(),
-                    "The method `" + method + "` is not in this handbook; what it would rate stays open. For a "
-                            + mesh.kind() + " it holds " + Compiler.list(fit) + ".");
+                    "The method `" + method + "` is not in this handbook; what it would rate stays open. For " + English.a(mesh.kind()) + " it holds " + Compiler.list(fit) + ".");
         }
     }
 

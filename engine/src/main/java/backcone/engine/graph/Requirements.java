@@ -2,6 +2,7 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.model.English;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.ValueKind;
 import backcone.engine.syntax.Entry;
@@ -36,24 +37,22 @@ final class Requirements {
             rate(r);
         }
         if (ofDrive) {
-            Map<String, RequirementUse> byId = new LinkedHashMap<>();
+            List<RequirementUse> below = new ArrayList<>();
             for (DriveSource.Layer l : source.layers()) {
+                List<RequirementUse> here = new ArrayList<>();
                 for (Entry e : l.body()) {
                     RequirementUse u = e instanceof Entry.Require r
                             ? require(r, l.file())
                             : e instanceof Entry.Assert a ? asserted(a, l.file()) : null;
                     if (u != null) {
-                        // a variant's line for the same fact replaces that of its base
-                        byId.put(
-                                u.file.equals(source.layers().get(0).file())
-                                                && l == source.layers().get(0)
-                                        ? u.id + "#" + unnamed
-                                        : u.id + "#",
-                                u);
-                        graph.requirements.add(u);
+                        here.add(u);
                     }
                 }
+                // a variant's line for a fact replaces that of its base
+                below.removeIf(old -> here.stream().anyMatch(u -> u.id.equals(old.id) && u.asserted == old.asserted && u.slot != null));
+                below.addAll(here);
             }
+            graph.requirements.addAll(below);
         }
         for (RequirementUse u : graph.requirements) {
             tight(u);
@@ -196,14 +195,13 @@ final class Requirements {
                         Code.MISSING_UNIT,
                         f.file,
                         bound.span(),
-                        "`" + name + "` is a " + Units.standard().nameOf(want) + "; its limit needs a unit.");
+                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; its limit needs a unit.");
             } else {
                 graph.problems.add(
                         Code.WRONG_UNIT,
                         f.file,
                         bound.span(),
-                        "`" + name + "` is a " + Units.standard().nameOf(want) + "; this limit is a "
-                                + Units.standard().nameOf(has) + ".");
+                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; this limit is " + English.a(Units.standard().nameOf(has)) + ".");
             }
             u.value = graph.compiler.openRegister(new Val.Bad());
         }

@@ -77,6 +77,10 @@ public final class Slot {
         return value;
     }
 
+    boolean isWhole() {
+        return decl.kind instanceof backcone.engine.model.ValueKind.Quantity q && q.kind().whole();
+    }
+
     public boolean isOverridden() {
         return override != null;
     }
