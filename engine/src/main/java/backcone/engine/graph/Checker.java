@@ -79,10 +79,24 @@ public final class Checker {
                 whole(e);
             }
         }
+        // a building block without examples of its own is read inside the methods that include it
+        Set<MethodDef> included = new HashSet<>();
+        for (List<MethodDef> ms : graph.shapes.library.methods.values()) {
+            for (MethodDef m : ms) {
+                for (Entry.Include i : m.body().includes) {
+                    i.methods().forEach(n -> {
+                        MethodDef other = graph.shapes.library.method(n.text(), m.kind());
+                        if (other != null && other != m) {
+                            included.add(other);
+                        }
+                    });
+                }
+            }
+        }
         for (List<MethodDef> ms : graph.shapes.library.methods.values()) {
             for (MethodDef m : ms) {
                 Element mesh = sample(m.kind());
-                if (mesh != null) {
+                if (mesh != null && !(included.contains(m) && m.body().examples.isEmpty())) {
                     Element space = el.space(
                             mesh,
                             m,
