@@ -1092,6 +1092,10 @@ final class Compiler {
                 return new Val.Fixed(x.element().name.equals(w.text()) == yes);
             }
         }
+        if (l instanceof Val.Open x && r instanceof Val.Open y && eq && isReference(x) && isReference(y)) {
+            // two members whose shafts are not given: the same open shaft is the same shaft
+            return new Val.Fixed((x.slot() == y.slot()) == yes);
+        }
         if (l instanceof Val.Word x && r instanceof Val.Word y && eq) {
             return new Val.Fixed(x.text().equals(y.text()) == yes);
         }
@@ -1139,6 +1143,10 @@ final class Compiler {
         }
         problem(Code.WRONG_FORM, f, at.span(), "This compares " + what(l) + " with " + what(r) + ".");
         return BAD;
+    }
+
+    private static boolean isReference(Val.Open o) {
+        return o.slot() != null && o.slot().decl.kind instanceof ValueKind.Reference;
     }
 
     private static String plain(double v) {
