@@ -87,10 +87,24 @@ final class ExplainCommand implements Callable<Integer> {
             value(one.get(), out);
             return 0;
         }
-        String near = Suggest.nearest(name, analysis.names());
+        String near = nearest(analysis.names());
         err.println("backcone: nothing in `" + file + "` is called `" + name + "`."
                 + (near == null ? "" : " Did you mean `" + near + "`?"));
         return 2;
+    }
+
+    /** Names behind the same dot come first: what was mistyped is most often the last word. */
+    private @org.jspecify.annotations.Nullable String nearest(List<String> names) {
+        int dot = name.lastIndexOf('.');
+        String before = name.substring(0, dot + 1);
+        List<String> last = new java.util.ArrayList<>();
+        for (String n : names) {
+            if (n.startsWith(before) && n.indexOf('.', before.length()) < 0) {
+                last.add(n.substring(before.length()));
+            }
+        }
+        String near = Suggest.nearest(name.substring(dot + 1), last);
+        return near != null ? before + near : Suggest.nearest(name, names);
     }
 
     private void value(Explanation e, PrintWriter out) throws IOException {

@@ -205,7 +205,7 @@ final class TextReport {
                         .append(')');
             }
             notes.add(b.toString());
-        } else if (r.fault() != null) {
+        } else if (r.fault() != null && !r.fault().endsWith("is not in this handbook")) {
             notes.add(r.id() + ": " + r.fault());
         }
         for (RequirementAnswer.Passed p : r.outside()) {

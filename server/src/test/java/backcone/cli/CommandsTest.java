@@ -79,7 +79,7 @@ class CommandsTest {
         assertThat(all.status()).isZero();
         valid("explain.schema.json", all.out());
         assertThat(run("explain", f, "head.pinion.torque").out()).contains("torque");
-        Ran unknown = run("explain", f, "head.pinion.tork");
+        Ran unknown = run("explain", f, "head.pinion.torqe");
         assertThat(unknown.status()).isEqualTo(2);
         assertThat(unknown.err()).contains("Did you mean `head.pinion.torque`?");
     }

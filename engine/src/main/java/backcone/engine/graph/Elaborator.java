@@ -723,7 +723,7 @@ final class Elaborator {
         }
         List<String> fit = new ArrayList<>();
         graph.shapes.library.methods.forEach((k, v) -> {
-            if (v.stream().anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind()) && hasChecks(m))) {
+            if (v.stream().anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind()) && hasChecks(m) && !graph.shapes.isBuildingBlock(m))) {
                 fit.add(k);
             }
         });
