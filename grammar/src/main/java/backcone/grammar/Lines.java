@@ -286,6 +286,9 @@ final class Lines {
                     return;
                 }
                 name(t);
+                if (t.getType() == BackconeLexer.NAME && isReference()) {
+                    out.add(Tok.inserted(t, BackconeLexer.REFERENCE, t.start()));
+                }
                 break;
             default:
                 break;
@@ -416,6 +419,22 @@ final class Lines {
         } else {
             prefix(t);
         }
+    }
+
+    /** {@code = gear sun}: two names side by side where a value starts. */
+    private boolean isReference() {
+        Tok next = in.get(i + 1);
+        if (next.getType() != BackconeLexer.NAME) {
+            return false;
+        }
+        int last = out.get(out.size() - 1).getType();
+        boolean valueStarts = last == BackconeLexer.ASSIGN && item.type != BackconeLexer.COLLECT
+                || holds() == Holds.ROWS && (last == BackconeLexer.PIPE || last == BackconeLexer.ROW);
+        if (!valueStarts) {
+            return false;
+        }
+        String word = next.getText();
+        return Words.reserved(word) == null && (Words.inside(word) == null || holds() == Holds.ROWS);
     }
 
     private boolean isStart(Tok last) {

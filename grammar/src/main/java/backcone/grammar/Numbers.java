@@ -91,7 +91,7 @@ final class Numbers {
             number = groupedDigits(t);
         }
         out.add(number);
-        if (!number.unreadable) {
+        if (!number.faulty) {
             checkSize(number);
         }
         afterNumber(number);
@@ -132,7 +132,9 @@ final class Numbers {
             return unreadable(first, last, Finding.Kind.TWO_POINTS, "");
         }
         Tok whole = span(first, point);
-        find(Finding.Kind.POINT_LAST, whole, first.getText() + ".0");
+        boolean power = first.getText().indexOf('e') >= 0 || first.getText().indexOf('E') >= 0;
+        whole.unreadable = power;
+        find(Finding.Kind.POINT_LAST, whole, power ? first.getText() : first.getText() + ".0");
         return whole;
     }
 

@@ -49,12 +49,7 @@ final class Findings {
                         .withFix("write " + f.other(), span, f.other());
             case POINT_LAST:
                 String whole = text.substring(0, text.length() - 1);
-                return of(
-                                Code.BAD_NUMBER,
-                                span,
-                                "`" + text + "` ends with its point: write `" + whole + "` or `" + f.other() + "`")
-                        .withFix("write " + whole, span, whole)
-                        .withFix("write " + f.other(), span, f.other());
+                return pointLast(text, whole, f.other(), span);
             case TWO_POINTS:
                 return of(
                         Code.BAD_NUMBER,
@@ -123,6 +118,13 @@ final class Findings {
                                 : "blocks and brackets are nested more than 100 deep here: what lies deeper is not read; take some of it out");
         }
         throw new IllegalStateException("a kind of finding without words: " + f.kind());
+    }
+
+    private Diagnostic pointLast(String text, String whole, String decimal, Span span) {
+        String or = decimal.equals(whole) ? "" : " or `" + decimal + "`";
+        Diagnostic d = of(Code.BAD_NUMBER, span, "`" + text + "` ends with its point: write `" + whole + "`" + or)
+                .withFix("write " + whole, span, whole);
+        return or.isEmpty() ? d : d.withFix("write " + decimal, span, decimal);
     }
 
     private static String unclosed(String head) {

@@ -154,7 +154,9 @@ final class Misreadings {
     /** An expression was expected: in an expression, or right behind {@code =} in a value. */
     private static boolean isOperandMissing(Recovery.Failure failure) {
         int rule = failure.rule().getRuleIndex();
-        return (rule == BackconeParser.RULE_primary
+        return (rule == BackconeParser.RULE_operand
+                        || rule == BackconeParser.RULE_sum
+                        || rule == BackconeParser.RULE_compare
                         || rule == BackconeParser.RULE_value
                         || rule == BackconeParser.RULE_expr
                         || rule == BackconeParser.RULE_arg)
@@ -405,7 +407,7 @@ final class Misreadings {
                         || rule == BackconeParser.RULE_rowWord
                         || rule == BackconeParser.RULE_value
                         || rule == BackconeParser.RULE_expr
-                        || rule == BackconeParser.RULE_primary
+                        || rule == BackconeParser.RULE_operand
                         || rule == BackconeParser.RULE_rateWord);
         String expected = Forms.expected(failure.expected());
         if (inClause) {

@@ -1,5 +1,6 @@
 package backcone.engine.parse;
 
+import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.text.FileId;
 import backcone.grammar.Finding;
@@ -14,11 +15,16 @@ import org.jspecify.annotations.Nullable;
 
 /** Collects the findings of a text, at most one for each entry, row or arm, in the order of the text. */
 final class Problems implements Exprs.ItemCheck {
+    /** More findings than this help nobody. */
+    private static final int MOST = 1000;
+
+    private final FileId file;
     private final List<Diagnostic> list = new ArrayList<>();
     private final Recovery recovery;
     private final Misreadings misreadings;
 
     Problems(FileId file, String text, Tokens tokens, Recovery recovery) {
+        this.file = file;
         this.recovery = recovery;
         this.misreadings = new Misreadings(file, tokens.list());
         Findings findings = new Findings(file);
@@ -39,8 +45,23 @@ final class Problems implements Exprs.ItemCheck {
     }
 
     List<Diagnostic> all() {
+        for (Diagnostic d : list) {
+            if (d.code() == Code.TOO_DEEP) {
+                // what else is found in such a text comes from the cut
+                return List.of(d);
+            }
+        }
         list.sort(Comparator.comparingInt(d -> d.span().start()));
-        return List.copyOf(list);
+        if (list.size() <= MOST) {
+            return List.copyOf(list);
+        }
+        List<Diagnostic> shown = new ArrayList<>(list.subList(0, MOST));
+        shown.add(Diagnostic.of(
+                Code.TOO_MANY,
+                file,
+                list.get(MOST).span(),
+                "this text holds " + list.size() + " findings; those from here on are not listed: mend the first ones"));
+        return List.copyOf(shown);
     }
 
     @Override

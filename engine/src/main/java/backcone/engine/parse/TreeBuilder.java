@@ -35,7 +35,8 @@ final class TreeBuilder {
         List<Entry> list = new ArrayList<>();
         for (ParseTree child : c.children) {
             if (child instanceof BackconeParser.EntryContext) {
-                list.add(entry((BackconeParser.EntryContext) child));
+                BackconeParser.EntryContext e = (BackconeParser.EntryContext) child;
+                list.add(e.tree instanceof Entry ? (Entry) e.tree : entry(e));
             }
         }
         return List.copyOf(list);
@@ -62,7 +63,7 @@ final class TreeBuilder {
         return List.copyOf(list);
     }
 
-    private Entry entry(BackconeParser.EntryContext c) {
+    Entry entry(BackconeParser.EntryContext c) {
         BackconeParser.RestContext rest = c.rest();
         check.check(c, rest);
         ParseTree child = c.getChildCount() == 0 ? c : c.getChild(0);
