@@ -54,8 +54,12 @@ final class CheckCommand implements Callable<Integer> {
     @Option(names = "--format", paramLabel = "FORMAT", description = "text or json (default: text).")
     String format = "text";
 
-    @Option(names = "--on", paramLabel = "DATE", description = "Judge acceptances and waivers as of this day (default: today).")
-    @Nullable String on;
+    @Option(
+            names = "--on",
+            paramLabel = "DATE",
+            description = "Judge acceptances and waivers as of this day (default: today).")
+    @Nullable
+    String on;
 
     @Option(names = "--quiet", description = "Only what is wrong, short, outside or open.")
     boolean quiet;
@@ -79,7 +83,8 @@ final class CheckCommand implements Callable<Integer> {
             return 2;
         }
         if (set.files().isEmpty()) {
-            err.println("backcone: no spec (.drive) found here. `backcone start straight-bevel` prints one to begin with.");
+            err.println(
+                    "backcone: no spec (.drive) found here. `backcone start straight-bevel` prints one to begin with.");
             return 2;
         }
         List<Checked> all = analyse(set.files(), today);
@@ -100,7 +105,8 @@ final class CheckCommand implements Callable<Integer> {
             out.add(new Checked(files.get(0), engine.analyse(loader.id(files.get(0)))));
             return out;
         }
-        ExecutorService pool = Executors.newFixedThreadPool(Math.max(1, Runtime.getRuntime().availableProcessors()));
+        ExecutorService pool =
+                Executors.newFixedThreadPool(Math.max(1, Runtime.getRuntime().availableProcessors()));
         try {
             List<Future<Checked>> work = new ArrayList<>();
             for (Path f : files) {

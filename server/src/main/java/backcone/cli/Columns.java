@@ -27,7 +27,8 @@ final class Columns {
         int[] width = new int[n];
         for (List<String> r : rows) {
             for (int i = 0; i < r.size(); i++) {
-                width[i] = Math.max(width[i], r.get(i).codePointCount(0, r.get(i).length()));
+                width[i] =
+                        Math.max(width[i], r.get(i).codePointCount(0, r.get(i).length()));
             }
         }
         if (rows.size() < 2) {

@@ -26,7 +26,8 @@ final class DiskLoader implements Loader {
     }
 
     FileId id(Path file) {
-        return new FileId(root.relativize(file.toAbsolutePath().normalize()).toString().replace('\\', '/'));
+        return new FileId(
+                root.relativize(file.toAbsolutePath().normalize()).toString().replace('\\', '/'));
     }
 
     @Override

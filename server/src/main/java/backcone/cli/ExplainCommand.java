@@ -61,18 +61,22 @@ final class ExplainCommand implements Callable<Integer> {
     @Override
     public Integer call() throws IOException {
         if (!List.of("text", "json", "markdown").contains(format)) {
-            throw new ParameterException(spec.commandLine(), "There is no format `" + format + "`; it is text, json or markdown");
+            throw new ParameterException(
+                    spec.commandLine(), "There is no format `" + format + "`; it is text, json or markdown");
         }
         PrintWriter out = spec.commandLine().getOut();
         PrintWriter err = spec.commandLine().getErr();
         Path path = file.toAbsolutePath().normalize();
         Loader.Loaded read = DiskLoader.read(path);
         if (!(read instanceof Loader.Loaded.Text)) {
-            err.println("backcone: `" + file + "` " + (read instanceof Loader.Loaded.Unreadable u ? "can't be read: " + u.reason() : "does not exist") + ".");
+            err.println("backcone: `" + file + "` "
+                    + (read instanceof Loader.Loaded.Unreadable u ? "can't be read: " + u.reason() : "does not exist")
+                    + ".");
             return 2;
         }
         DiskLoader loader = new DiskLoader(FileSet.root(List.of(path)));
-        Analysis analysis = BackconeEngine.create(loader, LocalDate.now(java.time.ZoneId.systemDefault())).analyse(loader.id(path));
+        Analysis analysis = BackconeEngine.create(loader, LocalDate.now(java.time.ZoneId.systemDefault()))
+                .analyse(loader.id(path));
         Optional<List<Explanation>> rating = analysis.explainRating(name);
         if (rating.isPresent()) {
             rating(rating.get(), out);
@@ -84,7 +88,8 @@ final class ExplainCommand implements Callable<Integer> {
             return 0;
         }
         String near = Suggest.nearest(name, analysis.names());
-        err.println("backcone: nothing in `" + file + "` is called `" + name + "`." + (near == null ? "" : " Did you mean `" + near + "`?"));
+        err.println("backcone: nothing in `" + file + "` is called `" + name + "`."
+                + (near == null ? "" : " Did you mean `" + near + "`?"));
         return 2;
     }
 
@@ -115,7 +120,8 @@ final class ExplainCommand implements Callable<Integer> {
             return;
         }
         boolean markdown = format.equals("markdown");
-        out.println((markdown ? "# " : "") + "Rating " + name + " of " + FileSet.shown(file.toAbsolutePath().normalize()));
+        out.println((markdown ? "# " : "") + "Rating " + name + " of "
+                + FileSet.shown(file.toAbsolutePath().normalize()));
         boolean given = false;
         boolean computed = false;
         for (Explanation e : steps) {
@@ -155,14 +161,22 @@ final class ExplainCommand implements Callable<Integer> {
         String indent = "  ".repeat(level);
         boolean colour = Terminal.colour();
         String symbol = e.symbol() == null ? "" : " " + e.symbol();
-        String value = e.text() != null ? e.text() : Double.isNaN(e.value()) ? e.status().word() : backcone.engine.units.Numbers.format(e.value(), 6) + (e.unit().isEmpty() ? "" : " " + e.unit());
+        String value = e.text() != null
+                ? e.text()
+                : Double.isNaN(e.value())
+                        ? e.status().word()
+                        : backcone.engine.units.Numbers.format(e.value(), 6)
+                                + (e.unit().isEmpty() ? "" : " " + e.unit());
         String meaning = e.meaning() == null ? "" : "   " + e.meaning();
         String head = e.name() + symbol + " = " + value;
-        String status = e.status() == Explanation.Status.COMPUTED ? "" : "  (" + e.status().word() + ")";
+        String status = e.status() == Explanation.Status.COMPUTED
+                ? ""
+                : "  (" + e.status().word() + ")";
         if (markdown) {
             out.println(indent + "- **" + e.name() + "**" + symbol + " = `" + value + "`" + status + meaning);
         } else {
-            out.println(indent + Terminal.Ink.BOLD.paint(head, colour) + status + Terminal.Ink.DIM.paint(meaning, colour));
+            out.println(
+                    indent + Terminal.Ink.BOLD.paint(head, colour) + status + Terminal.Ink.DIM.paint(meaning, colour));
         }
         String more = indent + (markdown ? "  " : "    ");
         String equation = e.equation();

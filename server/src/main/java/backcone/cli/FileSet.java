@@ -55,8 +55,13 @@ final class FileSet {
             Files.walkFileTree(start, new SimpleFileVisitor<>() {
                 @Override
                 public FileVisitResult preVisitDirectory(Path dir, BasicFileAttributes a) {
-                    String name = dir.getFileName() == null ? "" : dir.getFileName().toString();
-                    boolean skip = !dir.equals(start) && (name.startsWith(".") || name.equals("target") || name.equals("node_modules") || Files.exists(dir.resolve(SKIP)));
+                    String name =
+                            dir.getFileName() == null ? "" : dir.getFileName().toString();
+                    boolean skip = !dir.equals(start)
+                            && (name.startsWith(".")
+                                    || name.equals("target")
+                                    || name.equals("node_modules")
+                                    || Files.exists(dir.resolve(SKIP)));
                     return skip ? FileVisitResult.SKIP_SUBTREE : FileVisitResult.CONTINUE;
                 }
 

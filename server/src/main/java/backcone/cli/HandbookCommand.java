@@ -30,8 +30,12 @@ final class HandbookCommand implements Callable<Integer> {
     @SuppressWarnings("NullAway.Init")
     CommandSpec spec;
 
-    @Parameters(arity = "0..1", paramLabel = "NAME", description = "A kind, property, method, choice, quantity or `units`.")
-    @Nullable String name;
+    @Parameters(
+            arity = "0..1",
+            paramLabel = "NAME",
+            description = "A kind, property, method, choice, quantity or `units`.")
+    @Nullable
+    String name;
 
     @Override
     public Integer call() {
@@ -40,7 +44,10 @@ final class HandbookCommand implements Callable<Integer> {
         List<String> page = name == null ? pages.overview() : pages.page(name);
         if (page.isEmpty()) {
             String near = name == null ? null : backcone.engine.model.Suggest.nearest(name, pages.names());
-            spec.commandLine().getErr().println("backcone: the handbook has nothing called `" + name + "`." + (near == null ? "" : " Did you mean `" + near + "`?"));
+            spec.commandLine()
+                    .getErr()
+                    .println("backcone: the handbook has nothing called `" + name + "`."
+                            + (near == null ? "" : " Did you mean `" + near + "`?"));
             return 2;
         }
         page.forEach(out::println);

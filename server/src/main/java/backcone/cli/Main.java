@@ -48,9 +48,14 @@ public final class Main implements Runnable {
     }
 
     public static void main(String[] args) {
-        System.setOut(new PrintStream(new java.io.FileOutputStream(java.io.FileDescriptor.out), false, StandardCharsets.UTF_8));
-        System.setErr(new PrintStream(new java.io.FileOutputStream(java.io.FileDescriptor.err), true, StandardCharsets.UTF_8));
-        int status = run(args, new PrintWriter(System.out, false, StandardCharsets.UTF_8), new PrintWriter(System.err, true, StandardCharsets.UTF_8));
+        System.setOut(new PrintStream(
+                new java.io.FileOutputStream(java.io.FileDescriptor.out), false, StandardCharsets.UTF_8));
+        System.setErr(new PrintStream(
+                new java.io.FileOutputStream(java.io.FileDescriptor.err), true, StandardCharsets.UTF_8));
+        int status = run(
+                args,
+                new PrintWriter(System.out, false, StandardCharsets.UTF_8),
+                new PrintWriter(System.err, true, StandardCharsets.UTF_8));
         System.out.flush();
         System.exit(status);
     }
@@ -60,7 +65,8 @@ public final class Main implements Runnable {
         CommandLine line = new CommandLine(new Main());
         line.setOut(out);
         line.setErr(err);
-        line.setColorScheme(CommandLine.Help.defaultColorScheme(Terminal.colour() ? CommandLine.Help.Ansi.ON : CommandLine.Help.Ansi.OFF));
+        line.setColorScheme(CommandLine.Help.defaultColorScheme(
+                Terminal.colour() ? CommandLine.Help.Ansi.ON : CommandLine.Help.Ansi.OFF));
         line.setParameterExceptionHandler((e, a) -> wrongUsage(e, err));
         line.setExecutionExceptionHandler((e, l, r) -> internal(e, err));
         int status = line.execute(args);
@@ -100,8 +106,10 @@ public final class Main implements Runnable {
     }
 
     private static int internal(Exception e, PrintWriter err) {
-        err.println("backcone: a fault of the program, not of your text. Nothing was written. Please report the lines below with the spec that led here.");
-        err.println("backcone 0.1.0, Java " + System.getProperty("java.version") + ", " + System.getProperty("os.name"));
+        err.println(
+                "backcone: a fault of the program, not of your text. Nothing was written. Please report the lines below with the spec that led here.");
+        err.println(
+                "backcone 0.1.0, Java " + System.getProperty("java.version") + ", " + System.getProperty("os.name"));
         e.printStackTrace(err);
         return INTERNAL;
     }

@@ -22,7 +22,9 @@ final class SelfTestCommand implements Callable<Integer> {
         for (String kind : StartCommand.kinds()) {
             String text = StartCommand.text(kind);
             FileId id = new FileId(kind + ".drive");
-            BackconeEngine engine = BackconeEngine.create(f -> f.equals(id) ? new Loader.Loaded.Text(text) : new Loader.Loaded.Missing(), LocalDate.of(2026, 1, 1));
+            BackconeEngine engine = BackconeEngine.create(
+                    f -> f.equals(id) ? new Loader.Loaded.Text(text) : new Loader.Loaded.Missing(),
+                    LocalDate.of(2026, 1, 1));
             List<CheckCommand.Checked> all = List.of(new CheckCommand.Checked(Path.of(id.path()), engine.analyse(id)));
             new TextReport(out, true, false).write(all);
             JsonReport.write(all, out);

@@ -31,7 +31,8 @@ final class StartCommand implements Callable<Integer> {
     CommandSpec spec;
 
     @Parameters(arity = "0..1", paramLabel = "KIND", description = "straight-bevel, spur, two-stage or hoist.")
-    @Nullable String kind;
+    @Nullable
+    String kind;
 
     static List<String> kinds() {
         return List.of("straight-bevel", "spur", "two-stage", "hoist");
@@ -56,7 +57,12 @@ final class StartCommand implements Callable<Integer> {
         }
         if (!kinds().contains(kind)) {
             String near = backcone.engine.model.Suggest.nearest(kind, kinds());
-            spec.commandLine().getErr().println("backcone: there is no starter `" + kind + "`." + (near == null ? " It is one of " + String.join(", ", kinds()) + "." : " Did you mean `" + near + "`?"));
+            spec.commandLine()
+                    .getErr()
+                    .println("backcone: there is no starter `" + kind + "`."
+                            + (near == null
+                                    ? " It is one of " + String.join(", ", kinds()) + "."
+                                    : " Did you mean `" + near + "`?"));
             return Main.WRONG_USAGE;
         }
         out.print(text(kind));

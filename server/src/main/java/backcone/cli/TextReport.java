@@ -48,8 +48,11 @@ final class TextReport {
     }
 
     private static boolean worthSaying(CheckCommand.Checked c) {
-        return c.analysis().diagnostics().stream().anyMatch(d -> d.severity() == Severity.ERROR || d.severity() == Severity.WARNING)
-                || c.analysis().drives().stream().anyMatch(d -> d.requirements().stream().anyMatch(r -> !r.state().isMet()));
+        return c.analysis().diagnostics().stream()
+                        .anyMatch(d -> d.severity() == Severity.ERROR || d.severity() == Severity.WARNING)
+                || c.analysis().drives().stream()
+                        .anyMatch(d -> d.requirements().stream()
+                                .anyMatch(r -> !r.state().isMet()));
     }
 
     private void count(CheckCommand.Checked c) {
@@ -63,7 +66,9 @@ final class TextReport {
         out.println(Ink.BOLD.paint(shown, colour));
         Places places = new Places(c.analysis().text());
         for (Diagnostic d : c.analysis().diagnostics()) {
-            if (d.severity() == Severity.HINT || CheckCommand.aboutStates(d) || (quiet && d.severity() == Severity.INFORMATION)) {
+            if (d.severity() == Severity.HINT
+                    || CheckCommand.aboutStates(d)
+                    || (quiet && d.severity() == Severity.INFORMATION)) {
                 continue; // the table tells it
             }
             problem(shown, places, d);
@@ -93,7 +98,8 @@ final class TextReport {
                 word = "note";
                 ink = Ink.CYAN;
         }
-        out.println("  " + shown + ":" + line + ":" + column + " " + ink.paint(word, colour) + " " + d.message() + " " + Ink.DIM.paint("[" + d.code().id() + "]", colour));
+        out.println("  " + shown + ":" + line + ":" + column + " " + ink.paint(word, colour) + " " + d.message() + " "
+                + Ink.DIM.paint("[" + d.code().id() + "]", colour));
         if (d.severity() == Severity.ERROR) {
             String text = places.lineText(line);
             if (!text.isBlank() && text.length() < 200) {
@@ -132,7 +138,8 @@ final class TextReport {
         table.print(out, this::paint);
         for (CheckAnswer c : d.unrequired()) {
             if (!quiet && !Double.isNaN(c.value())) {
-                notes.add(c.id() + " is " + Numbers.format(c.value(), 4) + (c.unit().isEmpty() ? "" : " " + c.unit()) + ", not required");
+                notes.add(c.id() + " is " + Numbers.format(c.value(), 4)
+                        + (c.unit().isEmpty() ? "" : " " + c.unit()) + ", not required");
             }
         }
         Set<String> once = new LinkedHashSet<>(notes);
@@ -150,7 +157,10 @@ final class TextReport {
     private void trust(DriveAnswer d) {
         int n = d.recalled().size();
         out.println("      weakest source behind these figures: " + d.weakestTrust()
-                + (n == 0 ? "" : " (" + n + (n == 1 ? " equation or table" : " equations or tables") + " from memory; `backcone explain` names them)"));
+                + (n == 0
+                        ? ""
+                        : " (" + n + (n == 1 ? " equation or table" : " equations or tables")
+                                + " from memory; `backcone explain` names them)"));
     }
 
     private void requirement(DriveAnswer d, RequirementAnswer r, Columns table, List<String> notes) {
@@ -160,7 +170,9 @@ final class TextReport {
                 ? Numbers.format(r.required(), 4) + " … " + Numbers.format(r.upper(), 4) + unit
                 : Double.isNaN(r.required()) ? "holds" : r.comparison() + " " + Numbers.format(r.required(), 4) + unit;
         String margin = margin(r);
-        String reserve = Double.isNaN(r.loadReserve()) ? "" : "× " + Numbers.format(r.loadReserve(), 3) + (r.id().equals(d.governing()) ? " governs" : "");
+        String reserve = Double.isNaN(r.loadReserve())
+                ? ""
+                : "× " + Numbers.format(r.loadReserve(), 3) + (r.id().equals(d.governing()) ? " governs" : "");
         String after = "";
         RequirementAnswer.Acceptance a = r.accepted();
         if (r.state() == State.ACCEPTED && a != null) {
@@ -186,7 +198,11 @@ final class TextReport {
             StringBuilder b = new StringBuilder(r.id()).append(" needs ");
             for (int i = 0; i < r.missing().size(); i++) {
                 RequirementAnswer.Missing m = r.missing().get(i);
-                b.append(i == 0 ? "" : i == r.missing().size() - 1 ? " and " : ", ").append(m.path()).append(" (").append(m.meaning()).append(')');
+                b.append(i == 0 ? "" : i == r.missing().size() - 1 ? " and " : ", ")
+                        .append(m.path())
+                        .append(" (")
+                        .append(m.meaning())
+                        .append(')');
             }
             notes.add(b.toString());
         } else if (r.fault() != null) {
@@ -196,7 +212,9 @@ final class TextReport {
             notes.add((p.waived() ? "waived: " : "outside: ") + p.message());
         }
         for (RequirementAnswer.Band b : r.bands()) {
-            notes.add(r.id() + " hangs on an open point: with reading `" + b.reading() + "` of `" + b.equation() + "` it is " + Numbers.format(b.value(), 4) + " and " + b.state().word());
+            notes.add(r.id() + " hangs on an open point: with reading `" + b.reading() + "` of `" + b.equation()
+                    + "` it is " + Numbers.format(b.value(), 4) + " and "
+                    + b.state().word());
         }
         RequirementAnswer.Acceptance a = r.accepted();
         if (a != null && r.state() == State.ACCEPTED) {
@@ -243,7 +261,8 @@ final class TextReport {
             parts.add(warnings + (warnings == 1 ? " warning" : " warnings"));
         }
         out.println();
-        out.println(count(all.size(), "file") + ", " + count(drives, "drive") + ": " + (parts.isEmpty() ? "nothing required" : String.join(", ", parts)));
+        out.println(count(all.size(), "file") + ", " + count(drives, "drive") + ": "
+                + (parts.isEmpty() ? "nothing required" : String.join(", ", parts)));
         out.println(Ink.DIM.paint(Caution.TEXT, colour));
     }
 

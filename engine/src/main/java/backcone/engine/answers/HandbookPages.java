@@ -58,8 +58,12 @@ public final class HandbookPages {
         out.add("Methods");
         for (List<MethodDef> ms : library.methods.values()) {
             for (MethodDef m : ms) {
-                String editions = m.body().editions.isEmpty() ? "" : " (editions " + String.join(", ", m.body().editions) + ")";
-                out.add(pair("  ", m.name(), "for " + m.kind() + ": " + (m.meaning() == null ? "" : m.meaning()) + editions));
+                String editions =
+                        m.body().editions.isEmpty() ? "" : " (editions " + String.join(", ", m.body().editions) + ")";
+                out.add(pair(
+                        "  ",
+                        m.name(),
+                        "for " + m.kind() + ": " + (m.meaning() == null ? "" : m.meaning()) + editions));
             }
         }
         out.add("");
@@ -89,8 +93,10 @@ public final class HandbookPages {
         }
         QuantityKind q = library.quantities.get(name);
         if (q != null) {
-            out.add(q.name() + ": " + q.meaning() + ", shown in " + q.shown().text() + (q.unlike().isEmpty() ? "" : ", not to be mixed with " + String.join(", ", q.unlike())));
-            out.add("  units: " + String.join(" ", library.units().unitsOf(q.shown().dimension())));
+            out.add(q.name() + ": " + q.meaning() + ", shown in " + q.shown().text()
+                    + (q.unlike().isEmpty() ? "" : ", not to be mixed with " + String.join(", ", q.unlike())));
+            out.add("  units: "
+                    + String.join(" ", library.units().unitsOf(q.shown().dimension())));
         }
         TableDef t = library.tables.get(name);
         if (t != null) {
@@ -98,7 +104,8 @@ public final class HandbookPages {
         }
         FunctionDef f = library.functions.get(name);
         if (f != null) {
-            out.add("function " + f.name() + ": " + (f.syntax().meaning() == null ? "" : f.syntax().meaning()));
+            out.add("function " + f.name() + ": "
+                    + (f.syntax().meaning() == null ? "" : f.syntax().meaning()));
             out.add("  = " + text(f.file(), f.syntax().value().span()));
         }
         if (out.isEmpty()) {
@@ -112,7 +119,8 @@ public final class HandbookPages {
         for (String u : library.units().words()) {
             if (library.units().parse(u) instanceof Units.Parse.Ok ok) {
                 String also = library.units().nameOf(ok.unit().dimension());
-                out.add(pair("  ", u, library.units().describe(u) + (also.startsWith("quantity") ? "" : " (" + also + ")")));
+                out.add(pair(
+                        "  ", u, library.units().describe(u) + (also.startsWith("quantity") ? "" : " (" + also + ")")));
             }
         }
         out.add("");
@@ -151,7 +159,8 @@ public final class HandbookPages {
             i.methods().forEach(n -> out.add("  includes " + n + " (`backcone handbook " + n + "`)"));
         }
         for (Entry.Applies a : m.body().applies) {
-            out.add("  applies when " + text(m.file(), a.condition().span()) + (a.otherwise() == null ? "" : "; else: " + a.otherwise()));
+            out.add("  applies when " + text(m.file(), a.condition().span())
+                    + (a.otherwise() == null ? "" : "; else: " + a.otherwise()));
         }
         body(m.body(), "  ", out);
         for (Entry.Example x : m.body().examples) {
@@ -175,8 +184,11 @@ public final class HandbookPages {
             table(t, indent, out);
         }
         for (BodyDef.LimitDef l : b.limits) {
-            out.add(indent + "limit " + l.syntax().name() + ": " + text(l.file(), l.syntax().condition().span())
-                    + (l.syntax().otherwise() == null ? "" : "; else: " + l.syntax().otherwise()));
+            out.add(indent + "limit " + l.syntax().name() + ": "
+                    + text(l.file(), l.syntax().condition().span())
+                    + (l.syntax().otherwise() == null
+                            ? ""
+                            : "; else: " + l.syntax().otherwise()));
         }
         for (Map.Entry<String, List<BodyDef>> e : b.each.entrySet()) {
             out.add(indent + "for each " + e.getKey() + ":");
@@ -190,21 +202,29 @@ public final class HandbookPages {
         out.add(pair(indent, (d.role == Decl.Role.CHECK ? "check " : "") + d.name + symbol, what));
         String more = indent + "    ";
         if (d.value != null) {
-            out.add(more + (d.how == Entry.Given.DEFAULT ? "default " : "= ") + text(d.file, d.value.span()) + (d.resultUnit == null ? "" : "   in " + d.resultUnit.text()));
+            out.add(more
+                    + (d.how == Entry.Given.DEFAULT ? "default " : "= ")
+                    + text(d.file, d.value.span())
+                    + (d.resultUnit == null ? "" : "   in " + d.resultUnit.text()));
         }
         if (!d.taking.isEmpty()) {
             StringBuilder t = new StringBuilder("taking ");
             for (int i = 0; i < d.taking.size(); i++) {
-                t.append(i == 0 ? "" : ", ").append(d.taking.get(i).path().text()).append(" in ").append(d.taking.get(i).unit());
+                t.append(i == 0 ? "" : ", ")
+                        .append(d.taking.get(i).path().text())
+                        .append(" in ")
+                        .append(d.taking.get(i).unit());
             }
             out.add(more + t);
         }
         for (Note.Reading r : d.readings) {
-            out.add(more + "reading " + r.name() + " = " + text(d.file, r.value().span()));
+            out.add(more + "reading " + r.name() + " = "
+                    + text(d.file, r.value().span()));
         }
         Note.InRange range = d.range;
         if (range != null) {
-            out.add(more + "from " + text(d.file, range.low().span()) + " to " + text(d.file, range.high().span()));
+            out.add(more + "from " + text(d.file, range.low().span()) + " to "
+                    + text(d.file, range.high().span()));
         }
         if (d.needed) {
             out.add(more + "never assumed" + (d.neededBecause == null ? "" : ": " + d.neededBecause));
@@ -240,11 +260,13 @@ public final class HandbookPages {
     }
 
     private void table(TableDef t, String indent, List<String> out) {
-        out.add(indent + "table " + t.name() + ": " + (t.syntax.meaning() == null ? "" : t.syntax.meaning()) + (t.per == null ? "" : " (" + source(t.per) + ", " + t.trust().word() + ")"));
+        out.add(indent + "table " + t.name() + ": " + (t.syntax.meaning() == null ? "" : t.syntax.meaning())
+                + (t.per == null ? "" : " (" + source(t.per) + ", " + t.trust().word() + ")"));
         for (Entry.Row r : t.syntax.rows()) {
             StringBuilder b = new StringBuilder(indent + "    ");
             for (int i = 0; i < r.cells().size(); i++) {
-                b.append(i == 0 ? "" : " | ").append(text(t.file, r.cells().get(i).span()));
+                b.append(i == 0 ? "" : " | ")
+                        .append(text(t.file, r.cells().get(i).span()));
             }
             out.add(b.toString());
         }
@@ -282,7 +304,9 @@ public final class HandbookPages {
     }
 
     private static String pair(String indent, String name, @Nullable String meaning) {
-        return meaning == null || meaning.isEmpty() ? indent + name : String.format(java.util.Locale.ROOT, "%s%-28s %s", indent, name, meaning);
+        return meaning == null || meaning.isEmpty()
+                ? indent + name
+                : String.format(java.util.Locale.ROOT, "%s%-28s %s", indent, name, meaning);
     }
 
     private String text(FileId file, Span span) {

@@ -35,7 +35,7 @@ public final class Evaluator {
                 i = end;
             } else if (op != Op.END) {
                 double v = step(op, r, load, inputs);
-                value[r] = v - v == 0 ? v : Double.NaN;
+                value[r] = Double.isFinite(v) ? v : Double.NaN;
             }
         }
     }
@@ -55,7 +55,7 @@ public final class Evaluator {
                 return -v[tape.a(r)];
             case NOT: {
                 double x = v[tape.a(r)];
-                return x != x ? x : x == 0 ? 1 : 0;
+                return Double.isNaN(x) ? x : x == 0 ? 1 : 0;
             }
             case ABS:
                 return Math.abs(v[tape.a(r)]);
@@ -124,7 +124,7 @@ public final class Evaluator {
             }
             case SELECT: {
                 double x = v[tape.a(r)];
-                return x != x ? x : x != 0 ? v[tape.b(r)] : v[tape.c(r)];
+                return Double.isNaN(x) ? x : x != 0 ? v[tape.b(r)] : v[tape.c(r)];
             }
             case TABLE:
                 return tape.table(tape.b(r)).at(v[tape.a(r)]);
@@ -134,7 +134,7 @@ public final class Evaluator {
                 return tape.table(tape.b(r)).nextKey(v[tape.a(r)]);
             case LISTED_KEY: {
                 double x = v[tape.a(r)];
-                return x != x ? x : tape.table(tape.b(r)).listed(x);
+                return Double.isNaN(x) ? x : tape.table(tape.b(r)).listed(x);
             }
             default:
                 throw new IllegalStateException(op.name());
@@ -156,7 +156,7 @@ public final class Evaluator {
     }
 
     private static double compare(Op op, double x, double y) {
-        if (x != x || y != y) {
+        if (Double.isNaN(x) || Double.isNaN(y)) {
             return Double.NaN;
         }
         boolean is;
@@ -214,7 +214,7 @@ public final class Evaluator {
             x = lo;
         } else if (fhi == 0) {
             x = hi;
-        } else if (flo < 0 != fhi < 0 && flo - flo == 0 && fhi - fhi == 0) {
+        } else if (flo < 0 != fhi < 0 && Double.isFinite(flo) && Double.isFinite(fhi)) {
             x = bracketed(i, end, lo, hi, flo, fhi, load, inputs);
         }
         value[r] = x;
@@ -240,7 +240,7 @@ public final class Evaluator {
                 break;
             }
             double f = residual(i, end, x, load, inputs);
-            if (f != f) {
+            if (Double.isNaN(f)) {
                 return Double.NaN;
             }
             if (f == 0) {
@@ -273,7 +273,7 @@ public final class Evaluator {
         int most = (int) tape.constant(r);
         for (int k = 0; k < most; k++) {
             double next = residual(i, end, x, load, inputs);
-            if (next != next) {
+            if (Double.isNaN(next)) {
                 break;
             }
             if (Math.abs(next - x) <= tolerance) {

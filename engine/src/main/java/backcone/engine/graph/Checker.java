@@ -83,7 +83,15 @@ public final class Checker {
             for (MethodDef m : ms) {
                 Element mesh = sample(m.kind());
                 if (mesh != null) {
-                    Element space = el.space(mesh, m, m.name(), m.body().editions.isEmpty() ? null : m.body().editions.get(0), m.file(), Span.NONE);
+                    Element space = el.space(
+                            mesh,
+                            m,
+                            m.name(),
+                            m.body().editions.isEmpty()
+                                    ? null
+                                    : m.body().editions.get(0),
+                            m.file(),
+                            Span.NONE);
                     element(space, new ArrayList<>());
                     mesh.named.remove(m.name());
                     mesh.ratings.clear();
@@ -100,7 +108,10 @@ public final class Checker {
         element(e, new ArrayList<>());
         Set<String> done = new HashSet<>();
         for (Object x : new ArrayList<>(e.named.values())) {
-            if (x instanceof Element part && part.parent == e && part.shape != Shapes.WORD && (!part.fixed || done.add(part.collection))) {
+            if (x instanceof Element part
+                    && part.parent == e
+                    && part.shape != Shapes.WORD
+                    && (!part.fixed || done.add(part.collection))) {
                 whole(part);
             }
         }
@@ -136,13 +147,22 @@ public final class Checker {
             exprs.add(f.syntax().value());
         }
         if (functions.put(f, true) == null) {
-            graph.compiler.callFunction(f, args, new Expr.Call(new Expr.Path(List.of(f.syntax().name()), f.syntax().name().span()), exprs, f.syntax().name().span()),
+            graph.compiler.callFunction(
+                    f,
+                    args,
+                    new Expr.Call(
+                            new Expr.Path(
+                                    List.of(f.syntax().name()),
+                                    f.syntax().name().span()),
+                            exprs,
+                            f.syntax().name().span()),
                     Frame.at(f.file(), false));
         }
     }
 
     /** One element of a kind, with the drive around it. */
-    @Nullable Element sample(String kind) {
+    @Nullable
+    Element sample(String kind) {
         Element known = samples.get(kind);
         if (known != null) {
             return known;
@@ -187,7 +207,11 @@ public final class Checker {
     private void element(Element e, List<Axis> axes) {
         Shape s = e.shape;
         for (Decl d : s.clashes) {
-            graph.problems.add(Code.HIDDEN_NAME, d.file, d.nameNode.span(), "`" + d.symbolOrName() + "` is declared twice for the same element.");
+            graph.problems.add(
+                    Code.HIDDEN_NAME,
+                    d.file,
+                    d.nameNode.span(),
+                    "`" + d.symbolOrName() + "` is declared twice for the same element.");
         }
         for (Decl d : s.decls) {
             Object x = e.own(d.symbolOrName());
@@ -219,7 +243,8 @@ public final class Checker {
             if (el == null || (el.fixed && el.parent == space && axes.isEmpty())) {
                 continue;
             }
-            List<Axis> more = new ArrayList<>(e.space != null ? e.axes : e.fixed ? List.of(new Axis(e.collection, e)) : axes);
+            List<Axis> more =
+                    new ArrayList<>(e.space != null ? e.axes : e.fixed ? List.of(new Axis(e.collection, e)) : axes);
             more.add(new Axis(each.getKey(), el));
             Element at = e.fixed && e.parent != null ? e.parent : space;
             Element combo = at.combo(more, graph.nextId);
@@ -255,14 +280,23 @@ public final class Checker {
     private void equation(Slot s, Expr e, Ctx ctx) {
         Decl d = s.decl;
         Frame f = new Frame(s, d.file, d.taking, false);
-        if (d.kind instanceof ValueKind.Choice c && e instanceof Expr.Path p && p.names().size() == 1 && c.kind().has(p.text())) {
+        if (d.kind instanceof ValueKind.Choice c
+                && e instanceof Expr.Path p
+                && p.names().size() == 1
+                && c.kind().has(p.text())) {
             return;
         }
         Val v = graph.compiler.eval(e, ctx, f);
         if (d.kind instanceof ValueKind.Quantity && d.resultUnit != null) {
-            if (v instanceof Val.Num n && n.dimension() != null && !n.dimension().isNone()) {
-                graph.problems.add(Code.DIMENSION_MISMATCH, d.file, e.span(), "With `in " + d.resultUnit.text()
-                        + "` the right side must be a pure number; it has dimension " + n.dimension() + ".");
+            if (v instanceof Val.Num n
+                    && n.dimension() != null
+                    && !n.dimension().isNone()) {
+                graph.problems.add(
+                        Code.DIMENSION_MISMATCH,
+                        d.file,
+                        e.span(),
+                        "With `in " + d.resultUnit.text() + "` the right side must be a pure number; it has dimension "
+                                + n.dimension() + ".");
             }
             return;
         }
@@ -270,12 +304,25 @@ public final class Checker {
     }
 
     private void fits(Slot s, Val v, Expr e) {
-        if (s.decl.kind instanceof ValueKind.Quantity q && v instanceof Val.Num n && n.dimension() != null
+        if (s.decl.kind instanceof ValueKind.Quantity q
+                && v instanceof Val.Num n
+                && n.dimension() != null
                 && n.dimension() != q.kind().shown().dimension()) {
-            graph.problems.add(Code.DIMENSION_MISMATCH, s.decl.file, e.span(), "`" + s.decl.symbolOrName() + "` is declared as " + q.kind().name() + " ("
-                    + q.kind().shown().dimension() + "); this gives " + n.dimension() + ".");
-        } else if (s.decl.kind instanceof ValueKind.Quantity && !(v instanceof Val.Num) && !(v instanceof Val.Open) && !(v instanceof Val.Bad)) {
-            graph.problems.add(Code.WRONG_FORM, s.decl.file, e.span(), "`" + s.decl.symbolOrName() + "` is a number; this is " + Compiler.what(v) + ".");
+            graph.problems.add(
+                    Code.DIMENSION_MISMATCH,
+                    s.decl.file,
+                    e.span(),
+                    "`" + s.decl.symbolOrName() + "` is declared as " + q.kind().name() + " ("
+                            + q.kind().shown().dimension() + "); this gives " + n.dimension() + ".");
+        } else if (s.decl.kind instanceof ValueKind.Quantity
+                && !(v instanceof Val.Num)
+                && !(v instanceof Val.Open)
+                && !(v instanceof Val.Bad)) {
+            graph.problems.add(
+                    Code.WRONG_FORM,
+                    s.decl.file,
+                    e.span(),
+                    "`" + s.decl.symbolOrName() + "` is a number; this is " + Compiler.what(v) + ".");
         }
     }
 
@@ -332,7 +379,12 @@ public final class Checker {
             } else if (when instanceof Expr.Path p && p.names().size() == 1) {
                 said.add(p.text());
                 if (s instanceof Val.Picked w && w.kind() != null && !w.kind().has(p.text())) {
-                    compiler.problem(Code.UNKNOWN_CHOICE, f, p.span(), "`" + p.text() + "` is none of " + Compiler.list(w.kind().words().keySet()) + ".");
+                    compiler.problem(
+                            Code.UNKNOWN_CHOICE,
+                            f,
+                            p.span(),
+                            "`" + p.text() + "` is none of "
+                                    + Compiler.list(w.kind().words().keySet()) + ".");
                 }
             }
             Val v = arm(compiler, a.value(), ctx, f);
@@ -343,7 +395,10 @@ public final class Checker {
                 result = new Val.Num(0, d, Double.NaN);
             }
         }
-        if (s instanceof Val.Picked w && w.kind() != null && !otherwise && said.size() < w.kind().words().size()) {
+        if (s instanceof Val.Picked w
+                && w.kind() != null
+                && !otherwise
+                && said.size() < w.kind().words().size()) {
             missing(compiler, w.kind(), said, c, f);
         }
         return result == null ? new Val.Bad() : result;
@@ -352,12 +407,20 @@ public final class Checker {
     private static void missing(Compiler compiler, ChoiceKind kind, Set<String> said, Expr.Choose c, Frame f) {
         List<String> left = new ArrayList<>(kind.words().keySet());
         left.removeAll(said);
-        compiler.problem(Code.INCOMPLETE_CHOICE, f, c.span(), "This choice says nothing for " + Compiler.list(left) + "; name every word or add `else`.");
+        compiler.problem(
+                Code.INCOMPLETE_CHOICE,
+                f,
+                c.span(),
+                "This choice says nothing for " + Compiler.list(left) + "; name every word or add `else`.");
     }
 
     private Val arm(Compiler compiler, Expr e, Ctx ctx, Frame f) {
         Slot s = f.slot;
-        if (s != null && s.decl.kind instanceof ValueKind.Choice k && e instanceof Expr.Path p && p.names().size() == 1 && k.kind().has(p.text())) {
+        if (s != null
+                && s.decl.kind instanceof ValueKind.Choice k
+                && e instanceof Expr.Path p
+                && p.names().size() == 1
+                && k.kind().has(p.text())) {
             return new Val.Word(p.text(), k.kind());
         }
         return compiler.eval(e, ctx, f);

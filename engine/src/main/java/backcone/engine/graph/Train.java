@@ -24,8 +24,12 @@ final class Train {
                 continue;
             }
             if (a == b) {
-                graph.problems.add(Code.SPLIT_TRAIN, graph.fileOf(mesh), mesh.span, "Both members of `" + mesh.name + "` sit on the shaft `" + a.name
-                        + "`; put one of them on another shaft.");
+                graph.problems.add(
+                        Code.SPLIT_TRAIN,
+                        graph.fileOf(mesh),
+                        mesh.span,
+                        "Both members of `" + mesh.name + "` sit on the shaft `" + a.name
+                                + "`; put one of them on another shaft.");
                 continue;
             }
             next.computeIfAbsent(a, k -> new ArrayList<>()).add(b);
@@ -48,15 +52,21 @@ final class Train {
                     cameFrom.put(t, s);
                     queue.add(t);
                 } else if (t != cameFrom.get(s) && cameFrom.get(t) != s) {
-                    graph.problems.add(Code.SPLIT_TRAIN, graph.fileOf(t), t.span, "The shaft `" + t.name
-                            + "` is reached by two ways from `" + source.name + "`; a train of shafts is a tree, split power paths are not covered.");
+                    graph.problems.add(
+                            Code.SPLIT_TRAIN,
+                            graph.fileOf(t),
+                            t.span,
+                            "The shaft `" + t.name + "` is reached by two ways from `" + source.name
+                                    + "`; a train of shafts is a tree, split power paths are not covered.");
                 }
             }
         }
     }
 
     private static @Nullable Element source(DriveGraph graph) {
-        if (graph.drive.own("power_from") instanceof Slot s && s.isGiven() && graph.compiler.value(s) instanceof Val.Ref r) {
+        if (graph.drive.own("power_from") instanceof Slot s
+                && s.isGiven()
+                && graph.compiler.value(s) instanceof Val.Ref r) {
             return r.element();
         }
         Element k = graph.activeCase;
@@ -67,7 +77,9 @@ final class Train {
     }
 
     static @Nullable Element shaftOf(DriveGraph graph, Element mesh, String member) {
-        if (mesh.own(member) instanceof Element gear && gear.own("on") instanceof Slot s && s.isGiven()
+        if (mesh.own(member) instanceof Element gear
+                && gear.own("on") instanceof Slot s
+                && s.isGiven()
                 && graph.compiler.value(s) instanceof Val.Ref r) {
             return r.element();
         }

@@ -5,10 +5,4 @@ import backcone.engine.text.FileId;
 import org.jspecify.annotations.Nullable;
 
 /** A method or a chapter for a kind of block. */
-public record MethodDef(
-        String name,
-        String kind,
-        @Nullable String meaning,
-        BodyDef body,
-        FileId file,
-        Entry syntax) {}
+public record MethodDef(String name, String kind, @Nullable String meaning, BodyDef body, FileId file, Entry syntax) {}

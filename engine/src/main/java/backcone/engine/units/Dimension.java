@@ -86,7 +86,11 @@ public final class Dimension {
             b.append(b.length() == 0 ? "" : " ").append(k);
             long a = Math.abs(v);
             if (a != PARTS) {
-                b.append('^').append(a % PARTS == 0 ? Long.toString(a / PARTS) : "(" + Numbers.exact((double) a / PARTS) + ")");
+                b.append('^')
+                        .append(
+                                a % PARTS == 0
+                                        ? Long.toString(a / PARTS)
+                                        : "(" + Numbers.exact((double) a / PARTS) + ")");
             }
         });
         String top = over.length() == 0 ? "1" : over.toString();

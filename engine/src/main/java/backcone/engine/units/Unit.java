@@ -6,7 +6,13 @@ import org.jspecify.annotations.Nullable;
  * A unit as written. A value in it times numerator/denominator (plus offset) is the value in mm, N, s, rad, K.
  * {@code kind} names the quantity kind this text belongs to where two kinds share the dimension, else it is null.
  */
-public record Unit(String text, Dimension dimension, double numerator, double denominator, double offset, @Nullable String kind) {
+public record Unit(
+        String text,
+        Dimension dimension,
+        double numerator,
+        double denominator,
+        double offset,
+        @Nullable String kind) {
 
     /** The value in computing units. */
     public double toBase(double value) {

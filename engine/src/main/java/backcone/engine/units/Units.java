@@ -23,13 +23,40 @@ public final class Units {
 
     /** Everyday names of dimensions, by a unit of theirs. */
     private static final String[][] NAMES = {
-        {"1", "pure number"}, {"mm", "length"}, {"mm^2", "area"}, {"mm^3", "volume"}, {"s", "time"}, {"rad", "angle"}, {"rpm", "speed of rotation"},
-        {"Hz", "frequency"}, {"m/s", "speed"}, {"m/s^2", "acceleration"}, {"K", "temperature"}, {"N", "force"}, {"N/mm", "force per length"},
-        {"MPa", "stress"}, {"N*mm", "torque or energy"}, {"kW", "power"}, {"kg", "mass"}, {"kg/dm^3", "density"}, {"mm^2/s", "kinematic viscosity"},
-        {"mPa*s", "dynamic viscosity"}, {"1/in", "one over a length"}, {"1/MPa", "one over a stress"}, {"HBW", "Brinell hardness"},
-        {"HV", "Vickers hardness"}, {"HRC", "Rockwell C hardness"}, {"HR15N", "Rockwell 15N hardness"}, {"ISO17485", "grade of ISO 17485"},
-        {"ISO1328", "class of ISO 1328-1"}, {"AGMA_Q", "AGMA quality number"}, {"AGMA_A", "AGMA accuracy grade"}, {"N/(mm*um)", "stiffness per width"},
-        {"kg*m^2", "moment of inertia"}, {"W/(m^2*K)", "heat transfer coefficient"}, {"kg/mm", "mass per width"},
+        {"1", "pure number"},
+        {"mm", "length"},
+        {"mm^2", "area"},
+        {"mm^3", "volume"},
+        {"s", "time"},
+        {"rad", "angle"},
+        {"rpm", "speed of rotation"},
+        {"Hz", "frequency"},
+        {"m/s", "speed"},
+        {"m/s^2", "acceleration"},
+        {"K", "temperature"},
+        {"N", "force"},
+        {"N/mm", "force per length"},
+        {"MPa", "stress"},
+        {"N*mm", "torque or energy"},
+        {"kW", "power"},
+        {"kg", "mass"},
+        {"kg/dm^3", "density"},
+        {"mm^2/s", "kinematic viscosity"},
+        {"mPa*s", "dynamic viscosity"},
+        {"1/in", "one over a length"},
+        {"1/MPa", "one over a stress"},
+        {"HBW", "Brinell hardness"},
+        {"HV", "Vickers hardness"},
+        {"HRC", "Rockwell C hardness"},
+        {"HR15N", "Rockwell 15N hardness"},
+        {"ISO17485", "grade of ISO 17485"},
+        {"ISO1328", "class of ISO 1328-1"},
+        {"AGMA_Q", "AGMA quality number"},
+        {"AGMA_A", "AGMA accuracy grade"},
+        {"N/(mm*um)", "stiffness per width"},
+        {"kg*m^2", "moment of inertia"},
+        {"W/(m^2*K)", "heat transfer coefficient"},
+        {"kg/mm", "mass per width"},
     };
 
     private static final Units STANDARD = new Units();
@@ -48,7 +75,13 @@ public final class Units {
     }
 
     /** An exact scale: fraction times a power of pi. */
-    private record Exact(Dimension dimension, BigInteger numerator, BigInteger denominator, int pi, @Nullable BigDecimal offset, @Nullable String kind) {
+    private record Exact(
+            Dimension dimension,
+            BigInteger numerator,
+            BigInteger denominator,
+            int pi,
+            @Nullable BigDecimal offset,
+            @Nullable String kind) {
         Exact times(Exact o, int sign) {
             Dimension d = sign > 0 ? dimension.times(o.dimension) : dimension.over(o.dimension);
             BigInteger n = numerator.multiply(sign > 0 ? o.numerator : o.denominator);
@@ -168,7 +201,9 @@ public final class Units {
         Reader r = new Reader(text);
         Exact e;
         try {
-            e = text.startsWith("/") ? Exact.one(Dimension.NONE).times(new Reader(text.substring(1)).all(), -1) : r.all();
+            e = text.startsWith("/")
+                    ? Exact.one(Dimension.NONE).times(new Reader(text.substring(1)).all(), -1)
+                    : r.all();
         } catch (BadUnit bad) {
             return bad(text, bad);
         }
@@ -285,7 +320,8 @@ public final class Units {
             }
             if (at < text.length() && text.charAt(at) == '^') {
                 int start = ++at;
-                while (at < text.length() && (Character.isDigit(text.charAt(at)) || (at == start && text.charAt(at) == '-'))) {
+                while (at < text.length()
+                        && (Character.isDigit(text.charAt(at)) || (at == start && text.charAt(at) == '-'))) {
                     at++;
                 }
                 int power;
@@ -308,7 +344,8 @@ public final class Units {
     private Parse bad(String text, BadUnit bad) {
         String word = bad.word;
         if (word == null || word.isEmpty()) {
-            return new Parse.Bad("`" + text + "` is no unit; write units like `N/mm^2` or `kg/(m*s)`, without blanks.", null);
+            return new Parse.Bad(
+                    "`" + text + "` is no unit; write units like `N/mm^2` or `kg/(m*s)`, without blanks.", null);
         }
         String near = nearest(word);
         if (near == null) {
