@@ -146,7 +146,6 @@ final class CheckCommand implements Callable<Integer> {
         switch (d.code()) {
             case SHORT:
             case OUTSIDE:
-            case OPEN:
             case ASSERT_FAILED:
             case ACCEPTANCE_EXPIRED:
             case WAIVER_EXPIRED:

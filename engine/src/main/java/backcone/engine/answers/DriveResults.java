@@ -316,7 +316,7 @@ public final class DriveResults {
             }
             Code code = level.equals("error")
                     ? Code.IMPOSSIBLE
-                    : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
+                    : level.equals("sum") ? Code.SUM_OF_SHARES : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
             Element at = l.at().isSpace() && l.at().parent != null ? l.at().parent : l.at();
             FileId file = run.graph.fileOfElement(at);
             problems.add(Diagnostic.of(code, file, at.headSpan(), capital(limitText(run, l)) + ".")

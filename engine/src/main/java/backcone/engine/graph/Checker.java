@@ -239,6 +239,7 @@ public final class Checker {
                 graph.compiler.eval(r.syntax().when(), ctx, f);
             }
             graph.compiler.eval(r.syntax().equation(), ctx, f);
+            solvable(r, ctx);
         }
         for (BodyDef.LimitDef l : s.limits) {
             graph.compiler.eval(l.syntax().condition(), ctx, Frame.at(l.file(), false));
@@ -268,10 +269,50 @@ public final class Checker {
         }
     }
 
+    /** A relation must be solvable for each of its names: every one is reached by + - * / and fixed powers, once. */
+    private void solvable(BodyDef.RelationDef r, Ctx ctx) {
+        if (!(r.syntax().equation() instanceof Expr.Compare c) || c.operands().size() != 2 || c.ops().get(0) != Expr.Cmp.EQ) {
+            graph.problems.add(Code.NOT_SOLVABLE, r.file(), r.syntax().equation().span(), "A relation says that two things are equal: `relation : a * b == c`.");
+            return;
+        }
+        for (Expr side : c.operands()) {
+            Expr stuck = stuck(side, true);
+            if (stuck != null) {
+                graph.problems.add(Code.NOT_SOLVABLE, r.file(), stuck.span(), "A relation is solved by undoing + - * / and fixed powers; a name can't be brought out of this.");
+            }
+        }
+    }
+
+    /** The part of one side that hides a name, or null. */
+    private static @Nullable Expr stuck(Expr e, boolean reachable) {
+        if (e instanceof Expr.Path) {
+            return reachable ? null : e;
+        } else if (e instanceof Expr.Binary b) {
+            boolean power = b.op() == Expr.Op.POW;
+            Expr left = stuck(b.left(), reachable);
+            return left != null ? left : stuck(b.right(), reachable && !power);
+        } else if (e instanceof Expr.Neg n) {
+            return stuck(n.operand(), reachable);
+        }
+        // what a function or a choice is made of is taken as known; sums are written out
+        return null;
+    }
+
+    private static boolean computes(Expr e) {
+        if (e instanceof Expr.Choose c) {
+            return c.arms().stream().anyMatch(a -> computes(a.value()));
+        }
+        return e instanceof Expr.Binary || e instanceof Expr.Root || e instanceof Expr.Settle
+                || (e instanceof Expr.Call c && !Set.of("upstream", "downstream", "case_at_hand", "count").contains(c.callee().text()));
+    }
+
     private void decl(Slot s) {
         Decl d = s.decl;
         Expr e = d.value;
         Ctx ctx = Ctx.of(s.owner);
+        if (e != null && d.role == Decl.Role.QUANTITY && d.per == null && computes(e)) {
+            graph.problems.add(Code.NO_SOURCE, d.file, d.nameNode.span(), "`" + d.symbolOrName() + "` is an equation without a source; say where it comes from: `per SOURCE \"clause\", agreed`.");
+        }
         if (e != null) {
             equation(s, e, ctx);
         }

@@ -172,7 +172,17 @@ public final class DriveBuilder {
                 requirements.compile(ofDrive);
             }
         }
+        unusedLets(g);
         g.tape.finish();
+    }
+
+    /** A name of the drive that nothing speaks of. */
+    private static void unusedLets(DriveGraph g) {
+        for (Object x : g.drive.named.values()) {
+            if (x instanceof Slot s && s.decl.role == backcone.engine.model.Decl.Role.LET && !g.usedDecls.contains(s.decl)) {
+                g.problems.add(Code.UNUSED_NAME, s.decl.file, s.decl.nameNode.span(), "Nothing uses `" + s.decl.name + "`.");
+            }
+        }
     }
 
     /** The checks of a rating, the pair's first, then each member's. */

@@ -370,6 +370,18 @@ final class Requirements {
             graph.uncovered.add(new DriveGraph.Uncovered(a, file));
             return;
         }
+        Set<String> ratings = new LinkedHashSet<>();
+        for (RequirementUse u : covered) {
+            ratings.add(u.rate == null ? "" : u.rate.id());
+        }
+        if (ratings.size() > 1) {
+            graph.problems.add(
+                    Code.AMBIGUOUS_NAME,
+                    file,
+                    a.path().span(),
+                    "`" + path + "` is required by several ratings; say which: " + Compiler.list(ratings) + ".");
+            return;
+        }
         Frame f = Frame.at(file, true);
         if (graph.compiler.eval(a.bound(), Ctx.of(graph.drive), f) instanceof Val.Num n) {
             for (RequirementUse u : covered) {
