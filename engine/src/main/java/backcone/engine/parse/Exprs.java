@@ -91,8 +91,7 @@ final class Exprs {
         int nots = -1;
         for (int i = 0; i < c.children.size(); i++) {
             ParseTree child = c.children.get(i);
-            if (child instanceof BackconeParser.CompareContext) {
-                BackconeParser.CompareContext compare = (BackconeParser.CompareContext) child;
+            if (child instanceof BackconeParser.CompareContext compare) {
                 Expr e = compare(compare);
                 Span place = places.of(compare);
                 for (int k = i - 1; nots >= 0 && k >= nots; k--) {
@@ -226,8 +225,7 @@ final class Exprs {
         Span span = Span.NONE;
         for (int i = end - 1; i >= from; i--) {
             ParseTree child = c.children.get(i);
-            if (child instanceof BackconeParser.OperandContext) {
-                BackconeParser.OperandContext operand = (BackconeParser.OperandContext) child;
+            if (child instanceof BackconeParser.OperandContext operand) {
                 Expr e = operand(operand);
                 Span place = places.of(operand);
                 span = right == null ? place : place.to(span);

@@ -376,6 +376,13 @@ final class Misreadings {
             return at(Code.SYNTAX, found, "this `)` closes nothing: remove it, or write the missing `(`");
         }
         boolean operand = (c == '(' || c == '"' || Character.isLetterOrDigit(c) || c == '_') && !Forms.isWord(kind(found));
+        if (kind(before) == BackconeLexer.UNIT && Character.isLetter(c) && text.length() <= 4 && form == null) {
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "a unit holds no blanks: write `" + before.getText() + "*" + text + "` if `" + text
+                            + "` belongs to the unit, or start a new line");
+        }
         if (operand && isOperand(before) && form == null) {
             return at(
                     Code.MISSING_OPERATOR,
