@@ -60,7 +60,7 @@ fact : FACT path ASSIGN value note* ;
 factFor : FACT_FOR id=NAME FOR other=NAME ASSIGN value note* ;
 requirement : REQUIREMENT path cmpSign sum note* ;
 block : BLOCK head=NAME id=NAME? (ON shaft=NAME)? text? body? ;
-declaration : DECLARATION id=NAME symbol=NAME? text? COLON ofKind=NAME (IN UNIT)? definition? note* ;
+declaration : DECLARATION id=NAME symbol=NAME? text? COLON ofKind=NAME (IN UNIT)? note* (definition note*)? ;
 definition : ASSIGN value | DEFAULT value | RELATED expr ;
 
 // ---- drives

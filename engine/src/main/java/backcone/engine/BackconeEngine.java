@@ -1,0 +1,59 @@
+package backcone.engine;
+
+import backcone.engine.parse.Parser;
+import backcone.engine.syntax.FileSyntax;
+import backcone.engine.text.FileId;
+import backcone.engine.text.Span;
+import java.time.LocalDate;
+import java.util.List;
+import java.util.Map;
+import java.util.concurrent.ConcurrentHashMap;
+
+/** The engine on the shipped handbook. Parsed texts are kept; analyses are computed anew. Safe for several threads. */
+public final class BackconeEngine implements Engine {
+    private final Loader loader;
+    private final LocalDate today;
+    private final Map<FileId, Object> texts = new ConcurrentHashMap<>();
+
+    private BackconeEngine(Loader loader, LocalDate today) {
+        this.loader = loader;
+        this.today = today;
+    }
+
+    public static BackconeEngine create(Loader loader, LocalDate today) {
+        return new BackconeEngine(loader, today);
+    }
+
+    @Override
+    public Analysis analyse(FileId file) {
+        Object o = load(file);
+        if (!(o instanceof SourceText t)) {
+            return FileAnalysis.unreadable(file, (Loader.Loaded) o);
+        }
+        return FileAnalysis.of(t, this::load, Handbook.standard(), today);
+    }
+
+    /** Forgets a text that has changed. */
+    public void forget(FileId file) {
+        texts.remove(file);
+    }
+
+    private Object load(FileId file) {
+        Object known = texts.get(file);
+        if (known != null) {
+            return known;
+        }
+        Loader.Loaded loaded = loader.load(file);
+        Object o = loaded;
+        if (loaded instanceof Loader.Loaded.Text t) {
+            Parser.Parsed p = Parser.parse(file, t.text());
+            o = new SourceText(file, t.text(), p.tree(), p.problems());
+        }
+        texts.put(file, o);
+        return o;
+    }
+
+    static FileSyntax empty() {
+        return new FileSyntax(List.of(), List.of(), Span.NONE);
+    }
+}

@@ -1,0 +1,443 @@
+package backcone.engine;
+
+import backcone.engine.answers.DriveAnswer;
+import backcone.engine.answers.DriveResults;
+import backcone.engine.answers.Examples;
+import backcone.engine.answers.Explanation;
+import backcone.engine.diagnostics.Code;
+import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.eval.Run;
+import backcone.engine.explain.Explainer;
+import backcone.engine.graph.Checker;
+import backcone.engine.graph.DriveBuilder;
+import backcone.engine.graph.DriveGraph;
+import backcone.engine.graph.DriveSource;
+import backcone.engine.graph.Problems;
+import backcone.engine.graph.Shapes;
+import backcone.engine.model.LibraryBuilder;
+import backcone.engine.syntax.Entry;
+import backcone.engine.syntax.FileSyntax;
+import backcone.engine.syntax.Name;
+import backcone.engine.text.FileId;
+import backcone.engine.text.Span;
+import backcone.engine.units.Numbers;
+import java.time.LocalDate;
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Optional;
+import java.util.Set;
+import java.util.function.Function;
+import org.jspecify.annotations.Nullable;
+
+/** The analysis of one file. Findings and drives are computed when it is made; explanations when asked for. */
+final class FileAnalysis implements Analysis {
+    private final SourceText main;
+    private final @Nullable Sources sources;
+    private final Shapes shapes;
+    private final List<Diagnostic> diagnostics;
+    private final List<DriveAnswer> drives;
+    private final Map<String, DriveSource> byName;
+
+    private FileAnalysis(
+            SourceText main,
+            @Nullable Sources sources,
+            Shapes shapes,
+            List<Diagnostic> diagnostics,
+            List<DriveAnswer> drives,
+            Map<String, DriveSource> byName) {
+        this.main = main;
+        this.sources = sources;
+        this.shapes = shapes;
+        this.diagnostics = diagnostics;
+        this.drives = drives;
+        this.byName = byName;
+    }
+
+    static FileAnalysis unreadable(FileId file, Loader.Loaded why) {
+        Diagnostic d = why instanceof Loader.Loaded.Unreadable u
+                ? Diagnostic.of(
+                        Code.FILE_UNREADABLE,
+                        file,
+                        Span.NONE,
+                        "`" + file.path() + "` can't be read: " + u.reason() + ".")
+                : Diagnostic.of(Code.FILE_NOT_FOUND, file, Span.NONE, "There is no file `" + file.path() + "`.");
+        SourceText none = new SourceText(file, "", BackconeEngine.empty(), List.of());
+        return new FileAnalysis(none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of());
+    }
+
+    static FileAnalysis of(SourceText main, Function<FileId, Object> load, Handbook handbook, LocalDate today) {
+        if (main.file().isMethodFile()) {
+            return methodFile(main, handbook);
+        }
+        Sources sources = new Sources(main, load);
+        List<Diagnostic> found = new ArrayList<>(main.problems());
+        found.addAll(sources.problems());
+        Shapes shapes = handbook.shapes();
+        if (!sources.methodFiles().isEmpty()) {
+            LibraryBuilder b = new LibraryBuilder(shapes.library());
+            for (SourceText t : sources.methodFiles()) {
+                b.add(t.file(), t.tree());
+            }
+            shapes = new Shapes(b.build().library());
+        }
+        Problems own = new Problems();
+        misplaced(main, own);
+        Map<String, DriveSource> byName = new LinkedHashMap<>();
+        driveSources(sources, main, own, byName);
+        List<String> blocks = new ArrayList<>();
+        for (Entry e : main.tree().entries()) {
+            if (e instanceof Entry.Block b) {
+                if (b.name() == null || b.name().isHole()) {
+                    own.add(
+                            Code.WRONG_PLACE,
+                            main.file(),
+                            b.head().span(),
+                            "A block at the top of a file has a name: `" + b.head() + " NAME { … }`.");
+                } else if (!shapes.library().kinds.containsKey(b.head().text())) {
+                    own.add(
+                            Code.UNKNOWN_KIND,
+                            main.file(),
+                            b.head().span(),
+                            "There is no kind of block `" + b.head() + "`."
+                                    + backcone.engine.model.Suggest.sentence(
+                                            b.head().text(),
+                                            shapes.library().kinds.keySet()));
+                } else {
+                    blocks.add(b.name().text());
+                }
+            } else if (e instanceof Entry.Let l && !l.name().isHole()) {
+                blocks.add(l.name().text());
+            }
+        }
+        if (!blocks.isEmpty()) {
+            DriveBuilder.library(shapes, sources, main.file(), blocks, own);
+        }
+        List<DriveAnswer> answers = new ArrayList<>();
+        for (DriveSource s : byName.values()) {
+            Problems p = new Problems();
+            List<Run> runs = new ArrayList<>();
+            for (String c : DriveBuilder.casesInUse(s)) {
+                runs.add(new Run(DriveBuilder.build(shapes, sources, s, c, p, false)));
+            }
+            answers.add(DriveResults.of(s, runs, today, p));
+            boolean derived = s.layers().size() > 1;
+            for (Diagnostic d : p.all()) {
+                own.add(
+                        derived
+                                ? new Diagnostic(
+                                        d.code(),
+                                        d.severity(),
+                                        d.file(),
+                                        d.span(),
+                                        "In `" + s.name() + "`: " + d.message(),
+                                        d.related(),
+                                        d.fixes())
+                                : d);
+            }
+        }
+        found.addAll(own.all());
+        return new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName);
+    }
+
+    /** Findings of this file by place; those in used files are said there. */
+    private static List<Diagnostic> sorted(List<Diagnostic> found, SourceText main) {
+        List<Diagnostic> out = new ArrayList<>();
+        List<Span> syntax = new ArrayList<>();
+        for (Diagnostic d : main.problems()) {
+            syntax.add(d.span());
+        }
+        for (Diagnostic d : found) {
+            if (d.file().equals(main.file())) {
+                out.add(d);
+            }
+        }
+        out.sort(Comparator.comparingInt((Diagnostic d) -> d.span().start())
+                .thenComparingInt(d -> d.span().end())
+                .thenComparing(d -> d.code().id()));
+        return List.copyOf(out);
+    }
+
+    private static void misplaced(SourceText main, Problems own) {
+        for (Entry e : main.tree().entries()) {
+            if (e instanceof Entry.Drive
+                    || e instanceof Entry.Variant
+                    || e instanceof Entry.Family
+                    || e instanceof Entry.Block
+                    || e instanceof Entry.Let
+                    || e instanceof Entry.Use
+                    || e instanceof Entry.Bad) {
+                continue;
+            }
+            Span at =
+                    new Span(e.span().start(), Math.min(e.span().end(), e.span().start() + 20));
+            String what = handbook(e);
+            own.add(
+                    Code.WRONG_PLACE,
+                    main.file(),
+                    at,
+                    what != null
+                            ? "A `" + what + "` belongs in a method file (`.method`), not in a spec."
+                            : "This stands outside any drive; put it inside `drive NAME { … }`.");
+        }
+    }
+
+    private static @Nullable String handbook(Entry e) {
+        if (e instanceof Entry.Table) {
+            return "table";
+        } else if (e instanceof Entry.Method) {
+            return "method";
+        } else if (e instanceof Entry.Chapter) {
+            return "chapter";
+        } else if (e instanceof Entry.Kind) {
+            return "kind";
+        } else if (e instanceof Entry.Function) {
+            return "function";
+        } else if (e instanceof Entry.Quantity) {
+            return "quantity";
+        } else if (e instanceof Entry.Choice) {
+            return "choice";
+        } else if (e instanceof Entry.Source) {
+            return "source";
+        } else if (e instanceof Entry.Declaration) {
+            return "declaration";
+        }
+        return null;
+    }
+
+    // ---- drives, variants, families
+
+    private static void driveSources(Sources sources, SourceText main, Problems own, Map<String, DriveSource> byName) {
+        for (Entry e : main.tree().entries()) {
+            if (e instanceof Entry.Drive d && !d.name().isHole()) {
+                byName.putIfAbsent(
+                        d.name().text(),
+                        new DriveSource(
+                                d.name().text(),
+                                d.title(),
+                                main.file(),
+                                d.span(),
+                                List.of(new DriveSource.Layer(main.file(), d.body()))));
+            } else if (e instanceof Entry.Variant v && !v.name().isHole()) {
+                List<DriveSource.Layer> layers = layers(
+                        sources,
+                        v.base(),
+                        main,
+                        own,
+                        new LinkedHashSet<>(Set.of(v.name().text())));
+                if (layers != null) {
+                    layers.add(new DriveSource.Layer(main.file(), v.body()));
+                    byName.putIfAbsent(
+                            v.name().text(),
+                            new DriveSource(v.name().text(), v.title(), main.file(), v.span(), layers));
+                }
+            } else if (e instanceof Entry.Family f && !f.name().isHole()) {
+                family(sources, f, main, own, byName);
+            }
+        }
+    }
+
+    private static @Nullable List<DriveSource.Layer> layers(
+            Sources sources, Name base, SourceText main, Problems own, Set<String> seen) {
+        if (base.isHole()) {
+            return null;
+        }
+        DriveGraph.TopEntry t = sources.entry(base.text());
+        if (t != null && t.entry() instanceof Entry.Drive d) {
+            return new ArrayList<>(List.of(new DriveSource.Layer(t.file(), d.body())));
+        }
+        if (t != null && t.entry() instanceof Entry.Variant v && seen.add(base.text())) {
+            List<DriveSource.Layer> below = layers(sources, v.base(), main, own, seen);
+            if (below != null) {
+                below.add(new DriveSource.Layer(t.file(), v.body()));
+            }
+            return below;
+        }
+        own.add(
+                Code.UNKNOWN_NAME,
+                main.file(),
+                base.span(),
+                t != null && t.entry() instanceof Entry.Variant
+                        ? "These variants are each other's base; one of them must start from a drive."
+                        : "There is no drive `" + base + "`."
+                                + backcone.engine.model.Suggest.sentence(base.text(), sources.names()));
+        return null;
+    }
+
+    private static void family(
+            Sources sources, Entry.Family f, SourceText main, Problems own, Map<String, DriveSource> byName) {
+        List<DriveSource.Layer> base = layers(sources, f.base(), main, own, new LinkedHashSet<>());
+        if (base == null || f.rows().isEmpty()) {
+            return;
+        }
+        Entry.Row header = f.rows().get(0);
+        for (int r = 1; r < f.rows().size(); r++) {
+            Entry.Row row = f.rows().get(r);
+            if (row.cells().size() != header.cells().size()) {
+                own.add(
+                        Code.BAD_TABLE,
+                        main.file(),
+                        row.span(),
+                        "This row has " + row.cells().size() + " cells, the header has "
+                                + header.cells().size() + ".");
+                continue;
+            }
+            List<Entry> facts = new ArrayList<>();
+            String name = "";
+            for (int c = 0; c < row.cells().size(); c++) {
+                backcone.engine.syntax.Expr head = first(header.cells().get(c));
+                backcone.engine.syntax.Expr cell = first(row.cells().get(c));
+                if (c == 0) {
+                    name = sources.text(main.file(), cell.span());
+                } else if (head instanceof backcone.engine.syntax.Expr.Path p) {
+                    facts.add(new Entry.Fact(p, cell, List.of(), cell.span()));
+                } else {
+                    own.add(
+                            Code.BAD_TABLE,
+                            main.file(),
+                            head.span(),
+                            "A column of a family is the path of a fact, for example `head.outer_module`.");
+                }
+            }
+            List<DriveSource.Layer> layers = new ArrayList<>(base);
+            layers.add(new DriveSource.Layer(main.file(), facts));
+            String full = f.name().text() + "." + name;
+            byName.putIfAbsent(full, new DriveSource(full, f.title(), main.file(), row.span(), layers));
+        }
+    }
+
+    private static backcone.engine.syntax.Expr first(Entry.Cell c) {
+        return c.values().isEmpty()
+                ? new backcone.engine.syntax.Expr.Hole(c.span())
+                : c.values().get(0);
+    }
+
+    // ---- method files
+
+    private static FileAnalysis methodFile(SourceText main, Handbook handbook) {
+        List<Diagnostic> found = new ArrayList<>(main.problems());
+        LibraryBuilder b = new LibraryBuilder(handbook.shapes().library());
+        b.add(main.file(), main.tree());
+        LibraryBuilder.Built built = b.build();
+        found.addAll(built.problems());
+        Shapes shapes = new Shapes(built.library());
+        found.addAll(Checker.check(shapes));
+        Examples.Report report = Examples.run(shapes, main.file()::equals);
+        found.addAll(report.problems());
+        for (Examples.Outcome o : report.outcomes()) {
+            if (!o.met()) {
+                found.add(Diagnostic.of(
+                        Code.EXAMPLE_FAILED,
+                        main.file(),
+                        o.syntax().span(),
+                        "`" + o.path() + "` comes to "
+                                + (Double.isNaN(o.got())
+                                        ? o.why()
+                                        : Numbers.format(o.got(), 7) + (o.unit().isEmpty() ? "" : " " + o.unit()))
+                                + ", the example says " + Numbers.format(o.expected(), 7)
+                                + (o.unit().isEmpty() ? "" : " " + o.unit()) + "."));
+            }
+        }
+        Problems once = new Problems();
+        found.forEach(once::add);
+        return new FileAnalysis(main, null, shapes, sorted(once.all(), main), List.of(), Map.of());
+    }
+
+    // ---- questions
+
+    @Override
+    public FileId file() {
+        return main.file();
+    }
+
+    @Override
+    public String text() {
+        return main.text();
+    }
+
+    @Override
+    public FileSyntax syntax() {
+        return main.tree();
+    }
+
+    @Override
+    public List<Diagnostic> diagnostics() {
+        return diagnostics;
+    }
+
+    @Override
+    public List<DriveAnswer> drives() {
+        return drives;
+    }
+
+    private record Asked(DriveSource source, String name) {}
+
+    /** The drives in which to look for a name: the one named in front, else all. */
+    private List<Asked> asked(String name) {
+        List<Asked> out = new ArrayList<>();
+        for (DriveSource s : byName.values()) {
+            if (name.startsWith(s.name() + ".")) {
+                out.add(new Asked(s, name.substring(s.name().length() + 1)));
+            }
+        }
+        for (DriveSource s : byName.values()) {
+            out.add(new Asked(s, name));
+        }
+        return out;
+    }
+
+    @Override
+    public Optional<Explanation> explain(String name) {
+        Sources src = sources;
+        if (src == null) {
+            return Optional.empty();
+        }
+        for (Asked a : asked(name)) {
+            for (String c : DriveBuilder.casesInUse(a.source)) {
+                DriveGraph g = DriveBuilder.build(shapes, src, a.source, c, new Problems(), true);
+                Optional<Explanation> e = new Explainer(g, src::textOf).explain(a.name);
+                if (e.isPresent()) {
+                    return e;
+                }
+            }
+        }
+        return Optional.empty();
+    }
+
+    @Override
+    public Optional<List<Explanation>> explainRating(String name) {
+        Sources src = sources;
+        if (src == null) {
+            return Optional.empty();
+        }
+        for (Asked a : asked(name)) {
+            for (String c : DriveBuilder.casesInUse(a.source)) {
+                DriveGraph g = DriveBuilder.build(shapes, src, a.source, c, new Problems(), true);
+                Optional<List<Explanation>> e = new Explainer(g, src::textOf).rating(a.name);
+                if (e.isPresent()) {
+                    return e;
+                }
+            }
+        }
+        return Optional.empty();
+    }
+
+    @Override
+    public List<String> names() {
+        Sources src = sources;
+        Set<String> out = new LinkedHashSet<>();
+        if (src == null) {
+            return List.of();
+        }
+        for (DriveSource s : byName.values()) {
+            for (String c : DriveBuilder.casesInUse(s)) {
+                out.addAll(new Explainer(DriveBuilder.build(shapes, src, s, c, new Problems(), false), src::textOf)
+                        .names());
+            }
+        }
+        return List.copyOf(out);
+    }
+}
