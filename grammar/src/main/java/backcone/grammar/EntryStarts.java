@@ -31,10 +31,7 @@ final class EntryStarts {
 
     private boolean isEnd(int index) {
         int t = type(index);
-        return t == BackconeLexer.NL
-                || t == BackconeLexer.SEMI
-                || t == BackconeLexer.RBRACE
-                || t == BackconeLexer.EOF;
+        return t == BackconeLexer.NL || t == BackconeLexer.SEMI || t == BackconeLexer.RBRACE || t == BackconeLexer.EOF;
     }
 
     static boolean isComparison(int type) {

@@ -95,22 +95,14 @@ final class TreeBuilder {
         }
         if (e instanceof BackconeParser.RequirementContext r) {
             return new Entry.Requirement(
-                    exprs.path(r.path(), r),
-                    Exprs.sign(r.cmpSign()),
-                    exprs.sum(r.sum(), r),
-                    notes.of(r.note()),
-                    span);
+                    exprs.path(r.path(), r), Exprs.sign(r.cmpSign()), exprs.sum(r.sum(), r), notes.of(r.note()), span);
         }
         if (e instanceof BackconeParser.DeclarationContext c) {
             return declaration(c, span);
         }
         if (e instanceof BackconeParser.FactForContext f) {
             return new Entry.FactFor(
-                    places.name(f.id, f),
-                    places.name(f.other, f),
-                    exprs.value(f.value(), f),
-                    notes.of(f.note()),
-                    span);
+                    places.name(f.id, f), places.name(f.other, f), exprs.value(f.value(), f), notes.of(f.note()), span);
         }
         if (e instanceof BackconeParser.DriveContext d) {
             return new Entry.Drive(places.name(d.id, d), Exprs.textOrNull(d.text()), body(d.body(), rest), span);
@@ -135,11 +127,7 @@ final class TreeBuilder {
         }
         if (e instanceof BackconeParser.AcceptContext a) {
             return new Entry.Accept(
-                    exprs.path(a.path(), a),
-                    Exprs.sign(a.cmpSign()),
-                    exprs.sum(a.sum(), a),
-                    notes.of(a.note()),
-                    span);
+                    exprs.path(a.path(), a), Exprs.sign(a.cmpSign()), exprs.sum(a.sum(), a), notes.of(a.note()), span);
         }
         if (e instanceof BackconeParser.WaiveContext w) {
             return new Entry.Waive(exprs.path(w.path(), w), notes.of(w.note()), span);
@@ -199,8 +187,7 @@ final class TreeBuilder {
         if (u.id != null || u.text() == null) {
             return new Entry.UseReading(places.name(u.id, u), exprs.path(u.path(), u), notes.of(u.note()), span);
         }
-        return new Entry.Use(
-                Exprs.text(u.text()), places.nameOrNull(u.alias), places.of(u.text()), span);
+        return new Entry.Use(Exprs.text(u.text()), places.nameOrNull(u.alias), places.of(u.text()), span);
     }
 
     private Entry rate(BackconeParser.RateContext r, BackconeParser.@Nullable RestContext rest, Span span) {
@@ -302,19 +289,16 @@ final class TreeBuilder {
                     span);
         }
         if (e instanceof BackconeParser.PartsContext p) {
-            return new Entry.Parts(
-                    names(p.names()), places.name(p.ofKind, p), places.nameOrNull(p.alias), span);
+            return new Entry.Parts(names(p.names()), places.name(p.ofKind, p), places.nameOrNull(p.alias), span);
         }
         if (e instanceof BackconeParser.PartContext p) {
-            return new Entry.Part(
-                    places.name(p.id, p), places.name(p.ofKind, p), Exprs.textOrNull(p.text()), span);
+            return new Entry.Part(places.name(p.id, p), places.name(p.ofKind, p), Exprs.textOrNull(p.text()), span);
         }
         if (e instanceof BackconeParser.RoleContext r) {
             return new Entry.Role(places.name(r.id, r), exprs.expr(r.expr(), r), span);
         }
         if (e instanceof BackconeParser.CollectContext c) {
-            return new Entry.Collect(
-                    places.name(c.id, c), places.name(c.ofKind, c), exprs.expr(c.expr(), c), span);
+            return new Entry.Collect(places.name(c.id, c), places.name(c.ofKind, c), exprs.expr(c.expr(), c), span);
         }
         if (e instanceof BackconeParser.CasesContext c) {
             List<Name> list = new ArrayList<>();
@@ -390,8 +374,7 @@ final class TreeBuilder {
         List<Entry.Parameter> parameters = new ArrayList<>();
         if (f.parameters() != null) {
             for (BackconeParser.ParameterContext p : f.parameters().parameter()) {
-                parameters.add(new Entry.Parameter(
-                        places.name(p.id, p), places.name(p.ofKind, p), places.of(p)));
+                parameters.add(new Entry.Parameter(places.name(p.id, p), places.name(p.ofKind, p), places.of(p)));
             }
         }
         return new Entry.Function(

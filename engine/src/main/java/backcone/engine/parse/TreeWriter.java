@@ -363,6 +363,7 @@ final class TreeWriter {
         }
         throw new IllegalStateException("a form without a number: " + e.getClass());
     }
+
     private void parameter(Entry.Parameter p) {
         span(p.span());
         name(p.name());
@@ -491,6 +492,7 @@ final class TreeWriter {
         }
         throw new IllegalStateException("a form without a number: " + n.getClass());
     }
+
     private void taken(Note.Taken t) {
         span(t.span());
         path(t.path());
@@ -634,6 +636,7 @@ final class TreeWriter {
         }
         throw new IllegalStateException("a form without a number: " + e.getClass());
     }
+
     private void arm(Expr.Arm a) {
         span(a.span());
         exprOrNull(a.when());
