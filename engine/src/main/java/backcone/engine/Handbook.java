@@ -4,6 +4,7 @@ import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.graph.Shapes;
 import backcone.engine.model.LibraryBuilder;
 import backcone.engine.parse.Parser;
+import backcone.engine.parse.TreeCodec;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import java.io.IOException;
@@ -65,6 +66,14 @@ public final class Handbook {
     }
 
     private static FileSyntax tree(String name, FileId id, List<Diagnostic> found) {
+        try (InputStream in = Handbook.class.getResourceAsStream(FOLDER + name + ".tree")) {
+            FileSyntax tree = in == null ? null : TreeCodec.read(in.readAllBytes());
+            if (tree != null) {
+                return tree;
+            }
+        } catch (IOException e) {
+            throw new UncheckedIOException(e);
+        }
         String text = text(id);
         Parser.Parsed p = Parser.parse(id, text == null ? "" : text);
         found.addAll(p.problems());
