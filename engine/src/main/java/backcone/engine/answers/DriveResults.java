@@ -224,7 +224,7 @@ public final class DriveResults {
 
     private @Nullable String fault(RequirementUse u, Reasons.Why why) {
         if (why.faults().isEmpty()) {
-            return why.broken() ? "something above could not be understood" : null;
+            return why.open().isEmpty() ? "something it rests on could not be understood" : null;
         }
         Reasons.Fault first = why.faults().get(0);
         Code code = first.op() == backcone.engine.graph.Op.ROOT || first.op() == backcone.engine.graph.Op.SETTLE
