@@ -242,8 +242,8 @@ final class Braces {
         if (indented && extra > 0) {
             boolean startsLine = index == line.first();
             Line headless = headlessFor(headless(top), line.indent(), startsLine);
-            boolean fitsTop = top != null
-                    && (startsLine ? fits(top, line.indent()) : top.brace.getLine() == brace.getLine());
+            boolean fitsTop =
+                    top != null && (startsLine ? fits(top, line.indent()) : top.brace.getLine() == brace.getLine());
             if (headless != null && !fitsTop) {
                 unopened(headless);
                 headless(top).remove(headless);
@@ -271,8 +271,8 @@ final class Braces {
     // ---- findings
 
     private void unclosed(Open top) {
-        findings.add(new Finding(
-                Finding.Kind.UNCLOSED_BRACE, top.brace.start(), top.brace.end(), headOf(top.brace), ""));
+        findings.add(
+                new Finding(Finding.Kind.UNCLOSED_BRACE, top.brace.start(), top.brace.end(), headOf(top.brace), ""));
     }
 
     private void unopened(Line line) {
@@ -287,7 +287,11 @@ final class Braces {
             }
         }
         findings.add(new Finding(
-                Finding.Kind.UNOPENED_BRACE, in.get(line.first()).start(), last.end(), text(line.first(), line.end()), ""));
+                Finding.Kind.UNOPENED_BRACE,
+                in.get(line.first()).start(),
+                last.end(),
+                text(line.first(), line.end()),
+                ""));
     }
 
     private void stray(int index) {

@@ -31,10 +31,7 @@ final class EntryStarts {
 
     private boolean isEnd(int index) {
         int t = type(index);
-        return t == BackconeLexer.NL
-                || t == BackconeLexer.SEMI
-                || t == BackconeLexer.RBRACE
-                || t == BackconeLexer.EOF;
+        return t == BackconeLexer.NL || t == BackconeLexer.SEMI || t == BackconeLexer.RBRACE || t == BackconeLexer.EOF;
     }
 
     static boolean isComparison(int type) {
@@ -195,6 +192,10 @@ final class EntryStarts {
         if (isEnd(next)) {
             return type;
         }
+        if (isName(next) && !takesColon(type) && (type(next + 1) == BackconeLexer.COLON || colonBehindText(next + 1))) {
+            // method m "…" : Kind declares a name, whatever it spells
+            return null;
+        }
         boolean fits;
         switch (type) {
             case BackconeLexer.USE:
@@ -220,6 +221,20 @@ final class EntryStarts {
                 fits = isName(next);
         }
         return fits ? type : null;
+    }
+
+    private static boolean takesColon(int type) {
+        switch (type) {
+            case BackconeLexer.PART:
+            case BackconeLexer.PARTS:
+            case BackconeLexer.LIMIT:
+            case BackconeLexer.CHECK:
+            case BackconeLexer.TABLE:
+            case BackconeLexer.RELATION:
+                return true;
+            default:
+                return false;
+        }
     }
 
     // ---- does the line go on

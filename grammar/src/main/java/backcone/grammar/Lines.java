@@ -27,13 +27,15 @@ final class Lines {
         /** The type of the marker or entry word it starts with; 0 while it has not started. */
         int type;
 
-        @Nullable Tok start;
+        @Nullable
+        Tok start;
 
         /** Names of its head that are still to come and are names whatever they spell. */
         int headNames;
 
         /** Behind the sign of a fact or requirement. */
         boolean pastSign;
+
         boolean choosing;
         boolean settling;
         boolean rooting;
@@ -157,7 +159,8 @@ final class Lines {
 
     private void closeBrackets(Tok before) {
         while (holds() == Holds.BRACKET) {
-            Tok close = Tok.inserted(before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
+            Tok close = Tok.inserted(
+                    before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
             out.add(close);
             frames.pop();
             if (before.getType() != BackconeLexer.RBRACE || !before.isInserted()) {
@@ -341,7 +344,9 @@ final class Lines {
         int k = starts.behindPath(i);
         boolean next = in.get(k).getType() == BackconeLexer.ASSIGN
                 || requirement && EntryStarts.isComparison(in.get(k).getType());
-        if (!next || in.get(k).getLine() != t.getLine() || out.get(out.size() - 1).getLine() != t.getLine()) {
+        if (!next
+                || in.get(k).getLine() != t.getLine()
+                || out.get(out.size() - 1).getLine() != t.getLine()) {
             return false;
         }
         String name = t.getText();
@@ -377,7 +382,8 @@ final class Lines {
     }
 
     private static boolean isWord(String unit) {
-        return Character.isLetter(unit.charAt(0)) && unit.chars().allMatch(c -> Character.isLetterOrDigit(c) || c == '_');
+        return Character.isLetter(unit.charAt(0))
+                && unit.chars().allMatch(c -> Character.isLetterOrDigit(c) || c == '_');
     }
 
     /** Decides whether a word inside an entry is a keyword. */

@@ -108,10 +108,7 @@ final class Numbers {
     /** {@code 1,5} or {@code 1,480,000}: one unreadable number, since both readings are common. */
     private Tok decimalComma(Tok first) {
         Tok last = first;
-        while (typeAt(i) == BackconeLexer.COMMA
-                && last.touches(at(i))
-                && digits(i + 1)
-                && at(i).touches(at(i + 1))) {
+        while (typeAt(i) == BackconeLexer.COMMA && last.touches(at(i)) && digits(i + 1) && at(i).touches(at(i + 1))) {
             last = at(i + 1);
             i += 2;
         }
@@ -151,9 +148,8 @@ final class Numbers {
     }
 
     private void pointFirst(Tok point) {
-        boolean behindName = !out.isEmpty()
-                && out.get(out.size() - 1).touches(point)
-                && endsOperand(out.get(out.size() - 1));
+        boolean behindName =
+                !out.isEmpty() && out.get(out.size() - 1).touches(point) && endsOperand(out.get(out.size() - 1));
         if (behindName || !digits(i + 1) || !point.touches(at(i + 1))) {
             out.add(point);
             i++;
@@ -168,7 +164,9 @@ final class Numbers {
     }
 
     private void checkSize(Tok number) {
-        if (number.end() - number.start() < 18 && number.getText().indexOf('e') < 0 && number.getText().indexOf('E') < 0) {
+        if (number.end() - number.start() < 18
+                && number.getText().indexOf('e') < 0
+                && number.getText().indexOf('E') < 0) {
             return;
         }
         String text = number.getText();
@@ -233,7 +231,8 @@ final class Numbers {
             if (word.charAt(0) == '_' && number.touches(next) && word.matches("[_0-9]+")) {
                 out.set(
                         out.size() - 1,
-                        unreadable(number, next, Finding.Kind.GROUPED_DIGITS, (number.getText() + word).replace("_", "")));
+                        unreadable(
+                                number, next, Finding.Kind.GROUPED_DIGITS, (number.getText() + word).replace("_", "")));
                 i++;
                 return;
             }
@@ -315,7 +314,9 @@ final class Numbers {
         }
         int type = typeAt(index);
         if (type == BackconeLexer.CARET) {
-            int k = typeAt(index + 1) == BackconeLexer.MINUS && at(index + 1).touches(at(index + 2)) ? index + 2 : index + 1;
+            int k = typeAt(index + 1) == BackconeLexer.MINUS && at(index + 1).touches(at(index + 2))
+                    ? index + 2
+                    : index + 1;
             return digits(k) ? k + 1 : group(k, index);
         }
         if (type == BackconeLexer.STAR || type == BackconeLexer.SLASH) {

@@ -28,7 +28,8 @@ public final class Words {
     static final Set<String> UNDERSCORED_UNITS = Set.of("AGMA_Q", "AGMA_A");
 
     /** What may stand behind a slash that follows a number: {@code 8 /in}. */
-    static final Set<String> RECIPROCAL_UNITS = Set.of("in", "mm", "cm", "m", "um", "ft", "s", "min", "h", "rad", "rev");
+    static final Set<String> RECIPROCAL_UNITS =
+            Set.of("in", "mm", "cm", "m", "um", "ft", "s", "min", "h", "rad", "rev");
 
     static {
         ENTRY.put("drive", BackconeLexer.DRIVE);

@@ -62,12 +62,7 @@ final class Exprs {
         }
         if (c.ROOT() != null) {
             return new Expr.Root(
-                    sum(c.left, c),
-                    sum(c.right, c),
-                    sum(c.low, c),
-                    sum(c.high, c),
-                    textOrNull(c.text()),
-                    places.of(c));
+                    sum(c.left, c), sum(c.right, c), sum(c.low, c), sum(c.high, c), textOrNull(c.text()), places.of(c));
         }
         if (c.SETTLE() != null) {
             return new Expr.Settle(
@@ -91,12 +86,12 @@ final class Exprs {
         int nots = -1;
         for (int i = 0; i < c.children.size(); i++) {
             ParseTree child = c.children.get(i);
-            if (child instanceof BackconeParser.CompareContext) {
-                BackconeParser.CompareContext compare = (BackconeParser.CompareContext) child;
+            if (child instanceof BackconeParser.CompareContext compare) {
                 Expr e = compare(compare);
                 Span place = places.of(compare);
                 for (int k = i - 1; nots >= 0 && k >= nots; k--) {
-                    place = Places.of(((TerminalNode) c.children.get(k)).getSymbol()).to(place);
+                    place = Places.of(((TerminalNode) c.children.get(k)).getSymbol())
+                            .to(place);
                     e = new Expr.Not(e, place);
                 }
                 nots = -1;
@@ -156,7 +151,9 @@ final class Exprs {
     }
 
     static Expr.Cmp sign(BackconeParser.@Nullable CmpSignContext c) {
-        return c == null || c.getChildCount() == 0 ? Expr.Cmp.GE : sign(c.getStart().getText());
+        return c == null || c.getChildCount() == 0
+                ? Expr.Cmp.GE
+                : sign(c.getStart().getText());
     }
 
     private static Expr.Cmp sign(String text) {
@@ -226,8 +223,7 @@ final class Exprs {
         Span span = Span.NONE;
         for (int i = end - 1; i >= from; i--) {
             ParseTree child = c.children.get(i);
-            if (child instanceof BackconeParser.OperandContext) {
-                BackconeParser.OperandContext operand = (BackconeParser.OperandContext) child;
+            if (child instanceof BackconeParser.OperandContext operand) {
                 Expr e = operand(operand);
                 Span place = places.of(operand);
                 span = right == null ? place : place.to(span);
@@ -255,7 +251,8 @@ final class Exprs {
             if (isType(c.getChild(i), BackconeParser.IN)) {
                 Token unit = i + 1 < c.getChildCount() ? ((TerminalNode) c.getChild(i + 1)).getSymbol() : null;
                 Name name = places.name(unit, c);
-                e = new Expr.In(e, name, new Span(places.of(c).start(), name.span().end()));
+                e = new Expr.In(
+                        e, name, new Span(places.of(c).start(), name.span().end()));
             }
         }
         return e;
@@ -312,7 +309,9 @@ final class Exprs {
     }
 
     private Expr pathOrCall(
-            BackconeParser.PathContext pathContext, BackconeParser.@Nullable CallContext call, ParserRuleContext owner) {
+            BackconeParser.PathContext pathContext,
+            BackconeParser.@Nullable CallContext call,
+            ParserRuleContext owner) {
         Expr.Path path = path(pathContext, owner);
         if (call == null) {
             return path;

@@ -54,12 +54,14 @@ final class Findings {
                 return of(
                         Code.BAD_NUMBER,
                         span,
-                        "`" + text + "` holds more than one point: a number has one decimal point and no signs between its digits");
+                        "`" + text
+                                + "` holds more than one point: a number has one decimal point and no signs between its digits");
             case TOO_LARGE:
                 return of(
                         Code.BAD_NUMBER,
                         span,
-                        "`" + text + "` is larger than any number that can be computed with: write a smaller one, or another unit");
+                        "`" + text
+                                + "` is larger than any number that can be computed with: write a smaller one, or another unit");
             case TOO_SMALL:
                 return of(
                         Code.BAD_NUMBER,
@@ -83,7 +85,8 @@ final class Findings {
                 return of(
                                 Code.SYNTAX,
                                 span,
-                                "`" + text + "` starts another entry on the same line: put it on a line of its own, or `;` before it")
+                                "`" + text
+                                        + "` starts another entry on the same line: put it on a line of its own, or `;` before it")
                         .withFix("put `;` before `" + text + "`", new Span(f.start(), f.start()), "; ");
             case UNCLOSED_BRACKET:
                 return of(Code.SYNTAX, span, "an opening `(` is not closed in this entry: write the missing `)`");
@@ -91,7 +94,8 @@ final class Findings {
                 return of(
                                 Code.UNCLOSED_STRING,
                                 span,
-                                "the text " + Forms.quoted(text) + " has no end: write `\"` where it ends, on the same line")
+                                "the text " + Forms.quoted(text)
+                                        + " has no end: write `\"` where it ends, on the same line")
                         .withFix("end the text with `\"`", new Span(f.end(), f.end()), "\"");
             case BAD_CHARACTER:
                 return badCharacter(text, span);
@@ -101,7 +105,8 @@ final class Findings {
                 return of(
                                 Code.SYNTAX,
                                 new Span(f.end(), f.end()),
-                                "the lines below " + Forms.quoted(text) + " are closed by a `}`, but no `{` opens them: write `{` at the end of this line")
+                                "the lines below " + Forms.quoted(text)
+                                        + " are closed by a `}`, but no `{` opens them: write `{` at the end of this line")
                         .withFix("write `{`", new Span(f.end(), f.end()), " {");
             case STRAY_BRACE:
                 return of(
@@ -154,7 +159,8 @@ final class Findings {
             return of(
                             Code.DECIMAL_COMMA,
                             span,
-                            "`" + text + "` can be read as `" + decimal + "` or as `" + joined + "`: write the one you mean, without the comma")
+                            "`" + text + "` can be read as `" + decimal + "` or as `" + joined
+                                    + "`: write the one you mean, without the comma")
                     .withFix("write " + decimal, span, decimal)
                     .withFix("write " + joined, span, joined);
         }
@@ -162,7 +168,8 @@ final class Findings {
             return of(
                             Code.DECIMAL_COMMA,
                             span,
-                            "`" + text + "`: the decimal sign is a point and digits are not grouped; write `" + decimal + "`")
+                            "`" + text + "`: the decimal sign is a point and digits are not grouped; write `" + decimal
+                                    + "`")
                     .withFix("write " + decimal, span, decimal);
         }
         String two = parts[0] + ", " + parts[1];
@@ -177,32 +184,35 @@ final class Findings {
     private Diagnostic missingTimes(Finding f, Span span) {
         String factor = f.other();
         int gap = f.end() - factor.length();
-        String number = f.text().substring(0, f.text().length() - factor.length()).strip();
+        String number =
+                f.text().substring(0, f.text().length() - factor.length()).strip();
         boolean bracket = factor.endsWith("(");
         String proposal = number + " * " + factor + (bracket ? " … )" : "");
         String message = bracket
                 ? "a multiplication is always written: did you mean `" + proposal + "`?"
-                : "`" + factor + "` is no unit, and a multiplication is always written: did you mean `" + proposal + "`?";
+                : "`" + factor + "` is no unit, and a multiplication is always written: did you mean `" + proposal
+                        + "`?";
         return of(Code.MISSING_OPERATOR, span, message).withFix("write `*`", new Span(gap, gap), "* ");
     }
 
     private Diagnostic badCharacter(String text, Span span) {
         String instead = INSTEAD.get(text);
         if (instead != null) {
-            return of(
-                            Code.BAD_CHARACTER,
-                            span,
-                            "`" + text + "` has no meaning here: write `" + instead + "` instead")
+            return of(Code.BAD_CHARACTER, span, "`" + text + "` has no meaning here: write `" + instead + "` instead")
                     .withFix("write `" + instead + "`", span, instead);
         }
         int c = text.codePointAt(0);
         if ("\u201C\u201D\u201E\u00AB\u00BB'\u2018\u2019".indexOf(c) >= 0) {
             return of(
-                    Code.BAD_CHARACTER, span, "`" + text + "` does not quote here: put texts between straight quotes, `\"…\"`");
+                    Code.BAD_CHARACTER,
+                    span,
+                    "`" + text + "` does not quote here: put texts between straight quotes, `\"…\"`");
         }
         if (c == '[' || c == ']') {
             return of(
-                    Code.BAD_CHARACTER, span, "`" + text + "` has no meaning here: expressions use round brackets, `( … )`");
+                    Code.BAD_CHARACTER,
+                    span,
+                    "`" + text + "` has no meaning here: expressions use round brackets, `( … )`");
         }
         if (c == '\u00B1') {
             return of(
@@ -215,13 +225,16 @@ final class Findings {
         }
         if (c == '\u00B0') {
             return of(
-                    Code.BAD_CHARACTER, span, "a degree sign stands right after its number, as in `20°`; or write `20 deg`");
+                    Code.BAD_CHARACTER,
+                    span,
+                    "a degree sign stands right after its number, as in `20°`; or write `20 deg`");
         }
         if (Character.isLetter(c)) {
             return of(
                     Code.BAD_CHARACTER,
                     span,
-                    "`" + text + "` can't stand in a name: names hold Latin letters a to z, Greek letters, digits and `_`");
+                    "`" + text
+                            + "` can't stand in a name: names hold Latin letters a to z, Greek letters, digits and `_`");
         }
         if (Character.isISOControl(c) || !Character.isDefined(c) || Character.isSurrogate((char) c)) {
             return of(

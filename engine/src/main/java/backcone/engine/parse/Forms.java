@@ -168,13 +168,37 @@ final class Forms {
     /** A value as it might be written for a property of this name; null when the name tells nothing. */
     static @Nullable String valueFor(String name) {
         String[][] hints = {
-            {"teeth", "18"}, {"diametral_pitch", "7 1/in"}, {"module", "5 mm"}, {"roughness", "4 um"},
-            {"angle", "20 deg"}, {"hardness", "60 HRC"}, {"viscosity", "220 mm^2/s"}, {"temperature", "60 degC"},
-            {"speed", "1480 rpm"}, {"torque", "90 N*m"}, {"power", "22 kW"}, {"life", "20000 h"}, {"time", "20 h"},
-            {"factor", "1.25"}, {"share", "50 %"}, {"efficiency", "98 %"}, {"ratio", "2.5"}, {"accuracy", "6 ISO17485"},
-            {"stress", "350 MPa"}, {"density", "7.83 kg/dm^3"}, {"modulus", "206 GPa"}, {"width", "36 mm"},
-            {"diameter", "80 mm"}, {"radius", "95 mm"}, {"distance", "112 mm"}, {"length", "60 mm"}, {"span", "110 mm"},
-            {"material", "steel_42CrMo4"}, {"hand", "left"}, {"document", "\"GX-2041\""}, {"title", "\"…\""}
+            {"teeth", "18"},
+            {"diametral_pitch", "7 1/in"},
+            {"module", "5 mm"},
+            {"roughness", "4 um"},
+            {"angle", "20 deg"},
+            {"hardness", "60 HRC"},
+            {"viscosity", "220 mm^2/s"},
+            {"temperature", "60 degC"},
+            {"speed", "1480 rpm"},
+            {"torque", "90 N*m"},
+            {"power", "22 kW"},
+            {"life", "20000 h"},
+            {"time", "20 h"},
+            {"factor", "1.25"},
+            {"share", "50 %"},
+            {"efficiency", "98 %"},
+            {"ratio", "2.5"},
+            {"accuracy", "6 ISO17485"},
+            {"stress", "350 MPa"},
+            {"density", "7.83 kg/dm^3"},
+            {"modulus", "206 GPa"},
+            {"width", "36 mm"},
+            {"diameter", "80 mm"},
+            {"radius", "95 mm"},
+            {"distance", "112 mm"},
+            {"length", "60 mm"},
+            {"span", "110 mm"},
+            {"material", "steel_42CrMo4"},
+            {"hand", "left"},
+            {"document", "\"GX-2041\""},
+            {"title", "\"…\""}
         };
         for (String[] hint : hints) {
             if (name.contains(hint[0])) {

@@ -37,10 +37,15 @@ public final class HandbookCompiler {
         StringBuilder wrong = new StringBuilder();
         for (Path file : texts) {
             String name = file.getFileName().toString();
-            Parser.Parsed parsed = Parser.parse(
-                    new FileId(FileId.HANDBOOK + name), Files.readString(file, StandardCharsets.UTF_8));
+            Parser.Parsed parsed =
+                    Parser.parse(new FileId(FileId.HANDBOOK + name), Files.readString(file, StandardCharsets.UTF_8));
             for (Diagnostic d : parsed.problems()) {
-                wrong.append('\n').append(name).append(" at ").append(d.span().start()).append(": ").append(d.message());
+                wrong.append('\n')
+                        .append(name)
+                        .append(" at ")
+                        .append(d.span().start())
+                        .append(": ")
+                        .append(d.message());
             }
             Path tree = to.resolve(name.substring(0, name.length() - ".method".length()) + ".tree");
             Files.write(tree, TreeCodec.write(parsed.tree()));

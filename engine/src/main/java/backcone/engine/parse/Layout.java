@@ -234,7 +234,8 @@ final class Layout {
             k++;
         }
         boolean empty = k == next + 1;
-        boolean single = separators == 0 || separators == 1 && isSeparator(tokens.get(k - 1).getType());
+        boolean single = separators == 0
+                || separators == 1 && isSeparator(tokens.get(k - 1).getType());
         return single
                 && !holdsComment(brace)
                 && (empty || newlines(brace.end(), tokens.get(k).start()) == 0);

@@ -96,7 +96,8 @@ final class Line {
     }
 
     /** The next stop that is not placed yet; null at the end of the line. */
-    @Nullable Stop pending() {
+    @Nullable
+    Stop pending() {
         return nextStop < stops.size() ? stops.get(nextStop) : null;
     }
 

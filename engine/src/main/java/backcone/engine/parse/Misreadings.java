@@ -31,8 +31,11 @@ final class Misreadings {
             return row(failure, found);
         }
         if (item instanceof BackconeParser.WordContext) {
-            return at(Code.SYNTAX, found, "each word of a list is a name and perhaps a meaning, `word \"meaning\"`; found "
-                    + Forms.found(found));
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "each word of a list is a name and perhaps a meaning, `word \"meaning\"`; found "
+                            + Forms.found(found));
         }
         int kind = kind(item.getStart());
         if (kind == BackconeLexer.STRAY) {
@@ -82,8 +85,11 @@ final class Misreadings {
         }
         if (isOperandMissing(failure)) {
             return kind(before) == BackconeLexer.ARM
-                    ? at(Code.SYNTAX, found, "an arm reads `condition => value`; found " + Forms.found(found)
-                            + " where its condition should start")
+                    ? at(
+                            Code.SYNTAX,
+                            found,
+                            "an arm reads `condition => value`; found " + Forms.found(found)
+                                    + " where its condition should start")
                     : missingOperand(before, found, "");
         }
         if (failure.expected().contains(BackconeLexer.ARROW)) {
@@ -106,7 +112,10 @@ final class Misreadings {
             boolean empty = (kind(before) == BackconeLexer.ROW || kind(before) == BackconeLexer.PIPE)
                     && (isEnd(found) || kind(found) == BackconeLexer.PIPE);
             return empty
-                    ? missingAt(Code.MISSING_VALUE, found, "a cell of this row is empty: write its value, or remove the bar")
+                    ? missingAt(
+                            Code.MISSING_VALUE,
+                            found,
+                            "a cell of this row is empty: write its value, or remove the bar")
                     : missingOperand(before, found, "");
         }
         return clauseOrGeneral(failure, found, form);
@@ -127,22 +136,32 @@ final class Misreadings {
             return at(
                     Code.SYNTAX,
                     found,
-                    "a text can't stand alone: give it a name, as in `note = " + shortened(text) + "`, or start the line with `#`");
+                    "a text can't stand alone: give it a name, as in `note = " + shortened(text)
+                            + "`, or start the line with `#`");
         }
         if (Character.isDigit(c)) {
-            return at(Code.SYNTAX, found, "a line starts with a name, not with " + Forms.quoted(text)
-                    + ": write what it is the value of, as in `teeth = 18`");
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "a line starts with a name, not with " + Forms.quoted(text)
+                            + ": write what it is the value of, as in `teeth = 18`");
         }
         if (Character.isLetter(c)) {
-            return at(Code.SYNTAX, found, "`" + text
-                    + "` is a word of the language and can't start a line: names may be anything but "
-                    + "`in`, `and`, `or`, `not`, `else`, `each`, `choose`");
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "`" + text
+                            + "` is a word of the language and can't start a line: names may be anything but "
+                            + "`in`, `and`, `or`, `not`, `else`, `each`, `choose`");
         }
         if (c == ')') {
             return at(Code.SYNTAX, found, "this `)` closes nothing: remove it, or write the missing `(`");
         }
-        return at(Code.SYNTAX, found, "a line can't start with " + Forms.quoted(text)
-                + " here: write a name before it, as in `name = value`");
+        return at(
+                Code.SYNTAX,
+                found,
+                "a line can't start with " + Forms.quoted(text)
+                        + " here: write a name before it, as in `name = value`");
     }
 
     private String shortened(String text) {
@@ -168,9 +187,10 @@ final class Misreadings {
         String name = nameOf(item);
         int kind = kind(item.getStart());
         if (kind(before) == BackconeLexer.ASSIGN && before.getTokenIndex() == signOf(item)) {
-            String what = kind == BackconeLexer.CHECK || kind == BackconeLexer.FUNCTION || kind == BackconeLexer.DECLARATION
-                    ? "the equation of `" + name + "`"
-                    : "the value of `" + name + "`";
+            String what =
+                    kind == BackconeLexer.CHECK || kind == BackconeLexer.FUNCTION || kind == BackconeLexer.DECLARATION
+                            ? "the equation of `" + name + "`"
+                            : "the value of `" + name + "`";
             return missingOrWrong(before, found, what, kind == BackconeLexer.FACT ? factExample(name) : "");
         }
         if (kind == BackconeLexer.REQUIREMENT && isComparison(kind(before))) {
@@ -210,8 +230,11 @@ final class Misreadings {
         String place = isMarker(before) ? "" : " after " + Forms.quoted(before);
         if (isEnd(found) || kind(found) == BackconeLexer.RPAREN || Forms.isWord(kind(found))) {
             if (isReserved(found)) {
-                return at(Code.SYNTAX, found, "`" + found.getText() + "` is a word of the language and can't stand for "
-                        + what + ": use another name");
+                return at(
+                        Code.SYNTAX,
+                        found,
+                        "`" + found.getText() + "` is a word of the language and can't stand for " + what
+                                + ": use another name");
             }
             return missingAt(Code.MISSING_VALUE, found, what + " is missing" + place + next);
         }
@@ -260,7 +283,10 @@ final class Misreadings {
                     "after `" + name + ".` a name is missing: write the property that is meant, for example `" + name
                             + ".teeth`");
         }
-        return missingAt(Code.SYNTAX, found, "a name is missing after " + Forms.quoted(before) + "; found " + Forms.found(found));
+        return missingAt(
+                Code.SYNTAX,
+                found,
+                "a name is missing after " + Forms.quoted(before) + "; found " + Forms.found(found));
     }
 
     private String pathBefore(Token dot) {
@@ -283,27 +309,32 @@ final class Misreadings {
         String name = nameOf(item);
         if (isEnd(found) || kind(found) == BackconeLexer.LBRACE) {
             if (name.indexOf('.') >= 0 && kind(found) == BackconeLexer.LBRACE) {
-                return at(Code.SYNTAX, found, "`" + name
-                        + "` can't open a block: write the blocks inside each other, one name each");
+                return at(
+                        Code.SYNTAX,
+                        found,
+                        "`" + name + "` can't open a block: write the blocks inside each other, one name each");
             }
             String value = Forms.valueFor(name.substring(name.lastIndexOf('.') + 1));
             return missingAt(
                     Code.MISSING_VALUE,
                     found,
-                    "`" + name + "` stands alone: give it a value, as in `" + name + " = " + (value == null ? "…" : value)
-                            + "`" + (name.indexOf('.') < 0 ? ", or a body, `" + name + " { … }`" : ""));
+                    "`" + name + "` stands alone: give it a value, as in `" + name + " = "
+                            + (value == null ? "…" : value) + "`"
+                            + (name.indexOf('.') < 0 ? ", or a body, `" + name + " { … }`" : ""));
         }
         if (kind(found) == BackconeLexer.ARROW) {
             return at(
                             Code.SYNTAX,
                             found,
-                            "`=>` belongs in `choose { … }`; a requirement is written `" + name + " >= …`, a value `" + name
-                                    + " = …`")
+                            "`=>` belongs in `choose { … }`; a requirement is written `" + name + " >= …`, a value `"
+                                    + name + " = …`")
                     .withFix("write `>=`", Places.of(found), ">=");
         }
         if (kind(found) == BackconeLexer.LPAREN) {
-            return at(Code.SYNTAX, found, "`" + name + "( … )` can't stand alone: give its value a name, `let x = " + name
-                    + "( … )`");
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "`" + name + "( … )` can't stand alone: give its value a name, `let x = " + name + "( … )`");
         }
         Span gap = behind(found);
         String example = isOperand(found) ? name + " = " + lineFrom(found) : name + " = …";
@@ -359,8 +390,11 @@ final class Misreadings {
                             + " `wheel on SHAFT { … }`");
         }
         if (kind == BackconeLexer.BLOCK) {
-            return at(Code.SYNTAX, found, Forms.quoted(found) + " has no place in the head of a block, which reads `"
-                    + Forms.entry(kind) + "`: remove it, or put it inside the braces");
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    Forms.quoted(found) + " has no place in the head of a block, which reads `" + Forms.entry(kind)
+                            + "`: remove it, or put it inside the braces");
         }
         if (text.equals("{")) {
             return at(Code.SYNTAX, found, "this entry has no body: remove `{ … }`, or end the line before it");
@@ -375,7 +409,15 @@ final class Misreadings {
         if (c == ')') {
             return at(Code.SYNTAX, found, "this `)` closes nothing: remove it, or write the missing `(`");
         }
-        boolean operand = (c == '(' || c == '"' || Character.isLetterOrDigit(c) || c == '_') && !Forms.isWord(kind(found));
+        boolean operand =
+                (c == '(' || c == '"' || Character.isLetterOrDigit(c) || c == '_') && !Forms.isWord(kind(found));
+        if (kind(before) == BackconeLexer.UNIT && Character.isLetter(c) && text.length() <= 4 && form == null) {
+            return at(
+                    Code.SYNTAX,
+                    found,
+                    "a unit holds no blanks: write `" + before.getText() + "*" + text + "` if `" + text
+                            + "` belongs to the unit, or start a new line");
+        }
         if (operand && isOperand(before) && form == null) {
             return at(
                     Code.MISSING_OPERATOR,
@@ -384,8 +426,11 @@ final class Misreadings {
                             + " stand side by side: write an operator between them, or start a new line");
         }
         String end = form == null ? "the entry ends here" : form;
-        return at(Code.SYNTAX, found, "found " + Forms.quoted(found) + " after " + Forms.quoted(before) + ", but " + end
-                + ": remove it, or start a new line");
+        return at(
+                Code.SYNTAX,
+                found,
+                "found " + Forms.quoted(found) + " after " + Forms.quoted(before) + ", but " + end
+                        + ": remove it, or start a new line");
     }
 
     // ---- all other entries
@@ -416,7 +461,8 @@ final class Misreadings {
                     Code.SYNTAX,
                     found,
                     "after `" + before.getText() + "` " + what + " is missing"
-                            + (isEnd(found) ? "" : " (found " + Forms.found(found) + ")") + ": write for example `" + clause
+                            + (isEnd(found) ? "" : " (found " + Forms.found(found) + ")") + ": write for example `"
+                            + clause
                             + "`");
         }
         String next = form.isEmpty() ? "" : "; " + form;

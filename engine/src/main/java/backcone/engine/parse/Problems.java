@@ -60,7 +60,8 @@ final class Problems implements Exprs.ItemCheck {
                 Code.TOO_MANY,
                 file,
                 list.get(MOST).span(),
-                "this text holds " + list.size() + " findings; those from here on are not listed: mend the first ones"));
+                "this text holds " + list.size()
+                        + " findings; those from here on are not listed: mend the first ones"));
         return List.copyOf(shown);
     }
 

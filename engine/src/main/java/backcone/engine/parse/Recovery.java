@@ -26,7 +26,8 @@ final class Recovery extends DefaultErrorStrategy {
     private final Map<RuleContext, Failure> failures = new IdentityHashMap<>();
 
     /** The first failure directly in this entry, row or arm, not in those it holds. */
-    @Nullable Failure in(ParserRuleContext item) {
+    @Nullable
+    Failure in(ParserRuleContext item) {
         return failures.get(item);
     }
 

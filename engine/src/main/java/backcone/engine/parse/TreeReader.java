@@ -73,7 +73,16 @@ final class TreeReader {
             case 2:
                 return new Entry.Block(name(), nameOrNull(), nameOrNull(), textOrNull(), bodyOrNull(), span);
             case 3:
-                return new Entry.Declaration(name(), nameOrNull(), textOrNull(), name(), nameOrNull(), GIVEN[small()], exprOrNull(), list(this::note), span);
+                return new Entry.Declaration(
+                        name(),
+                        nameOrNull(),
+                        textOrNull(),
+                        name(),
+                        nameOrNull(),
+                        GIVEN[small()],
+                        exprOrNull(),
+                        list(this::note),
+                        span);
             case 4:
                 return new Entry.Drive(name(), textOrNull(), list(this::entry), span);
             case 5:
@@ -85,7 +94,8 @@ final class TreeReader {
             case 8:
                 return new Entry.UseReading(name(), path(), list(this::note), span);
             case 9:
-                return new Entry.Require(expr(), exprOrNull(), exprOrNull(), exprOrNull(), exprOrNull(), list(this::note), span);
+                return new Entry.Require(
+                        expr(), exprOrNull(), exprOrNull(), exprOrNull(), exprOrNull(), list(this::note), span);
             default:
                 throw unknown(form);
         }
@@ -129,9 +139,18 @@ final class TreeReader {
             case 23:
                 return new Entry.Include(list(this::name), span);
             case 24:
-                return new Entry.Function(name(), list(this::parameter), textOrNull(), name(), expr(), list(this::note), span);
+                return new Entry.Function(
+                        name(), list(this::parameter), textOrNull(), name(), expr(), list(this::note), span);
             case 25:
-                return new Entry.Table(name(), textOrNull(), list(this::name), nameOrNull(), nameOrNull(), list(this::note), list(this::row), span);
+                return new Entry.Table(
+                        name(),
+                        textOrNull(),
+                        list(this::name),
+                        nameOrNull(),
+                        nameOrNull(),
+                        list(this::note),
+                        list(this::row),
+                        span);
             case 26:
                 return new Entry.Parts(list(this::name), name(), nameOrNull(), span);
             case 27:
@@ -158,7 +177,15 @@ final class TreeReader {
             case 34:
                 return new Entry.Check(name(), textOrNull(), nameOrNull(), expr(), list(this::note), span);
             case 35:
-                return new Entry.Limit(name(), textOrNull(), nameOrNull(), list(this::name), expr(), textOrNull(), list(this::note), span);
+                return new Entry.Limit(
+                        name(),
+                        textOrNull(),
+                        nameOrNull(),
+                        list(this::name),
+                        expr(),
+                        textOrNull(),
+                        list(this::note),
+                        span);
             case 36:
                 return new Entry.Applies(expr(), textOrNull(), span);
             case 37:
@@ -171,6 +198,7 @@ final class TreeReader {
                 throw unknown(form);
         }
     }
+
     private Entry.Parameter parameter() {
         Span span = span();
         return new Entry.Parameter(name(), name(), span);
@@ -242,6 +270,7 @@ final class TreeReader {
                 throw unknown(form);
         }
     }
+
     private Note.Taken taken() {
         Span span = span();
         return new Note.Taken(path(), nameOrNull(), name(), span);
@@ -299,6 +328,7 @@ final class TreeReader {
                 throw unknown(form);
         }
     }
+
     private Expr.Arm arm() {
         Span span = span();
         return new Expr.Arm(exprOrNull(), expr(), span);

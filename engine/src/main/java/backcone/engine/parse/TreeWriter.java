@@ -46,16 +46,14 @@ final class TreeWriter {
     // ---- entries
 
     private void entry(Entry e) {
-        if (e instanceof Entry.Fact) {
-            Entry.Fact x = (Entry.Fact) e;
+        if (e instanceof Entry.Fact x) {
             head(0, e);
             path(x.path());
             expr(x.value());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Requirement) {
-            Entry.Requirement x = (Entry.Requirement) e;
+        if (e instanceof Entry.Requirement x) {
             head(1, e);
             path(x.path());
             small(x.cmp().ordinal());
@@ -63,8 +61,7 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Block) {
-            Entry.Block x = (Entry.Block) e;
+        if (e instanceof Entry.Block x) {
             head(2, e);
             name(x.head());
             nameOrNull(x.name());
@@ -73,8 +70,7 @@ final class TreeWriter {
             bodyOrNull(x.body());
             return;
         }
-        if (e instanceof Entry.Declaration) {
-            Entry.Declaration x = (Entry.Declaration) e;
+        if (e instanceof Entry.Declaration x) {
             head(3, e);
             name(x.name());
             nameOrNull(x.symbol());
@@ -86,32 +82,28 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Drive) {
-            Entry.Drive x = (Entry.Drive) e;
+        if (e instanceof Entry.Drive x) {
             head(4, e);
             name(x.name());
             textOrNull(x.title());
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Use) {
-            Entry.Use x = (Entry.Use) e;
+        if (e instanceof Entry.Use x) {
             head(5, e);
             text(x.path());
             nameOrNull(x.alias());
             span(x.pathSpan());
             return;
         }
-        if (e instanceof Entry.Let) {
-            Entry.Let x = (Entry.Let) e;
+        if (e instanceof Entry.Let x) {
             head(6, e);
             name(x.name());
             expr(x.value());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Rate) {
-            Entry.Rate x = (Entry.Rate) e;
+        if (e instanceof Entry.Rate x) {
             head(7, e);
             path(x.mesh());
             name(x.method());
@@ -121,16 +113,14 @@ final class TreeWriter {
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.UseReading) {
-            Entry.UseReading x = (Entry.UseReading) e;
+        if (e instanceof Entry.UseReading x) {
             head(8, e);
             name(x.reading());
             path(x.target());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Require) {
-            Entry.Require x = (Entry.Require) e;
+        if (e instanceof Entry.Require x) {
             head(9, e);
             expr(x.subject());
             exprOrNull(x.low());
@@ -144,23 +134,20 @@ final class TreeWriter {
     }
 
     private void entry2(Entry e) {
-        if (e instanceof Entry.Assert) {
-            Entry.Assert x = (Entry.Assert) e;
+        if (e instanceof Entry.Assert x) {
             head(10, e);
             expr(x.condition());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Override) {
-            Entry.Override x = (Entry.Override) e;
+        if (e instanceof Entry.Override x) {
             head(11, e);
             path(x.path());
             expr(x.value());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Accept) {
-            Entry.Accept x = (Entry.Accept) e;
+        if (e instanceof Entry.Accept x) {
             head(12, e);
             path(x.path());
             small(x.cmp().ordinal());
@@ -168,15 +155,13 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Waive) {
-            Entry.Waive x = (Entry.Waive) e;
+        if (e instanceof Entry.Waive x) {
             head(13, e);
             path(x.path());
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Variant) {
-            Entry.Variant x = (Entry.Variant) e;
+        if (e instanceof Entry.Variant x) {
             head(14, e);
             name(x.name());
             name(x.base());
@@ -184,8 +169,7 @@ final class TreeWriter {
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Family) {
-            Entry.Family x = (Entry.Family) e;
+        if (e instanceof Entry.Family x) {
             head(15, e);
             name(x.name());
             name(x.base());
@@ -193,8 +177,7 @@ final class TreeWriter {
             list(x.rows(), this::row);
             return;
         }
-        if (e instanceof Entry.FactFor) {
-            Entry.FactFor x = (Entry.FactFor) e;
+        if (e instanceof Entry.FactFor x) {
             head(16, e);
             name(x.name());
             name(x.target());
@@ -202,8 +185,7 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Quantity) {
-            Entry.Quantity x = (Entry.Quantity) e;
+        if (e instanceof Entry.Quantity x) {
             head(17, e);
             name(x.name());
             name(x.unit());
@@ -212,15 +194,13 @@ final class TreeWriter {
             list(x.unlike(), this::name);
             return;
         }
-        if (e instanceof Entry.Source) {
-            Entry.Source x = (Entry.Source) e;
+        if (e instanceof Entry.Source x) {
             head(18, e);
             name(x.name());
             text(x.text());
             return;
         }
-        if (e instanceof Entry.Choice) {
-            Entry.Choice x = (Entry.Choice) e;
+        if (e instanceof Entry.Choice x) {
             head(19, e);
             name(x.name());
             textOrNull(x.meaning());
@@ -231,8 +211,7 @@ final class TreeWriter {
     }
 
     private void entry3(Entry e) {
-        if (e instanceof Entry.Kind) {
-            Entry.Kind x = (Entry.Kind) e;
+        if (e instanceof Entry.Kind x) {
             head(20, e);
             name(x.name());
             nameOrNull(x.parent());
@@ -240,8 +219,7 @@ final class TreeWriter {
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Chapter) {
-            Entry.Chapter x = (Entry.Chapter) e;
+        if (e instanceof Entry.Chapter x) {
             head(21, e);
             name(x.name());
             name(x.kind());
@@ -249,8 +227,7 @@ final class TreeWriter {
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Method) {
-            Entry.Method x = (Entry.Method) e;
+        if (e instanceof Entry.Method x) {
             head(22, e);
             name(x.name());
             name(x.kind());
@@ -258,14 +235,12 @@ final class TreeWriter {
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Include) {
-            Entry.Include x = (Entry.Include) e;
+        if (e instanceof Entry.Include x) {
             head(23, e);
             list(x.methods(), this::name);
             return;
         }
-        if (e instanceof Entry.Function) {
-            Entry.Function x = (Entry.Function) e;
+        if (e instanceof Entry.Function x) {
             head(24, e);
             name(x.name());
             list(x.parameters(), this::parameter);
@@ -275,8 +250,7 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Table) {
-            Entry.Table x = (Entry.Table) e;
+        if (e instanceof Entry.Table x) {
             head(25, e);
             name(x.name());
             textOrNull(x.meaning());
@@ -287,31 +261,27 @@ final class TreeWriter {
             list(x.rows(), this::row);
             return;
         }
-        if (e instanceof Entry.Parts) {
-            Entry.Parts x = (Entry.Parts) e;
+        if (e instanceof Entry.Parts x) {
             head(26, e);
             list(x.names(), this::name);
             name(x.kind());
             nameOrNull(x.as());
             return;
         }
-        if (e instanceof Entry.Part) {
-            Entry.Part x = (Entry.Part) e;
+        if (e instanceof Entry.Part x) {
             head(27, e);
             name(x.name());
             name(x.kind());
             textOrNull(x.meaning());
             return;
         }
-        if (e instanceof Entry.Role) {
-            Entry.Role x = (Entry.Role) e;
+        if (e instanceof Entry.Role x) {
             head(28, e);
             name(x.name());
             expr(x.value());
             return;
         }
-        if (e instanceof Entry.Collect) {
-            Entry.Collect x = (Entry.Collect) e;
+        if (e instanceof Entry.Collect x) {
             head(29, e);
             name(x.name());
             name(x.kind());
@@ -322,28 +292,24 @@ final class TreeWriter {
     }
 
     private void entry4(Entry e) {
-        if (e instanceof Entry.Cases) {
-            Entry.Cases x = (Entry.Cases) e;
+        if (e instanceof Entry.Cases x) {
             head(30, e);
             name(x.name());
             list(x.words(), this::name);
             return;
         }
-        if (e instanceof Entry.Each) {
-            Entry.Each x = (Entry.Each) e;
+        if (e instanceof Entry.Each x) {
             head(31, e);
             name(x.collection());
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Edition) {
-            Entry.Edition x = (Entry.Edition) e;
+        if (e instanceof Entry.Edition x) {
             head(32, e);
             list(x.editions(), this::num);
             return;
         }
-        if (e instanceof Entry.Relation) {
-            Entry.Relation x = (Entry.Relation) e;
+        if (e instanceof Entry.Relation x) {
             head(33, e);
             textOrNull(x.meaning());
             exprOrNull(x.when());
@@ -351,8 +317,7 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Check) {
-            Entry.Check x = (Entry.Check) e;
+        if (e instanceof Entry.Check x) {
             head(34, e);
             name(x.name());
             textOrNull(x.meaning());
@@ -361,8 +326,7 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Limit) {
-            Entry.Limit x = (Entry.Limit) e;
+        if (e instanceof Entry.Limit x) {
             head(35, e);
             name(x.name());
             textOrNull(x.meaning());
@@ -373,23 +337,20 @@ final class TreeWriter {
             list(x.notes(), this::note);
             return;
         }
-        if (e instanceof Entry.Applies) {
-            Entry.Applies x = (Entry.Applies) e;
+        if (e instanceof Entry.Applies x) {
             head(36, e);
             expr(x.condition());
             textOrNull(x.otherwise());
             return;
         }
-        if (e instanceof Entry.Example) {
-            Entry.Example x = (Entry.Example) e;
+        if (e instanceof Entry.Example x) {
             head(37, e);
             text(x.title());
             list(x.notes(), this::note);
             list(x.body(), this::entry);
             return;
         }
-        if (e instanceof Entry.Gives) {
-            Entry.Gives x = (Entry.Gives) e;
+        if (e instanceof Entry.Gives x) {
             head(38, e);
             path(x.path());
             expr(x.value());
@@ -402,6 +363,7 @@ final class TreeWriter {
         }
         throw new IllegalStateException("a form without a number: " + e.getClass());
     }
+
     private void parameter(Entry.Parameter p) {
         span(p.span());
         name(p.name());
@@ -437,8 +399,7 @@ final class TreeWriter {
     // ---- notes
 
     private void note(Note n) {
-        if (n instanceof Note.Per) {
-            Note.Per x = (Note.Per) n;
+        if (n instanceof Note.Per x) {
             head(0, n);
             nameOrNull(x.source());
             textOrNull(x.text());
@@ -447,44 +408,37 @@ final class TreeWriter {
             textOrNull(x.seenIn());
             return;
         }
-        if (n instanceof Note.Measured) {
-            Note.Measured x = (Note.Measured) n;
+        if (n instanceof Note.Measured x) {
             head(1, n);
             textOrNull(x.text());
             return;
         }
-        if (n instanceof Note.Assumed) {
-            Note.Assumed x = (Note.Assumed) n;
+        if (n instanceof Note.Assumed x) {
             head(2, n);
             textOrNull(x.reason());
             return;
         }
-        if (n instanceof Note.Because) {
-            Note.Because x = (Note.Because) n;
+        if (n instanceof Note.Because x) {
             head(3, n);
             text(x.text());
             return;
         }
-        if (n instanceof Note.Until) {
-            Note.Until x = (Note.Until) n;
+        if (n instanceof Note.Until x) {
             head(4, n);
             dayOrNull(x.day());
             return;
         }
-        if (n instanceof Note.By) {
-            Note.By x = (Note.By) n;
+        if (n instanceof Note.By x) {
             head(5, n);
             text(x.person());
             return;
         }
-        if (n instanceof Note.Otherwise) {
-            Note.Otherwise x = (Note.Otherwise) n;
+        if (n instanceof Note.Otherwise x) {
             head(6, n);
             text(x.text());
             return;
         }
-        if (n instanceof Note.Taking) {
-            Note.Taking x = (Note.Taking) n;
+        if (n instanceof Note.Taking x) {
             head(7, n);
             list(x.items(), this::taken);
             return;
@@ -493,59 +447,52 @@ final class TreeWriter {
     }
 
     private void note2(Note n) {
-        if (n instanceof Note.Reading) {
-            Note.Reading x = (Note.Reading) n;
+        if (n instanceof Note.Reading x) {
             head(8, n);
             name(x.name());
             expr(x.value());
             list(x.notes(), this::note);
             return;
         }
-        if (n instanceof Note.InRange) {
-            Note.InRange x = (Note.InRange) n;
+        if (n instanceof Note.InRange x) {
             head(9, n);
             expr(x.low());
             expr(x.high());
             return;
         }
-        if (n instanceof Note.Rows) {
-            Note.Rows x = (Note.Rows) n;
+        if (n instanceof Note.Rows x) {
             head(10, n);
             list(x.words(), this::name);
             return;
         }
-        if (n instanceof Note.Worst) {
-            Note.Worst x = (Note.Worst) n;
+        if (n instanceof Note.Worst x) {
             head(11, n);
             name(x.end());
             return;
         }
-        if (n instanceof Note.Is) {
-            Note.Is x = (Note.Is) n;
+        if (n instanceof Note.Is x) {
             head(12, n);
             name(x.what());
             return;
         }
-        if (n instanceof Note.Needed) {
-            Note.Needed x = (Note.Needed) n;
+        if (n instanceof Note.Needed x) {
             head(13, n);
             textOrNull(x.reason());
             return;
         }
-        if (n instanceof Note.Offer) {
-            Note.Offer x = (Note.Offer) n;
+        if (n instanceof Note.Offer x) {
             head(14, n);
             expr(x.value());
             return;
         }
-        if (n instanceof Note.Within) {
-            Note.Within x = (Note.Within) n;
+        if (n instanceof Note.Within x) {
             head(15, n);
             expr(x.amount());
             return;
         }
         throw new IllegalStateException("a form without a number: " + n.getClass());
     }
+
     private void taken(Note.Taken t) {
         span(t.span());
         path(t.path());
@@ -556,74 +503,63 @@ final class TreeWriter {
     // ---- expressions
 
     private void expr(Expr e) {
-        if (e instanceof Expr.Num) {
-            Expr.Num x = (Expr.Num) e;
+        if (e instanceof Expr.Num x) {
             head(0, e);
             text(x.text());
             number(x.value());
             nameOrNull(x.unit());
             return;
         }
-        if (e instanceof Expr.Str) {
-            Expr.Str x = (Expr.Str) e;
+        if (e instanceof Expr.Str x) {
             head(1, e);
             text(x.value());
             return;
         }
-        if (e instanceof Expr.Day) {
-            Expr.Day x = (Expr.Day) e;
+        if (e instanceof Expr.Day x) {
             head(2, e);
             text(x.text());
             return;
         }
-        if (e instanceof Expr.Path) {
-            Expr.Path x = (Expr.Path) e;
+        if (e instanceof Expr.Path x) {
             head(3, e);
             list(x.names(), this::name);
             return;
         }
-        if (e instanceof Expr.Neg) {
-            Expr.Neg x = (Expr.Neg) e;
+        if (e instanceof Expr.Neg x) {
             head(4, e);
             expr(x.operand());
             return;
         }
-        if (e instanceof Expr.Not) {
-            Expr.Not x = (Expr.Not) e;
+        if (e instanceof Expr.Not x) {
             head(5, e);
             expr(x.operand());
             return;
         }
-        if (e instanceof Expr.Binary) {
-            Expr.Binary x = (Expr.Binary) e;
+        if (e instanceof Expr.Binary x) {
             head(6, e);
             small(x.op().ordinal());
             expr(x.left());
             expr(x.right());
             return;
         }
-        if (e instanceof Expr.Compare) {
-            Expr.Compare x = (Expr.Compare) e;
+        if (e instanceof Expr.Compare x) {
             head(7, e);
             list(x.operands(), this::expr);
             list(x.ops(), c -> small(c.ordinal()));
             return;
         }
-        if (e instanceof Expr.Given) {
-            Expr.Given x = (Expr.Given) e;
+        if (e instanceof Expr.Given x) {
             head(8, e);
             path(x.path());
             return;
         }
-        if (e instanceof Expr.Call) {
-            Expr.Call x = (Expr.Call) e;
+        if (e instanceof Expr.Call x) {
             head(9, e);
             path(x.callee());
             list(x.args(), this::expr);
             return;
         }
-        if (e instanceof Expr.Each) {
-            Expr.Each x = (Expr.Each) e;
+        if (e instanceof Expr.Each x) {
             head(10, e);
             name(x.collection());
             exprOrNull(x.body());
@@ -633,22 +569,19 @@ final class TreeWriter {
     }
 
     private void expr2(Expr e) {
-        if (e instanceof Expr.Column) {
-            Expr.Column x = (Expr.Column) e;
+        if (e instanceof Expr.Column x) {
             head(11, e);
             expr(x.row());
             name(x.name());
             return;
         }
-        if (e instanceof Expr.Choose) {
-            Expr.Choose x = (Expr.Choose) e;
+        if (e instanceof Expr.Choose x) {
             head(12, e);
             exprOrNull(x.subject());
             list(x.arms(), this::arm);
             return;
         }
-        if (e instanceof Expr.Root) {
-            Expr.Root x = (Expr.Root) e;
+        if (e instanceof Expr.Root x) {
             head(13, e);
             expr(x.left());
             expr(x.right());
@@ -657,8 +590,7 @@ final class TreeWriter {
             textOrNull(x.otherwise());
             return;
         }
-        if (e instanceof Expr.Settle) {
-            Expr.Settle x = (Expr.Settle) e;
+        if (e instanceof Expr.Settle x) {
             head(14, e);
             expr(x.value());
             expr(x.start());
@@ -667,37 +599,32 @@ final class TreeWriter {
             textOrNull(x.otherwise());
             return;
         }
-        if (e instanceof Expr.In) {
-            Expr.In x = (Expr.In) e;
+        if (e instanceof Expr.In x) {
             head(15, e);
             expr(x.operand());
             name(x.unit());
             return;
         }
-        if (e instanceof Expr.Range) {
-            Expr.Range x = (Expr.Range) e;
+        if (e instanceof Expr.Range x) {
             head(16, e);
             expr(x.low());
             expr(x.high());
             return;
         }
-        if (e instanceof Expr.Toleranced) {
-            Expr.Toleranced x = (Expr.Toleranced) e;
+        if (e instanceof Expr.Toleranced x) {
             head(17, e);
             expr(x.nominal());
             expr(x.low());
             expr(x.high());
             return;
         }
-        if (e instanceof Expr.Dated) {
-            Expr.Dated x = (Expr.Dated) e;
+        if (e instanceof Expr.Dated x) {
             head(18, e);
             expr(x.value());
             day(x.day());
             return;
         }
-        if (e instanceof Expr.BlockRef) {
-            Expr.BlockRef x = (Expr.BlockRef) e;
+        if (e instanceof Expr.BlockRef x) {
             head(19, e);
             name(x.kind());
             name(x.name());
@@ -709,6 +636,7 @@ final class TreeWriter {
         }
         throw new IllegalStateException("a form without a number: " + e.getClass());
     }
+
     private void arm(Expr.Arm a) {
         span(a.span());
         exprOrNull(a.when());
