@@ -231,7 +231,7 @@ final class Braces {
                 return false;
             }
             String word = first.getText();
-            return Words.inside(word) != null || Words.reserved(word) != null && !word.equals("each");
+            return Words.inside(word) != null || (Words.reserved(word) != null && !word.equals("each"));
         }
         return first.getType() != BackconeLexer.NUMBER && first.getType() != BackconeLexer.MINUS;
     }
@@ -265,7 +265,7 @@ final class Braces {
 
     /** A closing brace stands under the line that opened; that of a choice may be indented up to its arms. */
     private static boolean fits(Open top, int indent) {
-        return top.indent == indent || top.choice && indent > top.indent && indent <= top.indent + 4;
+        return top.indent == indent || (top.choice && indent > top.indent && indent <= top.indent + 4);
     }
 
     // ---- findings

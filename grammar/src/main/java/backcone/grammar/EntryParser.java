@@ -76,15 +76,11 @@ public abstract class EntryParser extends Parser {
     }
 
     private static int lostBrace(int type) {
-        switch (type) {
-            case BackconeLexer.ROWS_OPEN:
-                return BackconeLexer.LOST_ROWS;
-            case BackconeLexer.ARMS_OPEN:
-                return BackconeLexer.LOST_ARMS;
-            case BackconeLexer.WORDS_OPEN:
-                return BackconeLexer.LOST_WORDS;
-            default:
-                return BackconeLexer.LOST_BODY;
-        }
+        return switch (type) {
+            case BackconeLexer.ROWS_OPEN -> BackconeLexer.LOST_ROWS;
+            case BackconeLexer.ARMS_OPEN -> BackconeLexer.LOST_ARMS;
+            case BackconeLexer.WORDS_OPEN -> BackconeLexer.LOST_WORDS;
+            default -> BackconeLexer.LOST_BODY;
+        };
     }
 }

@@ -71,29 +71,27 @@ final class Lines {
         while (true) {
             Tok t = in.get(i);
             switch (t.getType()) {
-                case BackconeLexer.EOF:
+                case BackconeLexer.EOF -> {
                     closeBrackets(t);
                     out.add(t);
                     return;
-                case BackconeLexer.NL:
-                    lineEnd(t);
-                    break;
-                case BackconeLexer.SEMI:
+                }
+                case BackconeLexer.NL -> lineEnd(t);
+                case BackconeLexer.SEMI -> {
                     closeBrackets(t);
                     endItem(t);
                     i++;
-                    break;
-                case BackconeLexer.LBRACE:
+                }
+                case BackconeLexer.LBRACE -> {
                     openBrace(t);
                     i++;
-                    break;
-                case BackconeLexer.RBRACE:
+                }
+                case BackconeLexer.RBRACE -> {
                     closeBrackets(t);
                     closeBrace(t);
                     i++;
-                    break;
-                default:
-                    word(t);
+                }
+                default -> word(t);
             }
         }
     }
@@ -129,16 +127,11 @@ final class Lines {
 
     /** True behind {@code and}, {@code or}, {@code not}, a comma or an opening bracket: the line is not complete. */
     private boolean lastIsLogical() {
-        switch (out.get(out.size() - 1).getType()) {
-            case BackconeLexer.AND:
-            case BackconeLexer.OR:
-            case BackconeLexer.NOT:
-            case BackconeLexer.COMMA:
-            case BackconeLexer.LPAREN:
-                return true;
-            default:
-                return false;
-        }
+        return switch (out.get(out.size() - 1).getType()) {
+            case BackconeLexer.AND, BackconeLexer.OR, BackconeLexer.NOT, BackconeLexer.COMMA, BackconeLexer.LPAREN ->
+                true;
+            default -> false;
+        };
     }
 
     private Holds holdsBehindBrackets() {
@@ -204,17 +197,10 @@ final class Lines {
             holds = starts.firstLineHolds(i);
         }
         switch (holds) {
-            case ARMS:
-                t.setType(BackconeLexer.ARMS_OPEN);
-                break;
-            case ROWS:
-                t.setType(BackconeLexer.ROWS_OPEN);
-                break;
-            case WORDS:
-                t.setType(BackconeLexer.WORDS_OPEN);
-                break;
-            default:
-                break;
+            case ARMS -> t.setType(BackconeLexer.ARMS_OPEN);
+            case ROWS -> t.setType(BackconeLexer.ROWS_OPEN);
+            case WORDS -> t.setType(BackconeLexer.WORDS_OPEN);
+            default -> {}
         }
         out.add(t);
         frames.push(new Frame(holds, item));
@@ -255,27 +241,25 @@ final class Lines {
             }
         }
         switch (t.getType()) {
-            case BackconeLexer.LPAREN:
-                frames.push(new Frame(Holds.BRACKET, item));
-                break;
-            case BackconeLexer.RPAREN:
+            case BackconeLexer.LPAREN -> frames.push(new Frame(Holds.BRACKET, item));
+            case BackconeLexer.RPAREN -> {
                 if (holds() == Holds.BRACKET) {
                     frames.pop();
                 }
-                break;
-            case BackconeLexer.ASSIGN:
-            case BackconeLexer.EQ:
-            case BackconeLexer.NE:
-            case BackconeLexer.LE:
-            case BackconeLexer.GE:
-            case BackconeLexer.LT:
-            case BackconeLexer.GT:
+            }
+            case BackconeLexer.ASSIGN,
+                    BackconeLexer.EQ,
+                    BackconeLexer.NE,
+                    BackconeLexer.LE,
+                    BackconeLexer.GE,
+                    BackconeLexer.LT,
+                    BackconeLexer.GT -> {
                 if (splitsRequirement(t)) {
                     return;
                 }
                 item.pastSign = true;
-                break;
-            case BackconeLexer.COMMA:
+            }
+            case BackconeLexer.COMMA -> {
                 if (holds() == Holds.WORDS) {
                     t.setType(BackconeLexer.WORD_COMMA);
                     out.add(t);
@@ -283,8 +267,8 @@ final class Lines {
                     item = new Item();
                     return;
                 }
-                break;
-            case BackconeLexer.NAME:
+            }
+            case BackconeLexer.NAME -> {
                 if (splitsEntry(t)) {
                     return;
                 }
@@ -292,9 +276,8 @@ final class Lines {
                 if (t.getType() == BackconeLexer.NAME && isReference()) {
                     out.add(Tok.inserted(t, BackconeLexer.REFERENCE, t.start()));
                 }
-                break;
-            default:
-                break;
+            }
+            default -> {}
         }
         take(t);
     }
@@ -310,18 +293,13 @@ final class Lines {
     private void start(Tok t) {
         int marker;
         switch (holds()) {
-            case ROWS:
-                marker = BackconeLexer.ROW;
-                break;
-            case ARMS:
-                marker = BackconeLexer.ARM;
-                break;
-            case WORDS:
+            case ROWS -> marker = BackconeLexer.ROW;
+            case ARMS -> marker = BackconeLexer.ARM;
+            case WORDS -> {
                 marker = BackconeLexer.WORD;
                 item.headNames = 1;
-                break;
-            default:
-                marker = starts.classify(i, item);
+            }
+            default -> marker = starts.classify(i, item);
         }
         item.type = marker;
         if (EntryStarts.isEntryWord(marker)) {
@@ -343,7 +321,7 @@ final class Lines {
         }
         int k = starts.behindPath(i);
         boolean next = in.get(k).getType() == BackconeLexer.ASSIGN
-                || requirement && EntryStarts.isComparison(in.get(k).getType());
+                || (requirement && EntryStarts.isComparison(in.get(k).getType()));
         if (!next
                 || in.get(k).getLine() != t.getLine()
                 || out.get(out.size() - 1).getLine() != t.getLine()) {
@@ -401,8 +379,8 @@ final class Lines {
             }
             return;
         }
-        if (item.headNames > 0 && !last.isInserted() && last.getType() == BackconeLexer.NAME
-                || item.headNames > 0 && isStart(last)) {
+        if ((item.headNames > 0 && !last.isInserted() && last.getType() == BackconeLexer.NAME)
+                || (item.headNames > 0 && isStart(last))) {
             item.headNames--;
             return;
         }
@@ -434,8 +412,8 @@ final class Lines {
             return false;
         }
         int last = out.get(out.size() - 1).getType();
-        boolean valueStarts = last == BackconeLexer.ASSIGN && item.type != BackconeLexer.COLLECT
-                || holds() == Holds.ROWS && (last == BackconeLexer.PIPE || last == BackconeLexer.ROW);
+        boolean valueStarts = (last == BackconeLexer.ASSIGN && item.type != BackconeLexer.COLLECT)
+                || (holds() == Holds.ROWS && (last == BackconeLexer.PIPE || last == BackconeLexer.ROW));
         if (!valueStarts) {
             return false;
         }
@@ -469,22 +447,20 @@ final class Lines {
     }
 
     private static boolean endsOperand(Tok t) {
-        switch (t.getType()) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.STRING:
-            case BackconeLexer.OPENSTRING:
-            case BackconeLexer.DATE:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.RBRACE:
-            case BackconeLexer.MEASURED:
-            case BackconeLexer.ASSUMED:
-            case BackconeLexer.NEEDED:
-            case BackconeLexer.WHOLE:
-                return true;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.STRING,
+                    BackconeLexer.OPENSTRING,
+                    BackconeLexer.DATE,
+                    BackconeLexer.RPAREN,
+                    BackconeLexer.RBRACE,
+                    BackconeLexer.MEASURED,
+                    BackconeLexer.ASSUMED,
+                    BackconeLexer.NEEDED,
+                    BackconeLexer.WHOLE -> true;
+            default -> false;
+        };
     }
 }

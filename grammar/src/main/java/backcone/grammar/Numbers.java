@@ -33,26 +33,21 @@ final class Numbers {
         while (i < in.size()) {
             Tok t = in.get(i);
             switch (t.getType()) {
-                case BackconeLexer.NUMBER:
-                    number(t);
-                    break;
-                case BackconeLexer.DOT:
-                    pointFirst(t);
-                    break;
-                case BackconeLexer.DATE:
-                    date(t);
-                    break;
-                case BackconeLexer.NAME:
+                case BackconeLexer.NUMBER -> number(t);
+                case BackconeLexer.DOT -> pointFirst(t);
+                case BackconeLexer.DATE -> date(t);
+                case BackconeLexer.NAME -> {
                     out.add(t);
                     i++;
                     if (t.is("in") && out.size() > 1 && endsOperand(out.get(out.size() - 2))) {
                         t.setType(BackconeLexer.IN);
                         unitAfterIn();
                     }
-                    break;
-                default:
+                }
+                default -> {
                     out.add(t);
                     i++;
+                }
             }
         }
     }
@@ -66,16 +61,14 @@ final class Numbers {
     }
 
     private static boolean endsOperand(Tok t) {
-        switch (t.getType()) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.RBRACE:
-                return true;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.RPAREN,
+                    BackconeLexer.RBRACE -> true;
+            default -> false;
+        };
     }
 
     // ---- numbers
@@ -241,7 +234,7 @@ final class Numbers {
             }
             boolean path = next.touches(at(i + 1))
                     && (typeAt(i + 1) == BackconeLexer.LPAREN
-                            || typeAt(i + 1) == BackconeLexer.DOT && typeAt(i + 2) == BackconeLexer.NAME);
+                            || (typeAt(i + 1) == BackconeLexer.DOT && typeAt(i + 2) == BackconeLexer.NAME));
             boolean name = word.indexOf('_') >= 0 && !Words.UNDERSCORED_UNITS.contains(word);
             if (path || name) {
                 times(number, next, word);
@@ -281,10 +274,10 @@ final class Numbers {
 
     private void unitAfterIn() {
         int type = typeAt(i);
-        boolean starts = type == BackconeLexer.NAME && !Words.neverUnit(at(i).getText())
+        boolean starts = (type == BackconeLexer.NAME && !Words.neverUnit(at(i).getText()))
                 || type == BackconeLexer.PERCENT
                 || type == BackconeLexer.DEGREE
-                || digits(i) && at(i).is("1");
+                || (digits(i) && at(i).is("1"));
         if (starts && sameLine(out.get(out.size() - 1), at(i))) {
             unit();
         }
@@ -323,7 +316,7 @@ final class Numbers {
             int next = typeAt(index + 1);
             boolean callOrPath = at(index + 1).touches(at(index + 2))
                     && (typeAt(index + 2) == BackconeLexer.LPAREN || typeAt(index + 2) == BackconeLexer.DOT);
-            if (next == BackconeLexer.NAME && !callOrPath
+            if ((next == BackconeLexer.NAME && !callOrPath)
                     || next == BackconeLexer.PERCENT
                     || next == BackconeLexer.DEGREE
                     || digits(index + 1)) {
@@ -342,24 +335,22 @@ final class Numbers {
         int depth = 0;
         for (int k = index; k < in.size(); k++) {
             switch (typeAt(k)) {
-                case BackconeLexer.LPAREN:
-                    depth++;
-                    break;
-                case BackconeLexer.RPAREN:
+                case BackconeLexer.LPAREN -> depth++;
+                case BackconeLexer.RPAREN -> {
                     depth--;
                     if (depth == 0) {
                         return k + 1;
                     }
-                    break;
-                case BackconeLexer.NAME:
-                case BackconeLexer.NUMBER:
-                case BackconeLexer.STAR:
-                case BackconeLexer.SLASH:
-                case BackconeLexer.CARET:
-                case BackconeLexer.MINUS:
-                    break;
-                default:
+                }
+                case BackconeLexer.NAME,
+                        BackconeLexer.NUMBER,
+                        BackconeLexer.STAR,
+                        BackconeLexer.SLASH,
+                        BackconeLexer.CARET,
+                        BackconeLexer.MINUS -> {}
+                default -> {
                     return otherwise;
+                }
             }
             if (!at(k).touches(at(k + 1))) {
                 return otherwise;

@@ -136,6 +136,6 @@ public final class Words {
 
     /** Words that may follow a number and are never its unit. {@code in} is not among them: there it is the inch. */
     static boolean neverUnit(String word) {
-        return INSIDE.containsKey(word) || RESERVED.containsKey(word) && !word.equals("in");
+        return INSIDE.containsKey(word) || (RESERVED.containsKey(word) && !word.equals("in"));
     }
 }

@@ -136,10 +136,10 @@ final class Exprs {
         List<Expr> operands = new ArrayList<>();
         List<Expr.Cmp> signs = new ArrayList<>();
         for (ParseTree child : c.children) {
-            if (child instanceof BackconeParser.SumContext) {
-                operands.add(sum((BackconeParser.SumContext) child, c));
-            } else if (child instanceof TerminalNode) {
-                signs.add(sign(((TerminalNode) child).getSymbol().getText()));
+            if (child instanceof BackconeParser.SumContext sumContext) {
+                operands.add(sum(sumContext, c));
+            } else if (child instanceof TerminalNode terminalNode) {
+                signs.add(sign(terminalNode.getSymbol().getText()));
             }
         }
         while (operands.size() <= signs.size()) {
@@ -263,21 +263,28 @@ final class Exprs {
             return hole(c);
         }
         switch (c.getStart().getType()) {
-            case BackconeParser.NUMBER:
+            case BackconeParser.NUMBER -> {
                 return number(c);
-            case BackconeParser.NAME:
+            }
+            case BackconeParser.NAME -> {
                 return pathOrCall(c.path(), c.call(), c);
-            case BackconeParser.LPAREN:
+            }
+            case BackconeParser.LPAREN -> {
                 return expr(c.expr(), c);
-            case BackconeParser.GIVEN:
+            }
+            case BackconeParser.GIVEN -> {
                 return new Expr.Given(path(c.path(), c), places.of(c));
-            case BackconeParser.CHOOSE:
+            }
+            case BackconeParser.CHOOSE -> {
                 return choose(c);
-            case BackconeParser.DATE:
+            }
+            case BackconeParser.DATE -> {
                 return day(c.DATE().getSymbol());
-            default:
+            }
+            default -> {
                 BackconeParser.TextContext text = c.text();
                 return text == null ? hole(c) : new Expr.Str(text(text), places.of(text));
+            }
         }
     }
 
@@ -285,7 +292,7 @@ final class Exprs {
         Token token = c.getStart();
         ParseTree next = c.getChildCount() > 1 ? c.getChild(1) : null;
         Token unit = next != null && isType(next, BackconeParser.UNIT) ? ((TerminalNode) next).getSymbol() : null;
-        if (token instanceof Tok && ((Tok) token).isUnreadable()) {
+        if (token instanceof Tok tok && tok.isUnreadable()) {
             return new Expr.Hole(Places.of(token));
         }
         return num(token, unit);
@@ -410,6 +417,7 @@ final class Exprs {
     }
 
     private static boolean isType(ParseTree node, int type) {
-        return node instanceof TerminalNode && ((TerminalNode) node).getSymbol().getType() == type;
+        return node instanceof TerminalNode terminalNode
+                && terminalNode.getSymbol().getType() == type;
     }
 }

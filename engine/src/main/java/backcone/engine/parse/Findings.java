@@ -42,85 +42,102 @@ final class Findings {
         String text = f.text();
         Span span = new Span(f.start(), f.end());
         switch (f.kind()) {
-            case DECIMAL_COMMA:
+            case DECIMAL_COMMA -> {
                 return decimalComma(text, span);
-            case POINT_FIRST:
+            }
+            case POINT_FIRST -> {
                 return of(Code.BAD_NUMBER, span, "a digit is missing before the point: write `" + f.other() + "`")
                         .withFix("write " + f.other(), span, f.other());
-            case POINT_LAST:
+            }
+            case POINT_LAST -> {
                 String whole = text.substring(0, text.length() - 1);
                 return pointLast(text, whole, f.other(), span);
-            case TWO_POINTS:
+            }
+            case TWO_POINTS -> {
                 return of(
                         Code.BAD_NUMBER,
                         span,
                         "`" + text
                                 + "` holds more than one point: a number has one decimal point and no signs between its digits");
-            case TOO_LARGE:
+            }
+            case TOO_LARGE -> {
                 return of(
                         Code.BAD_NUMBER,
                         span,
                         "`" + text
                                 + "` is larger than any number that can be computed with: write a smaller one, or another unit");
-            case TOO_SMALL:
+            }
+            case TOO_SMALL -> {
                 return of(
                         Code.BAD_NUMBER,
                         span,
                         "`" + text + "` is too close to zero to be told from it: write `0`, or another unit");
-            case GROUPED_DIGITS:
+            }
+            case GROUPED_DIGITS -> {
                 return of(
                                 Code.BAD_NUMBER,
                                 span,
                                 "the digits of a number stand together: write `" + f.other() + "` instead of "
                                         + Forms.quoted(text))
                         .withFix("write " + f.other(), span, f.other());
-            case NO_SUCH_DAY:
+            }
+            case NO_SUCH_DAY -> {
                 return of(
                         Code.BAD_DATE,
                         span,
                         "there is no day `" + text + "`: a date is year, month, day, written as `2027-06-30`");
-            case MISSING_TIMES:
+            }
+            case MISSING_TIMES -> {
                 return missingTimes(f, span);
-            case TWO_ENTRIES:
+            }
+            case TWO_ENTRIES -> {
                 return of(
                                 Code.SYNTAX,
                                 span,
                                 "`" + text
                                         + "` starts another entry on the same line: put it on a line of its own, or `;` before it")
                         .withFix("put `;` before `" + text + "`", new Span(f.start(), f.start()), "; ");
-            case UNCLOSED_BRACKET:
+            }
+            case UNCLOSED_BRACKET -> {
                 return of(Code.SYNTAX, span, "an opening `(` is not closed in this entry: write the missing `)`");
-            case OPEN_STRING:
+            }
+            case OPEN_STRING -> {
                 return of(
                                 Code.UNCLOSED_STRING,
                                 span,
                                 "the text " + Forms.quoted(text)
                                         + " has no end: write `\"` where it ends, on the same line")
                         .withFix("end the text with `\"`", new Span(f.end(), f.end()), "\"");
-            case BAD_CHARACTER:
+            }
+            case BAD_CHARACTER -> {
                 return badCharacter(text, span);
-            case UNCLOSED_BRACE:
+            }
+            case UNCLOSED_BRACE -> {
                 return of(Code.UNCLOSED_BLOCK, span, unclosed(text));
-            case UNOPENED_BRACE:
+            }
+            case UNOPENED_BRACE -> {
                 return of(
                                 Code.SYNTAX,
                                 new Span(f.end(), f.end()),
                                 "the lines below " + Forms.quoted(text)
                                         + " are closed by a `}`, but no `{` opens them: write `{` at the end of this line")
                         .withFix("write `{`", new Span(f.end(), f.end()), " {");
-            case STRAY_BRACE:
+            }
+            case STRAY_BRACE -> {
                 return of(
                                 Code.STRAY_BRACE,
                                 span,
                                 "this `}` closes nothing: remove it, or write the missing `{` further up")
                         .withFix("remove `}`", span, "");
-            case TOO_DEEP:
+            }
+            case TOO_DEEP -> {
                 return of(
                         Code.TOO_DEEP,
                         span,
                         text.equals("operators")
                                 ? "this expression holds more than 500 operators: split it with `let`"
                                 : "blocks and brackets are nested more than 100 deep here: what lies deeper is not read; take some of it out");
+            }
         }
         throw new IllegalStateException("a kind of finding without words: " + f.kind());
     }

@@ -125,15 +125,11 @@ final class Forms {
 
     /** What stands here, as an engineer would call it. */
     static String found(Token t) {
-        switch (t instanceof Tok ? ((Tok) t).kind() : t.getType()) {
-            case Token.EOF:
-                return "the end of the text";
-            case BackconeLexer.NL:
-            case BackconeLexer.SEMI:
-                return "the end of the line";
-            default:
-                return quoted(t);
-        }
+        return switch (t instanceof Tok tok ? tok.kind() : t.getType()) {
+            case Token.EOF -> "the end of the text";
+            case BackconeLexer.NL, BackconeLexer.SEMI -> "the end of the line";
+            default -> quoted(t);
+        };
     }
 
     /** The author's own text between back quotes, shortened. */

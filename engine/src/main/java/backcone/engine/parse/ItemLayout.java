@@ -59,62 +59,58 @@ final class ItemLayout {
     }
 
     private Line.@Nullable Stop stop(Tok t, Line line) {
-        switch (t.getType()) {
-            case BackconeLexer.ASSIGN:
-                return alignsEquals() && !line.has(Line.Stop.EQUALS) ? Line.Stop.EQUALS : null;
-            case BackconeLexer.ARROW:
-                return Line.Stop.ARROW;
-            case BackconeLexer.PIPE:
-                return Line.Stop.BAR;
-            case BackconeLexer.COLON:
+        return switch (t.getType()) {
+            case BackconeLexer.ASSIGN -> only(alignsEquals() && !line.has(Line.Stop.EQUALS), Line.Stop.EQUALS);
+            case BackconeLexer.ARROW -> Line.Stop.ARROW;
+            case BackconeLexer.PIPE -> Line.Stop.BAR;
+            case BackconeLexer.COLON -> {
                 pastColon = true;
-                return null;
-            case BackconeLexer.NAME:
+                yield null;
+            }
+            case BackconeLexer.NAME -> {
                 names++;
-                return kind == BackconeLexer.DECLARATION && names == 2 && !pastColon ? Line.Stop.SYMBOL : null;
-            case BackconeLexer.STRING:
-                return hasMeaning() && !pastColon && !line.has(Line.Stop.MEANING) ? Line.Stop.MEANING : null;
-            case BackconeLexer.IN:
-                return kind == BackconeLexer.QUANTITY ? Line.Stop.SYMBOL : null;
-            case BackconeLexer.WITHIN:
-                return kind == BackconeLexer.GIVES ? Line.Stop.WITHIN : null;
-            case BackconeLexer.BECAUSE:
-                return last != null && last.getType() == BackconeLexer.ASSUMED ? null : note(line);
-            case BackconeLexer.IS:
-                return kind == BackconeLexer.DECLARATION ? note(line) : null;
-            case BackconeLexer.PER:
-            case BackconeLexer.MEASURED:
-            case BackconeLexer.ASSUMED:
-            case BackconeLexer.ELSE:
-            case BackconeLexer.TAKING:
-            case BackconeLexer.READING:
-            case BackconeLexer.RANGE:
-            case BackconeLexer.WORST:
-            case BackconeLexer.NEEDED:
-            case BackconeLexer.OFFER:
-            case BackconeLexer.ROWS:
-                return kind == BackconeLexer.EXAMPLE ? null : note(line);
-            default:
-                return null;
-        }
+                yield only(kind == BackconeLexer.DECLARATION && names == 2 && !pastColon, Line.Stop.SYMBOL);
+            }
+            case BackconeLexer.STRING ->
+                only(hasMeaning() && !pastColon && !line.has(Line.Stop.MEANING), Line.Stop.MEANING);
+            case BackconeLexer.IN -> only(kind == BackconeLexer.QUANTITY, Line.Stop.SYMBOL);
+            case BackconeLexer.WITHIN -> only(kind == BackconeLexer.GIVES, Line.Stop.WITHIN);
+            case BackconeLexer.BECAUSE -> note(line, last == null || last.getType() != BackconeLexer.ASSUMED);
+            case BackconeLexer.IS -> note(line, kind == BackconeLexer.DECLARATION);
+            case BackconeLexer.PER,
+                    BackconeLexer.MEASURED,
+                    BackconeLexer.ASSUMED,
+                    BackconeLexer.ELSE,
+                    BackconeLexer.TAKING,
+                    BackconeLexer.READING,
+                    BackconeLexer.RANGE,
+                    BackconeLexer.WORST,
+                    BackconeLexer.NEEDED,
+                    BackconeLexer.OFFER,
+                    BackconeLexer.ROWS -> note(line, kind != BackconeLexer.EXAMPLE);
+            default -> null;
+        };
     }
 
-    private static Line.@Nullable Stop note(Line line) {
-        return line.has(Line.Stop.NOTE) ? null : Line.Stop.NOTE;
+    /** Where the first of the trailing notes starts. */
+    private static Line.@Nullable Stop note(Line line, boolean trails) {
+        return only(trails && !line.has(Line.Stop.NOTE), Line.Stop.NOTE);
+    }
+
+    private static Line.@Nullable Stop only(boolean here, Line.Stop stop) {
+        return here ? stop : null;
     }
 
     private boolean alignsEquals() {
-        switch (kind) {
-            case BackconeLexer.FACT:
-            case BackconeLexer.FACT_FOR:
-            case BackconeLexer.LET:
-            case BackconeLexer.OVERRIDE:
-            case BackconeLexer.ROLE:
-            case BackconeLexer.GIVES:
-                return true;
-            default:
-                return false;
-        }
+        return switch (kind) {
+            case BackconeLexer.FACT,
+                    BackconeLexer.FACT_FOR,
+                    BackconeLexer.LET,
+                    BackconeLexer.OVERRIDE,
+                    BackconeLexer.ROLE,
+                    BackconeLexer.GIVES -> true;
+            default -> false;
+        };
     }
 
     private boolean hasMeaning() {
@@ -126,21 +122,16 @@ final class ItemLayout {
 
     /** Blanks around operators, none inside brackets, paths, powers and after a sign. */
     private boolean blankBetween(Tok a, Tok b) {
-        switch (b.getType()) {
-            case BackconeLexer.COMMA:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.DOT:
-                return false;
-            case BackconeLexer.LPAREN:
-                return a.getType() != BackconeLexer.NAME && a.getType() != BackconeLexer.LPAREN && !isTight(a);
-            case BackconeLexer.CARET:
+        return switch (b.getType()) {
+            case BackconeLexer.COMMA, BackconeLexer.RPAREN, BackconeLexer.DOT -> false;
+            case BackconeLexer.LPAREN ->
+                a.getType() != BackconeLexer.NAME && a.getType() != BackconeLexer.LPAREN && !isTight(a);
+            case BackconeLexer.CARET ->
                 // behind a unit, a power that touches would become part of it
-                return a.getType() == BackconeLexer.UNIT;
-            case BackconeLexer.UNIT:
-                return b.getText().charAt(0) != '\u00B0';
-            default:
-                return a.getType() != BackconeLexer.LPAREN && !isTight(a);
-        }
+                a.getType() == BackconeLexer.UNIT;
+            case BackconeLexer.UNIT -> b.getText().charAt(0) != '\u00B0';
+            default -> a.getType() != BackconeLexer.LPAREN && !isTight(a);
+        };
     }
 
     private boolean isTight(Tok a) {
@@ -155,17 +146,15 @@ final class ItemLayout {
         if (t == null) {
             return false;
         }
-        switch (t.getType()) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.STRING:
-            case BackconeLexer.DATE:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.RBRACE:
-                return true;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.STRING,
+                    BackconeLexer.DATE,
+                    BackconeLexer.RPAREN,
+                    BackconeLexer.RBRACE -> true;
+            default -> false;
+        };
     }
 }

@@ -99,31 +99,28 @@ final class Layout {
         while (true) {
             Tok t = token();
             switch (t.getType()) {
-                case BackconeLexer.NL:
-                case BackconeLexer.SEMI:
-                case BackconeLexer.WORD_COMMA:
-                case BackconeLexer.RBRACE:
-                case Token.EOF:
+                case BackconeLexer.NL,
+                        BackconeLexer.SEMI,
+                        BackconeLexer.WORD_COMMA,
+                        BackconeLexer.RBRACE,
+                        Token.EOF -> {
                     return;
-                case BackconeLexer.LBRACE:
-                case BackconeLexer.ROWS_OPEN:
-                    body(t, layout, indent);
-                    break;
-                case BackconeLexer.WORDS_OPEN:
-                    if (kind == BackconeLexer.CASES && !holdsComment(t)) {
+                }
+                case BackconeLexer.LBRACE, BackconeLexer.ROWS_OPEN -> body(t, layout, indent);
+                case BackconeLexer.WORDS_OPEN -> {
+                    if (kind == BackconeLexer.CASES && !holdsComment()) {
                         wordsOnOneLine(t, layout, indent);
                     } else {
                         body(t, layout, indent);
                     }
-                    break;
-                case BackconeLexer.ARMS_OPEN:
-                    arms(t, layout, indent);
-                    break;
-                default:
+                }
+                case BackconeLexer.ARMS_OPEN -> arms(t, layout, indent);
+                default -> {
                     if (!t.isInserted()) {
                         write(t, layout, indent);
                     }
                     next++;
+                }
             }
         }
     }
@@ -216,32 +213,29 @@ final class Layout {
         int k = next + 1;
         while (tokens.get(k).getType() != BackconeLexer.RBRACE) {
             switch (tokens.get(k).getType()) {
-                case BackconeLexer.LBRACE:
-                case BackconeLexer.ROWS_OPEN:
-                case BackconeLexer.ARMS_OPEN:
-                case BackconeLexer.WORDS_OPEN:
-                case BackconeLexer.ROW:
-                case Token.EOF:
+                case BackconeLexer.LBRACE,
+                        BackconeLexer.ROWS_OPEN,
+                        BackconeLexer.ARMS_OPEN,
+                        BackconeLexer.WORDS_OPEN,
+                        BackconeLexer.ROW,
+                        Token.EOF -> {
                     return false;
-                case BackconeLexer.NL:
-                case BackconeLexer.SEMI:
-                case BackconeLexer.WORD_COMMA:
-                    separators++;
-                    break;
-                default:
-                    break;
+                }
+                case BackconeLexer.NL, BackconeLexer.SEMI, BackconeLexer.WORD_COMMA -> separators++;
+                default -> {}
             }
             k++;
         }
         boolean empty = k == next + 1;
         boolean single = separators == 0
-                || separators == 1 && isSeparator(tokens.get(k - 1).getType());
+                || (separators == 1 && isSeparator(tokens.get(k - 1).getType()));
         return single
-                && !holdsComment(brace)
+                && !holdsComment()
                 && (empty || newlines(brace.end(), tokens.get(k).start()) == 0);
     }
 
-    private boolean holdsComment(Tok brace) {
+    /** A comment stands before the brace that closes the one at hand. */
+    private boolean holdsComment() {
         int depth = 0;
         int k = next;
         do {
@@ -287,7 +281,7 @@ final class Layout {
         int count = 0;
         for (int k = from; k < to; k++) {
             char c = text.charAt(k);
-            if (c == '\n' || c == '\r' && (k + 1 >= text.length() || text.charAt(k + 1) != '\n')) {
+            if (c == '\n' || (c == '\r' && (k + 1 >= text.length() || text.charAt(k + 1) != '\n'))) {
                 count++;
             }
         }

@@ -51,27 +51,26 @@ final class Misreadings {
             return missingValue(item, found);
         }
         switch (kind) {
-            case BackconeLexer.FACT:
+            case BackconeLexer.FACT -> {
                 if (failure.expected().contains(BackconeLexer.ASSIGN)) {
                     return missingAssign(item, found);
                 }
-                break;
-            case BackconeLexer.DECLARATION:
+            }
+            case BackconeLexer.DECLARATION -> {
                 Diagnostic declaration = declaration(item, failure, found);
                 if (declaration != null) {
                     return declaration;
                 }
-                break;
-            case BackconeLexer.BLOCK:
+            }
+            case BackconeLexer.BLOCK -> {
                 if (before(found).getType() == BackconeLexer.ON) {
                     return missingAt(
                             Code.SYNTAX,
                             found,
                             "after `on` the shaft is missing: write its name, for example `pinion on motor { … }`");
                 }
-                break;
-            default:
-                break;
+            }
+            default -> {}
         }
         return incomplete(item, failure, found);
     }
@@ -255,22 +254,14 @@ final class Misreadings {
         if (before.getStopIndex() + 1 != found.getStartIndex()) {
             return null;
         }
-        switch (before.getText() + found.getText()) {
-            case "=<":
-                return "<=";
-            case "=>":
-            case "=>=":
-                return ">=";
-            case "<>":
-            case "=!":
-                return "!=";
-            case "===":
-                return "==";
-            case "**":
-                return "^";
-            default:
-                return null;
-        }
+        return switch (before.getText() + found.getText()) {
+            case "=<" -> "<=";
+            case "=>", "=>=" -> ">=";
+            case "<>", "=!" -> "!=";
+            case "===" -> "==";
+            case "**" -> "^";
+            default -> null;
+        };
     }
 
     private Diagnostic path(Token found) {
@@ -489,8 +480,8 @@ final class Misreadings {
         StringBuilder b = new StringBuilder();
         for (int k = index + 1; k < tokens.size(); k++) {
             Tok t = tokens.get(k);
-            if (kind(t) != BackconeLexer.NAME && kind(t) != BackconeLexer.DOT
-                    || b.length() > 0 && kind(t) == BackconeLexer.NAME && b.charAt(b.length() - 1) != '.') {
+            if ((kind(t) != BackconeLexer.NAME && kind(t) != BackconeLexer.DOT)
+                    || (b.length() > 0 && kind(t) == BackconeLexer.NAME && b.charAt(b.length() - 1) != '.')) {
                 break;
             }
             b.append(t.getText());
@@ -526,17 +517,15 @@ final class Misreadings {
     }
 
     private static boolean isValueStart(Token t) {
-        switch (kind(t)) {
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.STRING:
-            case BackconeLexer.DATE:
-            case BackconeLexer.MINUS:
-            case BackconeLexer.PLUS:
-            case BackconeLexer.LPAREN:
-                return true;
-            default:
-                return false;
-        }
+        return switch (kind(t)) {
+            case BackconeLexer.NUMBER,
+                    BackconeLexer.STRING,
+                    BackconeLexer.DATE,
+                    BackconeLexer.MINUS,
+                    BackconeLexer.PLUS,
+                    BackconeLexer.LPAREN -> true;
+            default -> false;
+        };
     }
 
     private Token before(Token found) {
@@ -551,11 +540,11 @@ final class Misreadings {
     }
 
     private static int kind(Token t) {
-        return t instanceof Tok ? ((Tok) t).kind() : t.getType();
+        return t instanceof Tok tok ? tok.kind() : t.getType();
     }
 
     private static boolean isMarker(Token t) {
-        return t instanceof Tok && ((Tok) t).isInserted();
+        return t instanceof Tok tok && tok.isInserted();
     }
 
     private static boolean isEnd(Token t) {
@@ -575,18 +564,16 @@ final class Misreadings {
     }
 
     private static boolean isOperand(Token t) {
-        switch (kind(t)) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.STRING:
-            case BackconeLexer.OPENSTRING:
-            case BackconeLexer.DATE:
-            case BackconeLexer.RPAREN:
-                return true;
-            default:
-                return false;
-        }
+        return switch (kind(t)) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.STRING,
+                    BackconeLexer.OPENSTRING,
+                    BackconeLexer.DATE,
+                    BackconeLexer.RPAREN -> true;
+            default -> false;
+        };
     }
 
     private Diagnostic at(Code code, Token where, String message) {

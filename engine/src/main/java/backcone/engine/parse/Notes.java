@@ -28,13 +28,13 @@ final class Notes {
         List<Note> notes = new ArrayList<>(contexts.size());
         for (int i = 0; i < contexts.size(); i++) {
             BackconeParser.NoteContext c = contexts.get(i);
-            if (c instanceof BackconeParser.ReadingNoteContext) {
+            if (c instanceof BackconeParser.ReadingNoteContext readingNoteContext) {
                 // what stands behind a reading, up to the next one, belongs to it
                 int end = i + 1;
                 while (end < contexts.size() && !(contexts.get(end) instanceof BackconeParser.ReadingNoteContext)) {
                     end++;
                 }
-                notes.add(reading((BackconeParser.ReadingNoteContext) c, of(contexts.subList(i + 1, end))));
+                notes.add(reading(readingNoteContext, of(contexts.subList(i + 1, end))));
                 i = end - 1;
                 continue;
             }

@@ -390,9 +390,9 @@ final class TreeBuilder {
     private static @Nullable String takeOtherwise(List<Note> list) {
         for (int i = 0; i < list.size(); i++) {
             Note n = list.get(i);
-            if (n instanceof Note.Otherwise) {
+            if (n instanceof Note.Otherwise otherwise) {
                 list.remove(i);
-                return ((Note.Otherwise) n).text();
+                return otherwise.text();
             }
         }
         return null;

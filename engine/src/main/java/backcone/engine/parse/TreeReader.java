@@ -15,10 +15,6 @@ import org.jspecify.annotations.Nullable;
 
 /** Reads what {@link TreeWriter} has written. */
 final class TreeReader {
-    private static final Expr.Op[] OPS = Expr.Op.values();
-    private static final Expr.Cmp[] CMPS = Expr.Cmp.values();
-    private static final Entry.Given[] GIVEN = Entry.Given.values();
-
     private final byte[] data;
     private int at;
     private String[] strings = new String[0];
@@ -65,84 +61,59 @@ final class TreeReader {
     }
 
     private Entry entry1(int form, Span span) {
-        switch (form) {
-            case 0:
-                return new Entry.Fact(path(), expr(), list(this::note), span);
-            case 1:
-                return new Entry.Requirement(path(), CMPS[small()], expr(), list(this::note), span);
-            case 2:
-                return new Entry.Block(name(), nameOrNull(), nameOrNull(), textOrNull(), bodyOrNull(), span);
-            case 3:
-                return new Entry.Declaration(
+        return switch (form) {
+            case 0 -> new Entry.Fact(path(), expr(), list(this::note), span);
+            case 1 -> new Entry.Requirement(path(), Expr.Cmp.valueOf(text()), expr(), list(this::note), span);
+            case 2 -> new Entry.Block(name(), nameOrNull(), nameOrNull(), textOrNull(), bodyOrNull(), span);
+            case 3 ->
+                new Entry.Declaration(
                         name(),
                         nameOrNull(),
                         textOrNull(),
                         name(),
                         nameOrNull(),
-                        GIVEN[small()],
+                        Entry.Given.valueOf(text()),
                         exprOrNull(),
                         list(this::note),
                         span);
-            case 4:
-                return new Entry.Drive(name(), textOrNull(), list(this::entry), span);
-            case 5:
-                return new Entry.Use(text(), nameOrNull(), span(), span);
-            case 6:
-                return new Entry.Let(name(), expr(), list(this::note), span);
-            case 7:
-                return new Entry.Rate(path(), name(), numOrNull(), nameOrNull(), nameOrNull(), list(this::entry), span);
-            case 8:
-                return new Entry.UseReading(name(), path(), list(this::note), span);
-            case 9:
-                return new Entry.Require(
+            case 4 -> new Entry.Drive(name(), textOrNull(), list(this::entry), span);
+            case 5 -> new Entry.Use(text(), nameOrNull(), span(), span);
+            case 6 -> new Entry.Let(name(), expr(), list(this::note), span);
+            case 7 -> new Entry.Rate(path(), name(), numOrNull(), nameOrNull(), nameOrNull(), list(this::entry), span);
+            case 8 -> new Entry.UseReading(name(), path(), list(this::note), span);
+            case 9 ->
+                new Entry.Require(
                         expr(), exprOrNull(), exprOrNull(), exprOrNull(), exprOrNull(), list(this::note), span);
-            default:
-                throw unknown(form);
-        }
+            default -> throw unknown(form);
+        };
     }
 
     private Entry entry2(int form, Span span) {
-        switch (form) {
-            case 10:
-                return new Entry.Assert(expr(), list(this::note), span);
-            case 11:
-                return new Entry.Override(path(), expr(), list(this::note), span);
-            case 12:
-                return new Entry.Accept(path(), CMPS[small()], expr(), list(this::note), span);
-            case 13:
-                return new Entry.Waive(path(), list(this::note), span);
-            case 14:
-                return new Entry.Variant(name(), name(), textOrNull(), list(this::entry), span);
-            case 15:
-                return new Entry.Family(name(), name(), textOrNull(), list(this::row), span);
-            case 16:
-                return new Entry.FactFor(name(), name(), expr(), list(this::note), span);
-            case 17:
-                return new Entry.Quantity(name(), name(), textOrNull(), flag(), list(this::name), span);
-            case 18:
-                return new Entry.Source(name(), text(), span);
-            case 19:
-                return new Entry.Choice(name(), textOrNull(), list(this::word), span);
-            default:
-                throw unknown(form);
-        }
+        return switch (form) {
+            case 10 -> new Entry.Assert(expr(), list(this::note), span);
+            case 11 -> new Entry.Override(path(), expr(), list(this::note), span);
+            case 12 -> new Entry.Accept(path(), Expr.Cmp.valueOf(text()), expr(), list(this::note), span);
+            case 13 -> new Entry.Waive(path(), list(this::note), span);
+            case 14 -> new Entry.Variant(name(), name(), textOrNull(), list(this::entry), span);
+            case 15 -> new Entry.Family(name(), name(), textOrNull(), list(this::row), span);
+            case 16 -> new Entry.FactFor(name(), name(), expr(), list(this::note), span);
+            case 17 -> new Entry.Quantity(name(), name(), textOrNull(), flag(), list(this::name), span);
+            case 18 -> new Entry.Source(name(), text(), span);
+            case 19 -> new Entry.Choice(name(), textOrNull(), list(this::word), span);
+            default -> throw unknown(form);
+        };
     }
 
     private Entry entry3(int form, Span span) {
-        switch (form) {
-            case 20:
-                return new Entry.Kind(name(), nameOrNull(), textOrNull(), list(this::entry), span);
-            case 21:
-                return new Entry.Chapter(name(), name(), textOrNull(), list(this::entry), span);
-            case 22:
-                return new Entry.Method(name(), name(), textOrNull(), list(this::entry), span);
-            case 23:
-                return new Entry.Include(list(this::name), span);
-            case 24:
-                return new Entry.Function(
-                        name(), list(this::parameter), textOrNull(), name(), expr(), list(this::note), span);
-            case 25:
-                return new Entry.Table(
+        return switch (form) {
+            case 20 -> new Entry.Kind(name(), nameOrNull(), textOrNull(), list(this::entry), span);
+            case 21 -> new Entry.Chapter(name(), name(), textOrNull(), list(this::entry), span);
+            case 22 -> new Entry.Method(name(), name(), textOrNull(), list(this::entry), span);
+            case 23 -> new Entry.Include(list(this::name), span);
+            case 24 ->
+                new Entry.Function(name(), list(this::parameter), textOrNull(), name(), expr(), list(this::note), span);
+            case 25 ->
+                new Entry.Table(
                         name(),
                         textOrNull(),
                         list(this::name),
@@ -151,33 +122,23 @@ final class TreeReader {
                         list(this::note),
                         list(this::row),
                         span);
-            case 26:
-                return new Entry.Parts(list(this::name), name(), nameOrNull(), span);
-            case 27:
-                return new Entry.Part(name(), name(), textOrNull(), span);
-            case 28:
-                return new Entry.Role(name(), expr(), span);
-            case 29:
-                return new Entry.Collect(name(), name(), expr(), span);
-            default:
-                throw unknown(form);
-        }
+            case 26 -> new Entry.Parts(list(this::name), name(), nameOrNull(), span);
+            case 27 -> new Entry.Part(name(), name(), textOrNull(), span);
+            case 28 -> new Entry.Role(name(), expr(), span);
+            case 29 -> new Entry.Collect(name(), name(), expr(), span);
+            default -> throw unknown(form);
+        };
     }
 
     private Entry entry4(int form, Span span) {
-        switch (form) {
-            case 30:
-                return new Entry.Cases(name(), list(this::name), span);
-            case 31:
-                return new Entry.Each(name(), list(this::entry), span);
-            case 32:
-                return new Entry.Edition(list(this::num), span);
-            case 33:
-                return new Entry.Relation(textOrNull(), exprOrNull(), expr(), list(this::note), span);
-            case 34:
-                return new Entry.Check(name(), textOrNull(), nameOrNull(), expr(), list(this::note), span);
-            case 35:
-                return new Entry.Limit(
+        return switch (form) {
+            case 30 -> new Entry.Cases(name(), list(this::name), span);
+            case 31 -> new Entry.Each(name(), list(this::entry), span);
+            case 32 -> new Entry.Edition(list(this::num), span);
+            case 33 -> new Entry.Relation(textOrNull(), exprOrNull(), expr(), list(this::note), span);
+            case 34 -> new Entry.Check(name(), textOrNull(), nameOrNull(), expr(), list(this::note), span);
+            case 35 ->
+                new Entry.Limit(
                         name(),
                         textOrNull(),
                         nameOrNull(),
@@ -186,17 +147,12 @@ final class TreeReader {
                         textOrNull(),
                         list(this::note),
                         span);
-            case 36:
-                return new Entry.Applies(expr(), textOrNull(), span);
-            case 37:
-                return new Entry.Example(text(), list(this::note), list(this::entry), span);
-            case 38:
-                return new Entry.Gives(path(), expr(), exprOrNull(), span);
-            case 39:
-                return new Entry.Bad(span);
-            default:
-                throw unknown(form);
-        }
+            case 36 -> new Entry.Applies(expr(), textOrNull(), span);
+            case 37 -> new Entry.Example(text(), list(this::note), list(this::entry), span);
+            case 38 -> new Entry.Gives(path(), expr(), exprOrNull(), span);
+            case 39 -> new Entry.Bad(span);
+            default -> throw unknown(form);
+        };
     }
 
     private Entry.Parameter parameter() {
@@ -233,42 +189,25 @@ final class TreeReader {
     private Note note() {
         int form = small();
         Span span = span();
-        switch (form) {
-            case 0:
-                return new Note.Per(nameOrNull(), textOrNull(), dayOrNull(), nameOrNull(), textOrNull(), span);
-            case 1:
-                return new Note.Measured(textOrNull(), span);
-            case 2:
-                return new Note.Assumed(textOrNull(), span);
-            case 3:
-                return new Note.Because(text(), span);
-            case 4:
-                return new Note.Until(dayOrNull(), span);
-            case 5:
-                return new Note.By(text(), span);
-            case 6:
-                return new Note.Otherwise(text(), span);
-            case 7:
-                return new Note.Taking(list(this::taken), span);
-            case 8:
-                return new Note.Reading(name(), expr(), list(this::note), span);
-            case 9:
-                return new Note.InRange(expr(), expr(), span);
-            case 10:
-                return new Note.Rows(list(this::name), span);
-            case 11:
-                return new Note.Worst(name(), span);
-            case 12:
-                return new Note.Is(name(), span);
-            case 13:
-                return new Note.Needed(textOrNull(), span);
-            case 14:
-                return new Note.Offer(expr(), span);
-            case 15:
-                return new Note.Within(expr(), span);
-            default:
-                throw unknown(form);
-        }
+        return switch (form) {
+            case 0 -> new Note.Per(nameOrNull(), textOrNull(), dayOrNull(), nameOrNull(), textOrNull(), span);
+            case 1 -> new Note.Measured(textOrNull(), span);
+            case 2 -> new Note.Assumed(textOrNull(), span);
+            case 3 -> new Note.Because(text(), span);
+            case 4 -> new Note.Until(dayOrNull(), span);
+            case 5 -> new Note.By(text(), span);
+            case 6 -> new Note.Otherwise(text(), span);
+            case 7 -> new Note.Taking(list(this::taken), span);
+            case 8 -> new Note.Reading(name(), expr(), list(this::note), span);
+            case 9 -> new Note.InRange(expr(), expr(), span);
+            case 10 -> new Note.Rows(list(this::name), span);
+            case 11 -> new Note.Worst(name(), span);
+            case 12 -> new Note.Is(name(), span);
+            case 13 -> new Note.Needed(textOrNull(), span);
+            case 14 -> new Note.Offer(expr(), span);
+            case 15 -> new Note.Within(expr(), span);
+            default -> throw unknown(form);
+        };
     }
 
     private Note.Taken taken() {
@@ -281,52 +220,30 @@ final class TreeReader {
     private Expr expr() {
         int form = small();
         Span span = span();
-        switch (form) {
-            case 0:
-                return new Expr.Num(text(), number(), nameOrNull(), span);
-            case 1:
-                return new Expr.Str(text(), span);
-            case 2:
-                return new Expr.Day(text(), span);
-            case 3:
-                return new Expr.Path(list(this::name), span);
-            case 4:
-                return new Expr.Neg(expr(), span);
-            case 5:
-                return new Expr.Not(expr(), span);
-            case 6:
-                return new Expr.Binary(OPS[small()], expr(), expr(), span);
-            case 7:
-                return new Expr.Compare(list(this::expr), list(() -> CMPS[small()]), span);
-            case 8:
-                return new Expr.Given(path(), span);
-            case 9:
-                return new Expr.Call(path(), list(this::expr), span);
-            case 10:
-                return new Expr.Each(name(), exprOrNull(), span);
-            case 11:
-                return new Expr.Column(expr(), name(), span);
-            case 12:
-                return new Expr.Choose(exprOrNull(), list(this::arm), span);
-            case 13:
-                return new Expr.Root(expr(), expr(), expr(), expr(), textOrNull(), span);
-            case 14:
-                return new Expr.Settle(expr(), expr(), expr(), expr(), textOrNull(), span);
-            case 15:
-                return new Expr.In(expr(), name(), span);
-            case 16:
-                return new Expr.Range(expr(), expr(), span);
-            case 17:
-                return new Expr.Toleranced(expr(), expr(), expr(), span);
-            case 18:
-                return new Expr.Dated(expr(), day(), span);
-            case 19:
-                return new Expr.BlockRef(name(), name(), span);
-            case 20:
-                return new Expr.Hole(span);
-            default:
-                throw unknown(form);
-        }
+        return switch (form) {
+            case 0 -> new Expr.Num(text(), number(), nameOrNull(), span);
+            case 1 -> new Expr.Str(text(), span);
+            case 2 -> new Expr.Day(text(), span);
+            case 3 -> new Expr.Path(list(this::name), span);
+            case 4 -> new Expr.Neg(expr(), span);
+            case 5 -> new Expr.Not(expr(), span);
+            case 6 -> new Expr.Binary(Expr.Op.valueOf(text()), expr(), expr(), span);
+            case 7 -> new Expr.Compare(list(this::expr), list(() -> Expr.Cmp.valueOf(text())), span);
+            case 8 -> new Expr.Given(path(), span);
+            case 9 -> new Expr.Call(path(), list(this::expr), span);
+            case 10 -> new Expr.Each(name(), exprOrNull(), span);
+            case 11 -> new Expr.Column(expr(), name(), span);
+            case 12 -> new Expr.Choose(exprOrNull(), list(this::arm), span);
+            case 13 -> new Expr.Root(expr(), expr(), expr(), expr(), textOrNull(), span);
+            case 14 -> new Expr.Settle(expr(), expr(), expr(), expr(), textOrNull(), span);
+            case 15 -> new Expr.In(expr(), name(), span);
+            case 16 -> new Expr.Range(expr(), expr(), span);
+            case 17 -> new Expr.Toleranced(expr(), expr(), expr(), span);
+            case 18 -> new Expr.Dated(expr(), day(), span);
+            case 19 -> new Expr.BlockRef(name(), name(), span);
+            case 20 -> new Expr.Hole(span);
+            default -> throw unknown(form);
+        };
     }
 
     private Expr.Arm arm() {
@@ -402,7 +319,7 @@ final class TreeReader {
     private double number() {
         long bits = 0;
         for (int i = 0; i < 8; i++) {
-            bits = bits << 8 | data[at] & 0xFF;
+            bits = bits << 8 | (data[at] & 0xFF);
             at++;
         }
         return Double.longBitsToDouble(bits);

@@ -56,7 +56,7 @@ final class TreeWriter {
         if (e instanceof Entry.Requirement x) {
             head(1, e);
             path(x.path());
-            small(x.cmp().ordinal());
+            text(x.cmp().name());
             expr(x.bound());
             list(x.notes(), this::note);
             return;
@@ -77,7 +77,7 @@ final class TreeWriter {
             textOrNull(x.meaning());
             name(x.kind());
             nameOrNull(x.unit());
-            small(x.how().ordinal());
+            text(x.how().name());
             exprOrNull(x.value());
             list(x.notes(), this::note);
             return;
@@ -150,7 +150,7 @@ final class TreeWriter {
         if (e instanceof Entry.Accept x) {
             head(12, e);
             path(x.path());
-            small(x.cmp().ordinal());
+            text(x.cmp().name());
             expr(x.bound());
             list(x.notes(), this::note);
             return;
@@ -537,7 +537,7 @@ final class TreeWriter {
         }
         if (e instanceof Expr.Binary x) {
             head(6, e);
-            small(x.op().ordinal());
+            text(x.op().name());
             expr(x.left());
             expr(x.right());
             return;
@@ -545,7 +545,7 @@ final class TreeWriter {
         if (e instanceof Expr.Compare x) {
             head(7, e);
             list(x.operands(), this::expr);
-            list(x.ops(), c -> small(c.ordinal()));
+            list(x.ops(), c -> text(c.name()));
             return;
         }
         if (e instanceof Expr.Given x) {
@@ -738,7 +738,7 @@ final class TreeWriter {
     private static void varint(ByteArrayOutputStream out, int value) {
         int rest = value;
         while ((rest & ~0x7F) != 0) {
-            out.write(rest & 0x7F | 0x80);
+            out.write((rest & 0x7F) | 0x80);
             rest >>>= 7;
         }
         out.write(rest);
