@@ -27,13 +27,13 @@ import picocli.CommandLine.Spec;
         header = "Tells how a number came about: equation, numbers, units, source and trust, down to what was given.",
         description = {
             "",
-            "NAME is a value (`head.cone_distance`, `head.main.wheel.pitting`) or a rating (`head.main`), which is then told as a",
+            "NAME is a value (`head.outer_cone_distance`, `head.main.wheel.pitting`) or a rating (`head.main`), which is then told as a",
             "whole in calculation order. Where a file holds several drives the drive may stand in front."
         },
         footer = {
             "",
             "Examples:",
-            "  backcone explain head.drive head.cone_distance",
+            "  backcone explain head.drive head.outer_cone_distance",
             "  backcone explain head.drive crown.lewis_buckingham        the whole rating, fit for a signer's file",
             "  backcone explain --format json head.drive head.pinion.torque"
         })
@@ -195,7 +195,7 @@ final class ExplainCommand implements Callable<Integer> {
         String more = indent + (markdown ? "  " : "    ");
         String equation = e.equation();
         if (equation != null && e.numbers() != null) {
-            wrapped(more, (e.symbol() == null ? "" : e.symbol() + " = ") + equation, out, markdown);
+            wrapped(more, (e.symbol() == null || e.status() == Explanation.Status.SOLVED ? "" : e.symbol() + " = ") + equation, out, markdown);
             if (!equation.equals(e.numbers()) && !e.numbers().isEmpty()) {
                 wrapped(more, "= " + e.numbers(), out, markdown);
             }

@@ -34,7 +34,7 @@ import picocli.CommandLine.Command;
             "",
             "Examples:",
             "  backcone check samples                               every spec below a folder",
-            "  backcone explain head.drive head.cone_distance       how a number came about",
+            "  backcone explain head.drive head.outer_cone_distance       how a number came about",
             "  backcone start straight-bevel > head.drive           a commented spec to begin with",
             "",
             Caution.TEXT

@@ -103,7 +103,7 @@ public final class DriveResults {
         boolean condition = u.form == RequirementUse.Form.CONDITION;
         if (rate != null && rate.space() == null) {
             state = State.OPEN;
-            fault = "the method `" + rate.syntax().method() + "` is not in this handbook";
+            fault = rate.why();
         } else if (condition && u.value < 0) {
             state = u.holds ? State.CLEAR : State.SHORT;
             v = u.holds ? 1 : 0;
@@ -599,6 +599,9 @@ public final class DriveResults {
             for (Entry e : l.body()) {
                 if (e instanceof Entry.Accept a) {
                     complete("An acceptance", a.notes(), l.file(), a.span());
+                    if (runs.stream().anyMatch(r -> r.graph.ambiguous().contains(a))) {
+                        continue;
+                    }
                     if (!covered.contains(a)) {
                         problems.add(
                                 Code.UNKNOWN_REQUIREMENT,
@@ -688,9 +691,8 @@ public final class DriveResults {
                                     Code.SHORT,
                                     r.file(),
                                     at,
-                                    "`" + r.id() + "` is " + value + ", required " + bound + ": short by "
-                                            + Numbers.format(Math.abs(r.margin()) * 100, 2) + " %" + reserveText(r)
-                                            + ".")));
+                                    "`" + r.id() + "` is " + value + ", required " + bound + ": " + shortBy(r)
+                                            + reserveText(r) + ".")));
                 }
                 break;
             case OUTSIDE:
@@ -727,6 +729,15 @@ public final class DriveResults {
         }
     }
 
+    private static String shortBy(RequirementAnswer r) {
+        if (r.comparison().equals("between")) {
+            boolean below = r.value() < r.required();
+            double off = below ? r.required() - r.value() : r.value() - r.upper();
+            return (below ? "below it by " : "above it by ") + Numbers.format(off, 3) + (r.unit().isEmpty() ? "" : " " + r.unit());
+        }
+        return "short by " + Numbers.format(Math.abs(r.margin()) * 100, 2) + " %";
+    }
+
     private static String reserveText(RequirementAnswer r) {
         return Double.isNaN(r.loadReserve())
                 ? ""
@@ -743,6 +754,12 @@ public final class DriveResults {
     }
 
     private void missingInput(Slot s, Set<String> waiting) {
+        if (s.hasRelations()
+                && problems.all().stream()
+                        .anyMatch(d -> d.severity() == backcone.engine.diagnostics.Severity.ERROR
+                                && (d.code() == Code.UNKNOWN_NAME || d.code() == Code.UNKNOWN_KIND))) {
+            return; // a shaft or mesh that is not understood leaves the train open; that is said where it stands
+        }
         Element e = s.owner;
         FileId file = new FileId("");
         Span span = Span.NONE;

@@ -188,7 +188,7 @@ public final class Explainer {
         } else if (v instanceof Val.Day t) {
             word = t.value();
         }
-        Status status = status(s, fact, v, value, word);
+        Status status = status(run, s, fact, v, value, word);
         String remark = null;
         if (status == Status.OPEN || status == Status.FAULT) {
             remark = v instanceof Val.Num n ? Why.open(run, n.register()) : "not given";
@@ -227,10 +227,9 @@ public final class Explainer {
         return d.per == null && (d.value instanceof Expr.Path || d.role != Decl.Role.QUANTITY);
     }
 
-    private static Status status(
-            Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
-        if (v instanceof Val.Num && Double.isNaN(value)) {
-            return s.isGiven() || s.decl.value != null || s.relationText() != null ? Status.FAULT : Status.OPEN;
+    private static Status status(Run run, Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
+        if (v instanceof Val.Num n && Double.isNaN(value)) {
+            return Why.isFault(run, n.register()) ? Status.FAULT : Status.OPEN;
         }
         if (!(v instanceof Val.Num) && word == null) {
             return Status.OPEN;

@@ -1,6 +1,7 @@
 package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
+import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.model.BodyDef;
 import backcone.engine.model.ChoiceKind;
 import backcone.engine.model.Decl;
@@ -227,6 +228,9 @@ public final class Checker {
                     d.nameNode.span(),
                     "`" + d.symbolOrName() + "` is declared twice for the same element.");
         }
+        if (e.isSpace() || (e.space != null && e.space.isSpace())) {
+            hidden(e);
+        }
         for (Decl d : s.decls) {
             Object x = e.own(d.symbolOrName());
             Slot slot = x instanceof Slot t && t.decl == d ? t : new Slot(e, d);
@@ -304,6 +308,31 @@ public final class Checker {
         }
         return e instanceof Expr.Binary || e instanceof Expr.Root || e instanceof Expr.Settle
                 || (e instanceof Expr.Call c && !Set.of("upstream", "downstream", "case_at_hand", "count").contains(c.callee().text()));
+    }
+
+    /** A method must not declare again what its mesh, the members or the drive have: formulas would silently take the other. */
+    private void hidden(Element e) {
+        Element space = e.isSpace() ? e : java.util.Objects.requireNonNull(e.space);
+        List<Shape> around = new ArrayList<>();
+        Element mesh = space.parent;
+        if (mesh != null) {
+            around.add(mesh.shape);
+        }
+        for (Axis a : e.axes) {
+            around.add(a.element().shape);
+        }
+        around.add(graph.drive.shape);
+        for (Decl d : e.shape.decls) {
+            for (Shape s : around) {
+                for (String n : d.symbol == null ? List.of(d.name) : List.of(d.name, d.symbol)) {
+                    if (s.names.get(n) instanceof Shape.Member m) {
+                        graph.problems.add(Diagnostic.of(Code.HIDDEN_NAME, d.file, d.nameNode.span(), "`" + n + "` is there already (" + m.decl().owner
+                                        + "); give this value a name of its own.")
+                                .withRelated(m.decl().file, m.decl().nameNode.span(), "declared here"));
+                    }
+                }
+            }
+        }
     }
 
     private void decl(Slot s) {

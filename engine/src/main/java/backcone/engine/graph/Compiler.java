@@ -217,7 +217,7 @@ final class Compiler {
     }
 
     private static String lower(@Nullable String meaning, String name) {
-        return meaning == null ? "value of `" + name + "`" : meaning;
+        return meaning == null ? "value of `" + name + "`" : meaning.split(";")[0];
     }
 
     static String list(java.util.Collection<String> words) {
@@ -325,17 +325,7 @@ final class Compiler {
             n = scaled(n, result);
         } else if (n.dimension() != null && n.dimension() != want) {
             if (given && n.dimension().isNone()) {
-                String say = units.unitsOf(want).isEmpty()
-                        ? q.shown().text()
-                        : q.shown().text();
-                Diagnostic d = Diagnostic.of(
-                        Code.MISSING_UNIT,
-                        f.file,
-                        e.span(),
-                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + " and needs its unit, for example `"
-                                + textOf(e, f) + " " + say + "`.");
-                problems.add(d.withFix(
-                        "add the unit " + say, new Span(e.span().end(), e.span().end()), " " + say));
+                missingUnit(s, q, e, f);
             } else if (given) {
                 problem(
                         Code.WRONG_UNIT,
@@ -354,6 +344,15 @@ final class Compiler {
             return bad(want);
         } else if (given) {
             kindOfUnit(s, q, e, f);
+            if (q.whole() && e instanceof Expr.Num literal && literal.value() != Math.rint(literal.value())) {
+                problem(
+                        Code.NOT_WHOLE,
+                        f,
+                        e.span(),
+                        "`" + s.decl.name + "` is a whole number; found " + literal.text() + ". Write "
+                                + (long) Math.floor(literal.value()) + " or " + (long) Math.ceil(literal.value()) + ".");
+                return bad(want);
+            }
         }
         if (given && s.decl.load && s.override == null) {
             int r = graph.tape.emit(Op.MUL, graph.load(), n.register(), 0, 0);
@@ -377,6 +376,35 @@ final class Compiler {
             }
         }
         return n;
+    }
+
+    /** Where one spoken name stands for several scales, all of them are offered. */
+    private void missingUnit(Slot s, QuantityKind q, Expr e, Frame f) {
+        List<String> scales = new ArrayList<>();
+        if (s.owner.shape.names.get(s.decl.name) instanceof Shape.Spoken sp) {
+            for (Shape.Member m : sp.members()) {
+                if (m.decl().kind instanceof ValueKind.Quantity k) {
+                    scales.add(textOf(e, f) + " " + k.kind().shown().text());
+                }
+            }
+        }
+        String say = q.shown().text();
+        Span end = new Span(e.span().end(), e.span().end());
+        if (scales.size() > 1) {
+            problem(
+                    Code.MISSING_UNIT,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` says nothing without its scale or system; write " + list(scales) + ".");
+        } else {
+            problems.add(Diagnostic.of(
+                            Code.MISSING_UNIT,
+                            f.file,
+                            e.span(),
+                            "`" + s.decl.name + "` is " + English.a(q.meaning()) + " and needs its unit, for example `"
+                                    + textOf(e, f) + " " + say + "`.")
+                    .withFix("add the unit " + say, end, " " + say));
+        }
     }
 
     /** A unit of the right dimension may still belong to another kind: a torque is no energy. */

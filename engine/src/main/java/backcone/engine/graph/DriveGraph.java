@@ -58,6 +58,7 @@ public final class DriveGraph {
     final List<RelationUse> relations = new ArrayList<>();
     final List<Agreement> agreements = new ArrayList<>();
     final List<RequirementUse> requirements = new ArrayList<>();
+    final Set<Entry.Accept> ambiguous = new HashSet<>();
     final List<Uncovered> uncovered = new ArrayList<>();
     final Map<String, Element> topElements = new LinkedHashMap<>();
     final Set<Decl> usedDecls = new HashSet<>();
@@ -104,7 +105,8 @@ public final class DriveGraph {
             Element mesh,
             @Nullable Element space,
             @Nullable MethodDef method,
-            String name) {
+            String name,
+            String why) {
         public String id() {
             return mesh.path() + "." + name;
         }
@@ -331,6 +333,11 @@ public final class DriveGraph {
 
     public List<RequirementUse> requirements() {
         return requirements;
+    }
+
+    /** Acceptances that could mean several ratings; the finding is made. */
+    public Set<Entry.Accept> ambiguous() {
+        return ambiguous;
     }
 
     public List<Uncovered> uncovered() {

@@ -675,10 +675,15 @@ final class Elaborator {
         MethodDef def = graph.shapes.library.method(method, mesh.kind());
         if (def == null) {
             noMethod(r, file, mesh, method);
-            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, null, name));
+            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, null, name, "the method `" + method + "` is not in this handbook"));
             return;
         }
         String edition = edition(r, file, def);
+        if (edition == null && !def.body().editions.isEmpty()) {
+            // no edition is assumed, so there is nothing to rate by
+            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, def, name, "the edition of `" + method + "` is not written"));
+            return;
+        }
         if (mesh.named.containsKey(name) && !replace) {
             graph.problems.add(
                     Code.DUPLICATE_NAME,
@@ -693,7 +698,7 @@ final class Elaborator {
             mesh.ratings.removeIf(m -> m.name.equals(name));
         }
         Element space = space(mesh, def, name, edition, file, r.span());
-        graph.rates.add(new DriveGraph.RateUse(r, file, mesh, space, def, name));
+        graph.rates.add(new DriveGraph.RateUse(r, file, mesh, space, def, name, ""));
         queue(space, r.body(), file);
         for (Entry e : r.body()) {
             if (e instanceof Entry.UseReading u) {
@@ -776,7 +781,7 @@ final class Elaborator {
                                         r.method().span().end(),
                                         r.method().span().end()),
                                 " edition " + editions.get(0)));
-                return editions.get(0);
+                return null;
             }
             return null;
         }
@@ -789,7 +794,7 @@ final class Elaborator {
                             ? "`" + def.name() + "` has no editions; leave `edition " + said.text() + "` out."
                             : "`" + def.name() + "` has no edition " + said.text() + "; it knows "
                                     + Compiler.list(editions) + ".");
-            return editions.isEmpty() ? null : editions.get(0);
+            return null;
         }
         return said.text();
     }

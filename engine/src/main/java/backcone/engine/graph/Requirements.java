@@ -375,6 +375,7 @@ final class Requirements {
             ratings.add(u.rate == null ? "" : u.rate.id());
         }
         if (ratings.size() > 1) {
+            graph.ambiguous.add(a);
             graph.problems.add(
                     Code.AMBIGUOUS_NAME,
                     file,

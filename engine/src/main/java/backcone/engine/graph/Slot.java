@@ -77,6 +77,11 @@ public final class Slot {
         return value;
     }
 
+    /** Whether relations could give it. */
+    public boolean hasRelations() {
+        return !relations.isEmpty();
+    }
+
     boolean isWhole() {
         return decl.kind instanceof backcone.engine.model.ValueKind.Quantity q && q.kind().whole();
     }
