@@ -14,6 +14,7 @@ import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.DriveSource;
 import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
+import backcone.engine.model.EntryNames;
 import backcone.engine.model.LibraryBuilder;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.FileSyntax;
@@ -174,38 +175,13 @@ final class FileAnalysis implements Analysis {
             }
             Span at =
                     new Span(e.span().start(), Math.min(e.span().end(), e.span().start() + 20));
-            String what = handbook(e);
+            String why = EntryNames.misplaced(e);
             own.add(
                     Code.WRONG_PLACE,
                     main.file(),
                     at,
-                    what != null
-                            ? "A `" + what + "` belongs in a method file (`.method`), not in a spec."
-                            : "This stands outside any drive; put it inside `drive NAME { … }`.");
+                    why != null ? why : "This stands outside any drive; put it inside `drive NAME { … }`.");
         }
-    }
-
-    private static @Nullable String handbook(Entry e) {
-        if (e instanceof Entry.Table) {
-            return "table";
-        } else if (e instanceof Entry.Method) {
-            return "method";
-        } else if (e instanceof Entry.Chapter) {
-            return "chapter";
-        } else if (e instanceof Entry.Kind) {
-            return "kind";
-        } else if (e instanceof Entry.Function) {
-            return "function";
-        } else if (e instanceof Entry.Quantity) {
-            return "quantity";
-        } else if (e instanceof Entry.Choice) {
-            return "choice";
-        } else if (e instanceof Entry.Source) {
-            return "source";
-        } else if (e instanceof Entry.Declaration) {
-            return "declaration";
-        }
-        return null;
     }
 
     // ---- drives, variants, families

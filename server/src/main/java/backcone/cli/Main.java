@@ -25,6 +25,7 @@ import picocli.CommandLine.Command;
         subcommands = {
             CheckCommand.class,
             ExplainCommand.class,
+            FormatCommand.class,
             HandbookCommand.class,
             StartCommand.class,
             SelfTestCommand.class

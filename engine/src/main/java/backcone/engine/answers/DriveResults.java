@@ -224,7 +224,7 @@ public final class DriveResults {
 
     private @Nullable String fault(RequirementUse u, Reasons.Why why) {
         if (why.faults().isEmpty()) {
-            return why.broken() ? "something above could not be understood" : null;
+            return why.open().isEmpty() ? "something it rests on could not be understood" : null;
         }
         Reasons.Fault first = why.faults().get(0);
         Code code = first.op() == backcone.engine.graph.Op.ROOT || first.op() == backcone.engine.graph.Op.SETTLE
@@ -450,7 +450,7 @@ public final class DriveResults {
                 || (u.form != RequirementUse.Form.AT_LEAST && u.form != RequirementUse.Form.AT_MOST)) {
             return Double.NaN;
         }
-        Run.Scaled scaled = run.scaled();
+        java.util.function.DoubleUnaryOperator scaled = run.underLoad(u.value);
         boolean metNow = met(u.form, run.at(u.value), required, Double.NaN);
         double inner = 1;
         double outer = 1;
@@ -459,7 +459,7 @@ public final class DriveResults {
         for (int i = 0; i < 80 && !found; i++) {
             inner = outer;
             outer *= step;
-            double v = scaled.at(outer)[u.value];
+            double v = scaled.applyAsDouble(outer);
             found = Double.isNaN(v) || met(u.form, v, required, Double.NaN) != metNow;
             if (Double.isNaN(v)) {
                 return Double.NaN;
@@ -473,7 +473,7 @@ public final class DriveResults {
             if (mid == inner || mid == outer) {
                 break;
             }
-            if (met(u.form, scaled.at(mid)[u.value], required, Double.NaN) == metNow) {
+            if (met(u.form, scaled.applyAsDouble(mid), required, Double.NaN) == metNow) {
                 inner = mid;
             } else {
                 outer = mid;

@@ -31,6 +31,9 @@ final class Facts {
         for (DriveGraph.InRange r : run.graph.ranges()) {
             range(r);
         }
+        if (problems.all().stream().anyMatch(d -> d.code() == Code.SPLIT_TRAIN)) {
+            return; // speeds around a ring can't agree; the ring is said already
+        }
         for (DriveGraph.Agreement a : run.graph.agreements()) {
             agree(a);
         }

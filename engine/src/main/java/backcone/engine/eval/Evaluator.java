@@ -9,28 +9,67 @@ public final class Evaluator {
     private static final int MOST_STEPS = 200;
     private final Tape tape;
     private final double[] value;
+    private final int[] order;
+    private final int[] blockEnd;
 
     public Evaluator(Tape tape) {
         this.tape = tape;
         this.value = new double[tape.size()];
+        this.order = new int[tape.length()];
+        this.blockEnd = new int[tape.length()];
+        for (int i = 0; i < order.length; i++) {
+            order[i] = tape.at(i);
+            blockEnd[i] = tape.blockEnd(i);
+        }
+    }
+
+    /**
+     * Runs only what of {@code register} changes with {@code cause}; everything else keeps its value from {@code base}.
+     * Same digits as a full run.
+     */
+    public Evaluator(Tape tape, double[] base, int register, int cause) {
+        this.tape = tape;
+        this.value = base.clone();
+        boolean[] keep = tape.between(register, cause);
+        int n = 0;
+        for (int i = 0; i < tape.length(); i++) {
+            n += keep[tape.at(i)] ? 1 : 0;
+        }
+        this.order = new int[n];
+        this.blockEnd = new int[n];
+        int[] start = new int[tape.size()];
+        int k = 0;
+        for (int i = 0; i < tape.length(); i++) {
+            int r = tape.at(i);
+            if (keep[r]) {
+                order[k] = r;
+                Op op = tape.op(r);
+                if (op == Op.ROOT || op == Op.SETTLE) {
+                    start[r] = k;
+                } else if (op == Op.END) {
+                    blockEnd[start[tape.a(r)]] = k;
+                }
+                k++;
+            }
+        }
     }
 
     /** Runs with the constants and inputs of the tape. {@code inputs} replaces INPUT registers where not null. */
     public double[] run(double load, double @Nullable [] inputs) {
-        span(0, tape.length(), load, inputs);
+        span(0, order.length, load, inputs);
         return value;
     }
 
     private void span(int from, int to, double load, double @Nullable [] inputs) {
         for (int i = from; i < to; i++) {
-            int r = tape.at(i);
+            int r = order[i];
             Op op = tape.op(r);
             if (op == Op.ROOT) {
-                int end = tape.blockEnd(i);
+                int end = blockEnd[i];
                 root(i, end, load, inputs);
                 i = end;
             } else if (op == Op.SETTLE) {
-                int end = tape.blockEnd(i);
+                int end = blockEnd[i];
                 settle(i, end, load, inputs);
                 i = end;
             } else if (op != Op.END) {
@@ -197,14 +236,14 @@ public final class Evaluator {
     }
 
     private double residual(int i, int end, double x, double load, double @Nullable [] inputs) {
-        value[tape.at(i)] = x;
+        value[order[i]] = x;
         span(i + 1, end, load, inputs);
-        return value[tape.b(tape.at(end))];
+        return value[tape.b(order[end])];
     }
 
     /** Bracketed root by the Illinois rule with bisection as its net; the sign change is checked before. */
     private void root(int i, int end, double load, double @Nullable [] inputs) {
-        int r = tape.at(i);
+        int r = order[i];
         double lo = value[tape.a(r)];
         double hi = value[tape.b(r)];
         double flo = residual(i, end, lo, load, inputs);
@@ -267,7 +306,7 @@ public final class Evaluator {
     }
 
     private void settle(int i, int end, double load, double @Nullable [] inputs) {
-        int r = tape.at(i);
+        int r = order[i];
         double x = value[tape.a(r)];
         double tolerance = value[tape.b(r)];
         int most = (int) tape.constant(r);

@@ -190,6 +190,14 @@ final class Compiler {
     }
 
     private Val factValue(Slot s, Expr e, Ctx ctx, Frame f) {
+        if (s.decl.kind instanceof ValueKind.Text && (e instanceof Expr.Path || e instanceof Expr.Num || e instanceof Expr.Binary)) {
+            problem(
+                    Code.WRONG_FORM,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"" + textOf(e, f) + "\"`.");
+            return BAD;
+        }
         if (e instanceof Expr.Path p && p.names().size() == 1) {
             if (s.decl.kind instanceof ValueKind.Choice c) {
                 if (c.kind().has(p.text())) {

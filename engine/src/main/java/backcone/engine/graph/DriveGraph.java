@@ -455,10 +455,13 @@ public final class DriveGraph {
             if (!all.add(x)) {
                 continue;
             }
+            if (x.fact() != null) {
+                return List.of(); // it is written, and what is wrong with it is said there
+            }
             for (RelationUse r : x.relations) {
                 if (r.active && r.solved == null) {
                     for (Slot y : r.slots) {
-                        if (y.decl.value == null && !known.available(y)) {
+                        if ((y.decl.value == null || y.fact() != null) && !known.available(y)) {
                             todo.add(y);
                         }
                     }

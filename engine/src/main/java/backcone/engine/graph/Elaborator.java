@@ -388,7 +388,12 @@ final class Elaborator {
                                 + r.path().text() + " " + r.cmp().sign + " …`.");
             }
         } else if (!allowed(e, x)) {
-            graph.problems.add(Code.WRONG_PLACE, file, firstWord(x), "This entry does not belong in " + where(e) + ".");
+            String why = backcone.engine.model.EntryNames.misplaced(x);
+            graph.problems.add(
+                    Code.WRONG_PLACE,
+                    file,
+                    firstWord(x),
+                    why != null ? why : "This entry does not belong in " + where(e) + ".");
         }
     }
 

@@ -16,7 +16,7 @@ final class Train {
 
     Train(DriveGraph graph) {
         Map<Element, List<Element>> next = new HashMap<>();
-        Set<List<Element>> edges = new HashSet<>();
+        Set<Set<Element>> edges = new HashSet<>();
         for (Element mesh : graph.allOfKind("mesh")) {
             Element a = shaftOf(graph, mesh, "pinion");
             Element b = shaftOf(graph, mesh, "wheel");
@@ -27,14 +27,20 @@ final class Train {
                 graph.problems.add(
                         Code.SPLIT_TRAIN,
                         graph.fileOf(mesh),
-                        mesh.span,
+                        mesh.headSpan(),
                         "Both members of `" + mesh.name + "` sit on the shaft `" + a.name
                                 + "`; put one of them on another shaft.");
                 continue;
             }
             next.computeIfAbsent(a, k -> new ArrayList<>()).add(b);
             next.computeIfAbsent(b, k -> new ArrayList<>()).add(a);
-            edges.add(List.of(a, b));
+            if (!edges.add(Set.of(a, b))) {
+                graph.problems.add(
+                        Code.SPLIT_TRAIN,
+                        graph.fileOf(mesh),
+                        mesh.headSpan(),
+                        "`" + mesh.name + "` joins `" + a.name + "` and `" + b.name + "`, which are in mesh already; a train of shafts is a tree, split power paths are not covered.");
+            }
         }
         Element source = source(graph);
         if (source == null) {
@@ -55,7 +61,7 @@ final class Train {
                     graph.problems.add(
                             Code.SPLIT_TRAIN,
                             graph.fileOf(t),
-                            t.span,
+                            t.headSpan(),
                             "The shaft `" + t.name + "` is reached by two ways from `" + source.name
                                     + "`; a train of shafts is a tree, split power paths are not covered.");
                 }
