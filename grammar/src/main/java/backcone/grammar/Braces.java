@@ -140,7 +140,8 @@ final class Braces {
             }
             for (int k = line.first(); k < line.end(); k++) {
                 if (type(k) == BackconeLexer.LBRACE) {
-                    open.add(new Open(in.get(k), line.indent(), behindChoose(k, line.first())));
+                    boolean choice = behindChoose(k, line.first());
+                    open.add(new Open(in.get(k), choice ? indentAt(k, line) : line.indent(), choice));
                 } else if (type(k) == BackconeLexer.RBRACE) {
                     close(k, line, indented);
                 }
@@ -158,6 +159,17 @@ final class Braces {
 
     private @Nullable Open top() {
         return open.isEmpty() ? null : open.get(open.size() - 1);
+    }
+
+    /** How deep the very line of a token stands, be it the first of its entry or not. */
+    private int indentAt(int index, Line line) {
+        int first = index;
+        while (first > line.first() && type(first - 1) != BackconeLexer.NL) {
+            first--;
+        }
+        return first == line.first()
+                ? line.indent()
+                : in.get(first).start() - in.get(first - 1).end();
     }
 
     private boolean behindChoose(int index, int from) {

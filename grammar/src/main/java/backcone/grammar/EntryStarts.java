@@ -287,7 +287,10 @@ final class EntryStarts {
             return false;
         }
         int next = index + 1;
-        if (isEnd(next) && !word.equals("measured") && !word.equals("assumed")) {
+        boolean standsAlone = word.equals("measured")
+                || word.equals("assumed")
+                || (word.equals("rows") && item.type == BackconeLexer.TABLE);
+        if (isEnd(next) && !standsAlone) {
             // a clause word alone is half-typed: the entry above is not to suffer
             return false;
         }
@@ -297,7 +300,8 @@ final class EntryStarts {
         return switch (word) {
             case "per" -> isName(next) || isText(next);
             case "taking", "because", "until", "within" -> true;
-            case "reading", "rows" -> isName(next);
+            case "reading" -> isName(next);
+            case "rows" -> isName(next) || standsAlone;
             case "measured", "assumed" -> isEnd(next) || isText(next) || isName(next);
             case "by" -> isText(next) || item.type == BackconeLexer.RATE || item.type == BackconeLexer.TABLE;
             case "range", "default", "worst", "needed", "offer" -> declares;

@@ -80,7 +80,7 @@ final class Numbers {
             number = decimalComma(t);
         } else if (typeAt(i) == BackconeLexer.DOT && t.touches(at(i))) {
             number = secondPoint(t);
-        } else if (digits(i) && !oneOver(i) && sameLine(t, at(i))) {
+        } else if (t.end() - t.start() <= 3 && groupOfThree(t, i)) {
             number = groupedDigits(t);
         }
         out.add(number);
@@ -128,11 +128,22 @@ final class Numbers {
         return whole;
     }
 
+    /** Three digits, and perhaps decimals, behind a blank. Other numbers side by side lack something between them. */
+    private boolean groupOfThree(Tok before, int index) {
+        if (!digits(index) || !sameLine(before, at(index)) || before.getText().indexOf('.') >= 0) {
+            return false;
+        }
+        String group = at(index).getText();
+        int point = group.indexOf('.');
+        return (point < 0 ? group.length() : point) == 3
+                && group.chars().allMatch(c -> c == '.' || Character.isDigit(c));
+    }
+
     /** {@code 1 480} or {@code 12 000 000}. */
     private Tok groupedDigits(Tok first) {
         Tok last = first;
         StringBuilder joined = new StringBuilder(first.getText());
-        while (digits(i) && !oneOver(i) && sameLine(last, at(i))) {
+        while (groupOfThree(last, i)) {
             last = at(i);
             joined.append(last.getText());
             i++;

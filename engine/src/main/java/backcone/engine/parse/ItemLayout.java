@@ -10,6 +10,10 @@ final class ItemLayout {
     private @Nullable Tok last;
     private boolean lineIsEmpty = true;
     private boolean lastIsUnary;
+
+    /** The last token is a {@code ^} with blanks around, since it stands behind a unit. */
+    private boolean looseCaret;
+
     private int brackets;
     private int names;
     private boolean pastColon;
@@ -48,6 +52,7 @@ final class ItemLayout {
             line.append(" ");
         }
         line.append(t.getText());
+        looseCaret = t.getType() == BackconeLexer.CARET && last != null && last.getType() == BackconeLexer.UNIT;
         lastIsUnary = isSign(t.getType()) && !endsOperand(last);
         if (t.getType() == BackconeLexer.LPAREN) {
             brackets++;
@@ -135,7 +140,7 @@ final class ItemLayout {
     }
 
     private boolean isTight(Tok a) {
-        return a.getType() == BackconeLexer.DOT || a.getType() == BackconeLexer.CARET || lastIsUnary;
+        return a.getType() == BackconeLexer.DOT || (a.getType() == BackconeLexer.CARET && !looseCaret) || lastIsUnary;
     }
 
     private static boolean isSign(int type) {

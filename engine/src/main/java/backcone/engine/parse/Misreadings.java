@@ -193,11 +193,10 @@ final class Misreadings {
             return missingOrWrong(before, found, what, kind == BackconeLexer.FACT ? factExample(name) : "");
         }
         if (kind == BackconeLexer.REQUIREMENT && isComparison(kind(before))) {
+            String value = Forms.valueFor(name.substring(name.lastIndexOf('.') + 1));
+            String example = name + " " + before.getText() + " " + (value == null ? "1.4" : value);
             return missingOrWrong(
-                    before,
-                    found,
-                    "the limit of `" + name + "`",
-                    ": write a number, for example `" + name + " " + before.getText() + " 1.4`");
+                    before, found, "the limit of `" + name + "`", ": write a number, for example `" + example + "`");
         }
         if (isComparison(kind(before))) {
             return missingOperand(before, found, "the value to compare with");
@@ -402,7 +401,8 @@ final class Misreadings {
         }
         boolean operand =
                 (c == '(' || c == '"' || Character.isLetterOrDigit(c) || c == '_') && !Forms.isWord(kind(found));
-        if (kind(before) == BackconeLexer.UNIT && Character.isLetter(c) && text.length() <= 4 && form == null) {
+        boolean unitWord = operand && Character.isLetter(c) && text.length() <= 4;
+        if (kind(before) == BackconeLexer.UNIT && unitWord && form == null) {
             return at(
                     Code.SYNTAX,
                     found,
