@@ -109,7 +109,7 @@ final class Suggestions {
         if (i != null) {
             return i.meant();
         }
-        String near = closest(word, OTHER_CASE * word.length());
+        String near = otherCase(word);
         if (near != null) {
             return near;
         }
@@ -121,8 +121,26 @@ final class Suggestions {
         if (product != null) {
             return product;
         }
-        int most = word.length() <= 1 ? 0 : word.length() == 2 ? ONE_MORE_OR_LESS : 2 * ONE_MORE_OR_LESS;
+        int most = switch (word.length()) {
+            case 0, 1 -> 0;
+            case 2 -> ONE_MORE_OR_LESS;
+            case 3 -> OTHER_LETTER;
+            default -> 2 * ONE_MORE_OR_LESS;
+        };
         return closest(word, most);
+    }
+
+    /** The unit word with the same letters, most of them alike. */
+    private @Nullable String otherCase(String word) {
+        String best = null;
+        int least = Integer.MAX_VALUE;
+        for (String t : table.words()) {
+            if (t.equalsIgnoreCase(word) && table.instead(t) == null && distance(word, t) < least) {
+                least = distance(word, t);
+                best = t;
+            }
+        }
+        return best;
     }
 
     /** {@code mm2} for {@code mm^2}. */
@@ -134,7 +152,7 @@ final class Suggestions {
         String stem = word.substring(0, last);
         if (table.entry(stem) == null) {
             Instead i = table.insteadInAnyCase(stem);
-            String near = i != null ? i.meant() : closest(stem, OTHER_CASE * stem.length());
+            String near = i != null ? i.meant() : otherCase(stem);
             if (near == null || table.entry(near) == null) {
                 return null;
             }
@@ -143,13 +161,21 @@ final class Suggestions {
         return stem + "^" + word.charAt(last);
     }
 
-    /** A force and a length, or a power and a time, written as one word. */
+    /** A force and a length, or a power and a time, written as one word; {@code kgm} is the same with the old force. */
     private @Nullable String runTogether(String word) {
         for (int i = 1; i < word.length(); i++) {
             Scale a = table.scale(word.substring(0, i));
             Scale b = table.scale(word.substring(i));
-            if (a != null && b != null && a.dimension().times(b.dimension()) == torque()) {
-                return word.substring(0, i) + "*" + word.substring(i);
+            if (a == null || b == null) {
+                continue;
+            }
+            String product = word.substring(0, i) + "*" + word.substring(i);
+            Instead meant = table.instead(product);
+            if (meant != null) {
+                return meant.meant();
+            }
+            if (a.dimension().times(b.dimension()) == torque()) {
+                return product;
             }
         }
         return null;

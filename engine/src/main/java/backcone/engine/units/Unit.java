@@ -21,20 +21,42 @@ public record Unit(
 
     private static final MathContext DIGITS = new MathContext(34, RoundingMode.HALF_EVEN);
 
+    /** Decimals with more places than this are none that somebody types. */
+    private static final double MOST_PLACES = 1e12;
+
+    private static final double LARGEST_WHOLE = 0x1p53;
+
     /** As many digits as every decimal keeps on its way through a double. */
     private static final MathContext TYPED = new MathContext(15, RoundingMode.HALF_EVEN);
 
-    /** The value in computing units. */
+    /**
+     * The value in computing units. The value counts as the decimal that somebody typed: 0.1 in is 2.54 mm and
+     * 7.85 kg/dm^3 are 7.85e-9 t/mm^3, as if those had been typed.
+     */
     public double toBase(double value) {
         if (offset != 0) {
             return shifted(value);
+        }
+        if (numerator == denominator) {
+            return value;
+        }
+        if (value == Math.rint(value)) {
+            return scaled(value, numerator, denominator);
+        }
+        for (double power = 10; power <= MOST_PLACES; power *= 10) {
+            double digits = Math.rint(value * power);
+            if (digits / power == value && Math.abs(digits) < LARGEST_WHOLE) {
+                double d = denominator * power;
+                boolean exact = Math.fma(denominator, power, -d) == 0;
+                return exact ? scaled(digits, numerator, d) : scaled(value, numerator, denominator);
+            }
         }
         return scaled(value, numerator, denominator);
     }
 
     /**
-     * The number to write in this unit for a value in computing units. What was typed with up to 15 digits comes back:
-     * of the numbers that give this value, the one with the fewest digits is taken.
+     * The number to write in this unit for a value in computing units. What was typed comes back: of the numbers that
+     * give this value, one with few digits is taken.
      */
     public double fromBase(double value) {
         if (offset == 0 && numerator == denominator) {
@@ -44,7 +66,9 @@ public record Unit(
         if (plain == 0 || Double.isNaN(plain) || Double.isInfinite(plain)) {
             return plain;
         }
-        double typed = new BigDecimal(plain).round(TYPED).doubleValue();
+        double typed = offset != 0
+                ? withoutNoise(plain, value)
+                : new BigDecimal(plain).round(TYPED).doubleValue();
         return typed != plain && toBase(typed) == value ? typed : plain;
     }
 
@@ -92,6 +116,13 @@ public record Unit(
                 .divide(new BigDecimal(numerator), DIGITS)
                 .subtract(shift())
                 .doubleValue();
+    }
+
+    /** Rounded to the places that a temperature in kelvin still holds. */
+    private double withoutNoise(double degrees, double kelvin) {
+        double step = Math.ulp(kelvin) * denominator / numerator;
+        int places = (int) Math.floor(-Math.log10(step)) - 1;
+        return new BigDecimal(degrees).setScale(places, RoundingMode.HALF_EVEN).doubleValue();
     }
 
     /** The offset counted in this unit: 273.15 and 459.67 are short decimals, while 459.67 * 5/9 is none. */

@@ -117,11 +117,18 @@ public final class Units {
                 return tooLarge(text);
             case TEMPERATURE_IN_PRODUCT:
                 String inKelvin = differences(text);
+                boolean reads = !inKelvin.equals(text) && parse(inKelvin) instanceof Parse.Ok;
                 return new Parse.Bad(
                         "A degree of a temperature scale stands alone, as in `20 degC`; within `" + text
-                                + "` differences of temperature are counted in `K`.",
-                        parse(inKelvin) instanceof Parse.Ok ? inKelvin : null);
+                                + "` differences of temperature are counted in `K`."
+                                + (reads ? " Did you mean `" + inKelvin + "`?" : ""),
+                        reads ? inKelvin : null);
             case UNKNOWN_WORD:
+                if (Character.isDigit(e.word.charAt(0))) {
+                    return new Parse.Bad(
+                            "A unit holds no number besides exponents and a leading `1/`; found `" + e.word + "`.",
+                            null);
+                }
                 Instead instead = table.insteadInAnyCase(e.word);
                 if (instead != null && instead.meant() == null) {
                     return meant(e.word, instead);
@@ -132,6 +139,9 @@ public final class Units {
                         : new Parse.Bad(
                                 "There is no unit `" + e.word + "`. `backcone handbook units` lists them.", null);
             case FORM:
+                if (text.isBlank()) {
+                    return new Parse.Bad("A unit is missing here.", null);
+                }
                 String written = suggestions.nearest(text);
                 return new Parse.Bad(
                         "`" + text + "` is no unit; write units like `N/mm^2` or `kg/(m*s)`, without blanks."
@@ -169,11 +179,16 @@ public final class Units {
             return "";
         }
         String kind = ok.unit().kind();
+        if (kind != null) {
+            return spoken(text) + (kind.equals("Torque") ? ", torque" : ", energy");
+        }
+        for (Named n : table.dimensions()) {
+            if (n.spellings().contains(text)) {
+                return spoken(text) + ", " + n.name();
+            }
+        }
         Named dimension = named().get(ok.unit().dimension());
-        String quantity = kind != null
-                ? ", " + (kind.equals("Torque") ? "torque" : "energy")
-                : dimension == null ? "" : ", " + dimension.name();
-        return spoken(text) + quantity;
+        return spoken(text) + (dimension == null ? "" : ", " + dimension.name());
     }
 
     private String spoken(String text) {
@@ -230,9 +245,10 @@ public final class Units {
     /** Spellings of a dimension that a user may be offered, commonest first. */
     public List<String> unitsOf(Dimension d) {
         Set<String> out = new LinkedHashSet<>();
-        Named n = named().get(d);
-        if (n != null) {
-            out.addAll(n.spellings());
+        for (Named n : table.dimensions()) {
+            if (parse(n.spellings().get(0)) instanceof Parse.Ok ok && ok.unit().dimension() == d) {
+                out.addAll(n.spellings());
+            }
         }
         for (String w : table.words()) {
             Scale s = table.scale(w);
@@ -269,7 +285,7 @@ public final class Units {
             m = new HashMap<>();
             for (Named n : table.dimensions()) {
                 if (parse(n.spellings().get(0)) instanceof Parse.Ok ok) {
-                    m.put(ok.unit().dimension(), n);
+                    m.putIfAbsent(ok.unit().dimension(), n);
                 }
             }
             named = m;
