@@ -4,6 +4,7 @@ import java.math.BigInteger;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.ConcurrentHashMap;
+import org.jspecify.annotations.Nullable;
 
 /**
  * A product of powers of base quantities, with exact fractions as exponents. Equal dimensions are the same object, so
@@ -48,6 +49,21 @@ public final class Dimension {
             return new Power(base, numerator.negate(), denominator);
         }
 
+        // Written out, because those that a record makes for itself cost tens of milliseconds at a cold start.
+
+        @Override
+        public boolean equals(@Nullable Object o) {
+            return o instanceof Power p
+                    && base.equals(p.base)
+                    && numerator.equals(p.numerator)
+                    && denominator.equals(p.denominator);
+        }
+
+        @Override
+        public int hashCode() {
+            return base.hashCode() + 31 * (numerator.hashCode() + 31 * denominator.hashCode());
+        }
+
         boolean isZero() {
             return numerator.signum() == 0;
         }
@@ -60,7 +76,12 @@ public final class Dimension {
     private static Dimension of(List<Power> powers) {
         List<Power> key = List.copyOf(powers);
         Dimension known = ALL.get(key);
-        return known != null ? known : ALL.computeIfAbsent(key, Dimension::new);
+        if (known != null) {
+            return known;
+        }
+        Dimension fresh = new Dimension(key);
+        Dimension earlier = ALL.putIfAbsent(key, fresh);
+        return earlier == null ? fresh : earlier;
     }
 
     /**
