@@ -102,6 +102,10 @@ public final class Examples {
         for (ExampleGraph.Expectation e : g.expectations) {
             report.outcomes.add(outcome(run, body, x, e));
             reach(run, e.value(), report);
+            Slot named = run.graph.find("it." + e.syntax().path().text());
+            if (named != null && named.factSpan() == null) {
+                report.reachedEquations.add(named.decl);
+            }
         }
     }
 
