@@ -24,7 +24,11 @@ class DiagnosticPagesTest {
             assertThat(in).as("page of " + code.id()).isNotNull();
             text = new String(in.readAllBytes(), StandardCharsets.UTF_8);
         }
-        Page p = new Page(text.lines().findFirst().orElse(""), new LinkedHashMap<>(), new LinkedHashMap<>(), new LinkedHashMap<>());
+        Page p = new Page(
+                text.lines().findFirst().orElse(""),
+                new LinkedHashMap<>(),
+                new LinkedHashMap<>(),
+                new LinkedHashMap<>());
         List<String> lines = text.lines().toList();
         for (int i = 0; i < lines.size(); i++) {
             String l = lines.get(i);
@@ -39,7 +43,9 @@ class DiagnosticPagesTest {
                 (l.contains(" wrong") ? p.wrong : p.right).put(file, body.toString());
                 int on = l.indexOf("on=");
                 if (on >= 0) {
-                    p.days.put(l.contains(" wrong") ? "wrong" : "right", l.substring(on + 3).split(" ")[0]);
+                    p.days.put(
+                            l.contains(" wrong") ? "wrong" : "right",
+                            l.substring(on + 3).split(" ")[0]);
                 }
             }
         }
@@ -50,7 +56,10 @@ class DiagnosticPagesTest {
         Specs s = new Specs().on(day);
         files.forEach(s::with);
         List<String> out = new ArrayList<>();
-        String first = files.keySet().stream().filter(f -> f.endsWith(".drive")).findFirst().orElse(files.keySet().iterator().next());
+        String first = files.keySet().stream()
+                .filter(f -> f.endsWith(".drive"))
+                .findFirst()
+                .orElse(files.keySet().iterator().next());
         for (Diagnostic d : s.analyse(first).diagnostics()) {
             out.add(d.code().id());
         }
@@ -59,15 +68,20 @@ class DiagnosticPagesTest {
 
     @TestFactory
     Stream<DynamicTest> pagesAreTrue() {
-        return Stream.of(Code.values()).map(c -> DynamicTest.dynamicTest(c.id() + " " + c.title(), () -> {
-            Page p = page(c);
-            assertThat(p.title()).startsWith("# " + c.id());
-            if (!p.wrong().isEmpty()) {
-                assertThat(codes(p.wrong(), p.days().getOrDefault("wrong", "2026-12-01"))).as("wrong text of " + c.id()).contains(c.id());
-            }
-            if (!p.right().isEmpty()) {
-                assertThat(codes(p.right(), p.days().getOrDefault("right", "2026-12-01"))).as("right text of " + c.id()).doesNotContain(c.id());
-            }
-        }));
+        return Stream.of(Code.values())
+                .map(c -> DynamicTest.dynamicTest(c.id() + " " + c.title(), () -> {
+                    Page p = page(c);
+                    assertThat(p.title()).startsWith("# " + c.id());
+                    if (!p.wrong().isEmpty()) {
+                        assertThat(codes(p.wrong(), p.days().getOrDefault("wrong", "2026-12-01")))
+                                .as("wrong text of " + c.id())
+                                .contains(c.id());
+                    }
+                    if (!p.right().isEmpty()) {
+                        assertThat(codes(p.right(), p.days().getOrDefault("right", "2026-12-01")))
+                                .as("right text of " + c.id())
+                                .doesNotContain(c.id());
+                    }
+                }));
     }
 }

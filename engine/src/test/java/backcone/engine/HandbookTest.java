@@ -57,7 +57,9 @@ class HandbookTest {
                 .map(o -> DynamicTest.dynamicTest(
                         o.owner() + " / " + o.example() + " / " + o.path(),
                         () -> assertThat(o.met())
-                                .as("%s: got %s, expected %s %s (%s) in %s", o.path(), o.got(), o.expected(), o.unit(), o.why(), o.file())
+                                .as(
+                                        "%s: got %s, expected %s %s (%s) in %s",
+                                        o.path(), o.got(), o.expected(), o.unit(), o.why(), o.file())
                                 .isTrue()));
     }
 
@@ -88,7 +90,12 @@ class HandbookTest {
     void everySourceThatIsCitedIsDeclared() {
         Set<String> unknown = new TreeSet<>();
         for (Decl d : declarations()) {
-            if (d.per != null && d.per.source() != null && !handbook.shapes().library().sources.containsKey(d.per.source().text())) {
+            if (d.per != null
+                    && d.per.source() != null
+                    && !handbook.shapes()
+                            .library()
+                            .sources
+                            .containsKey(d.per.source().text())) {
                 unknown.add(d + " cites " + d.per.source());
             }
         }
@@ -99,7 +106,10 @@ class HandbookTest {
     void whatMustBeGivenHasNoDefault() {
         Set<String> silent = new TreeSet<>();
         for (Decl d : declarations()) {
-            if (d.needed && d.how == Entry.Given.DEFAULT && !(d.value instanceof Expr.Choose) && !(d.value instanceof Expr.Path)) {
+            if (d.needed
+                    && d.how == Entry.Given.DEFAULT
+                    && !(d.value instanceof Expr.Choose)
+                    && !(d.value instanceof Expr.Path)) {
                 silent.add(d.toString());
             }
         }
@@ -118,7 +128,8 @@ class HandbookTest {
         if (e instanceof Expr.Binary || e instanceof Expr.Root || e instanceof Expr.Settle) {
             return true;
         } else if (e instanceof Expr.Call c) {
-            return !Set.of("upstream", "downstream", "case_at_hand", "count", "given").contains(c.callee().text());
+            return !Set.of("upstream", "downstream", "case_at_hand", "count", "given")
+                    .contains(c.callee().text());
         } else if (e instanceof Expr.Choose c) {
             return c.arms().stream().anyMatch(a -> computes(a.value()));
         } else if (e instanceof Expr.Neg n) {

@@ -10,8 +10,7 @@ import org.junit.jupiter.api.Test;
 
 /** What the language means, on a small method of our own: limits, readings, editions, includes, roots, iterations, deviations. */
 class LanguageTest {
-    private static final String HOUSE =
-            """
+    private static final String HOUSE = """
             source own "own check figures"
 
             method house_part for mesh "a building block" {
@@ -63,8 +62,7 @@ class LanguageTest {
                  }
                %s
                }
-               """
-                .formatted(mesh, rest);
+               """.formatted(mesh, rest);
     }
 
     private static Specs specs(String mesh, String rest) {
@@ -85,7 +83,10 @@ class LanguageTest {
 
     @Test
     void theEditionPicks() {
-        assertThat(specs("", RATE.replace("2020", "2010")).requirement("head.main.wheel.holds").value()).isCloseTo(10.47198 / 1.25, within(1e-4));
+        assertThat(specs("", RATE.replace("2020", "2010"))
+                        .requirement("head.main.wheel.holds")
+                        .value())
+                .isCloseTo(10.47198 / 1.25, within(1e-4));
     }
 
     @Test
@@ -107,7 +108,8 @@ class LanguageTest {
 
     @Test
     void aRootOutsideItsBracketIsNamed() {
-        Explanation e = specs("", RATE.replace("strength", "k_in = 100\n strength")).explain("head.main.corner");
+        Explanation e =
+                specs("", RATE.replace("strength", "k_in = 100\n strength")).explain("head.main.corner");
         assertThat(e.value()).isNaN();
         assertThat(e.remark()).contains("no corner");
     }
@@ -126,14 +128,19 @@ class LanguageTest {
 
     @Test
     void aDriveMayTakeAnotherReading() {
-        RequirementAnswer r = specs("", RATE.replace("holds", "use steep for slope\n holds")).requirement("head.main.pinion.holds");
+        RequirementAnswer r =
+                specs("", RATE.replace("holds", "use steep for slope\n holds")).requirement("head.main.pinion.holds");
         assertThat(r.value()).isCloseTo(10.47198 * 0.6, within(1e-4));
-        assertThat(specs("", RATE.replace("holds", "use flat for slope\n holds")).errors()).containsExactly("BC2013");
+        assertThat(specs("", RATE.replace("holds", "use flat for slope\n holds"))
+                        .errors())
+                .containsExactly("BC2013");
     }
 
     @Test
     void outsideALimitIsNeverClear() {
-        RequirementAnswer r = specs("", RATE).with("house.method", HOUSE.replace("2 m/s", "0.1 m/s")).requirement("head.main.pinion.holds");
+        RequirementAnswer r = specs("", RATE)
+                .with("house.method", HOUSE.replace("2 m/s", "0.1 m/s"))
+                .requirement("head.main.pinion.holds");
         assertThat(r.state()).isEqualTo(State.OUTSIDE);
         assertThat(r.outside().get(0).message()).contains("slow pairs only");
         assertThat(r.state().isMet()).isFalse();
@@ -144,7 +151,8 @@ class LanguageTest {
         String waive = RATE + "\n waive head.main.limit.slow until 2027-01-31 by \"R. Falk\" because \"proved\"";
         Specs s = specs("", waive).with("house.method", HOUSE.replace("2 m/s", "0.1 m/s"));
         assertThat(s.requirement("head.main.pinion.holds").state()).isEqualTo(State.CLEAR);
-        assertThat(s.on("2027-02-01").requirement("head.main.pinion.holds").state()).isEqualTo(State.OUTSIDE);
+        assertThat(s.on("2027-02-01").requirement("head.main.pinion.holds").state())
+                .isEqualTo(State.OUTSIDE);
         assertThat(s.errors()).contains("BC5013");
     }
 
@@ -152,7 +160,8 @@ class LanguageTest {
     void aLimitForOneValueMarksWhatDependsOnIt() {
         Specs s = specs("", RATE).with("house.method", HOUSE.replace(">= 5 mm", ">= 50 mm"));
         assertThat(s.requirement("head.main.pinion.holds").state()).isEqualTo(State.OUTSIDE);
-        Specs warm = specs("", RATE.replace("holds >= 5", "warm <= 40 degC")).with("house.method", HOUSE.replace(">= 5 mm", ">= 50 mm"));
+        Specs warm = specs("", RATE.replace("holds >= 5", "warm <= 40 degC"))
+                .with("house.method", HOUSE.replace(">= 5 mm", ">= 50 mm"));
         assertThat(warm.requirement("head.main.warm").state()).isIn(State.CLEAR, State.TIGHT);
     }
 
@@ -176,13 +185,18 @@ class LanguageTest {
 
     @Test
     void aShortfallIsAcceptedUntilADay() {
-        String accept = RATE.replace(">= 5", ">= 12") + "\n accept head.main.holds >= 10 until 2027-06-30 by \"R. Falk\" because \"prototype\"";
-        assertThat(specs("", accept).requirement("head.main.wheel.holds").state()).isEqualTo(State.ACCEPTED);
+        String accept = RATE.replace(">= 5", ">= 12")
+                + "\n accept head.main.holds >= 10 until 2027-06-30 by \"R. Falk\" because \"prototype\"";
+        assertThat(specs("", accept).requirement("head.main.wheel.holds").state())
+                .isEqualTo(State.ACCEPTED);
         Specs late = specs("", accept).on("2027-07-01");
         assertThat(late.requirement("head.main.wheel.holds").state()).isEqualTo(State.SHORT);
         assertThat(late.errors()).contains("BC5006");
         assertThat(specs("", accept).on("2027-06-10").codes()).contains("BC5007");
-        assertThat(specs("", accept.replace(">= 10 until", ">= 11 until")).requirement("head.main.wheel.holds").state()).isEqualTo(State.SHORT);
+        assertThat(specs("", accept.replace(">= 10 until", ">= 11 until"))
+                        .requirement("head.main.wheel.holds")
+                        .state())
+                .isEqualTo(State.SHORT);
         assertThat(specs("", accept.replace(">= 12", ">= 5")).codes()).contains("BC5008");
     }
 
@@ -197,10 +211,14 @@ class LanguageTest {
     @Test
     void anOverrideNeedsItsReasonAndIsUsed() {
         String rest = RATE.replace("strength", "override loss_factor = 3 because \"test bench\"\n strength");
-        assertThat(specs("", rest).requirement("head.main.pinion.holds").value()).isCloseTo(10.47198 * 2, within(1e-3));
+        assertThat(specs("", rest).requirement("head.main.pinion.holds").value())
+                .isCloseTo(10.47198 * 2, within(1e-3));
         assertThat(specs("", rest).explain("head.main.loss_factor").status()).isEqualTo(Explanation.Status.OVERRIDDEN);
-        assertThat(specs("", rest.replace(" because \"test bench\"", "")).errors()).containsExactly("BC4008");
-        assertThat(specs("", RATE.replace("strength", "loss_factor = 3\n strength")).errors()).containsExactly("BC4002");
+        assertThat(specs("", rest.replace(" because \"test bench\"", "")).errors())
+                .containsExactly("BC4008");
+        assertThat(specs("", RATE.replace("strength", "loss_factor = 3\n strength"))
+                        .errors())
+                .containsExactly("BC4002");
     }
 
     @Test
@@ -212,16 +230,19 @@ class LanguageTest {
         Analysis a = s.analyse();
         assertThat(a.drives()).extracting(d -> d.name()).containsExactly("d", "v", "f.small", "f.large");
         assertThat(a.explain("v.head.main.pinion.safety").orElseThrow().value()).isCloseTo(10.47198 * 2, within(1e-3));
-        assertThat(a.explain("f.large.head.main.pinion.safety").orElseThrow().value()).isCloseTo(10.47198 * 2 / 4, within(1e-3));
+        assertThat(a.explain("f.large.head.main.pinion.safety").orElseThrow().value())
+                .isCloseTo(10.47198 * 2 / 4, within(1e-3));
     }
 
     @Test
     void relationsAreSolvedForTheirOneUnknown() {
-        Specs s = Specs.of(drive("ratio = 2", RATE).replace("wheel on out { teeth = 40 }", "wheel on out")).with("house.method", HOUSE);
+        Specs s = Specs.of(drive("ratio = 2", RATE).replace("wheel on out { teeth = 40 }", "wheel on out"))
+                .with("house.method", HOUSE);
         assertThat(s.value("head.wheel.teeth")).isEqualTo(40);
         assertThat(s.explain("head.wheel.teeth").status()).isEqualTo(Explanation.Status.SOLVED);
         assertThat(specs("ratio = 2.2", RATE).errors()).containsExactly("BC4003");
-        Specs odd = Specs.of(drive("ratio = 2.03", RATE).replace("wheel on out { teeth = 40 }", "wheel on out")).with("house.method", HOUSE);
+        Specs odd = Specs.of(drive("ratio = 2.03", RATE).replace("wheel on out { teeth = 40 }", "wheel on out"))
+                .with("house.method", HOUSE);
         assertThat(odd.errors()).contains("BC3006");
     }
 
@@ -233,7 +254,10 @@ class LanguageTest {
 
     @Test
     void namesOfADriveAreUsedInFacts() {
-        Specs s = Specs.of(drive("", RATE).replace("power = 1 kW", "power = power_of(crank, motor.speed)").replace("case rated", "let crank = 95.4929658551372 Nm\n case rated")).with("house.method", HOUSE);
+        Specs s = Specs.of(drive("", RATE)
+                        .replace("power = 1 kW", "power = power_of(crank, motor.speed)")
+                        .replace("case rated", "let crank = 95.4929658551372 Nm\n case rated"))
+                .with("house.method", HOUSE);
         assertThat(s.requirement("head.main.pinion.holds").value()).isCloseTo(10.47198, within(1e-4));
     }
 
@@ -241,7 +265,11 @@ class LanguageTest {
     void aRangeIsTakenAtItsUnfavourableEnd() {
         Specs s = Specs.of("material m { surface_hardness = 58 HRC .. 62 HRC\n class = Eh }");
         assertThat(s.errors()).isEmpty();
-        Specs d = Specs.of(drive("", RATE).replace("pinion on motor { teeth = 20 }", "pinion on motor { teeth = 20\n surface_hardness = 58 HRC .. 62 HRC }")).with("house.method", HOUSE);
+        Specs d = Specs.of(drive("", RATE)
+                        .replace(
+                                "pinion on motor { teeth = 20 }",
+                                "pinion on motor { teeth = 20\n surface_hardness = 58 HRC .. 62 HRC }"))
+                .with("house.method", HOUSE);
         assertThat(d.value("head.pinion.HRC")).isEqualTo(58);
     }
 
@@ -252,14 +280,18 @@ class LanguageTest {
         assertThat(s.value("head.acc_17485")).isEqualTo(7);
         assertThat(s.value("head.acc_Q")).isEqualTo(10);
         assertThat(specs("accuracy = 7", RATE).errors()).containsExactly("BC3001");
-        assertThat(specs("accuracy = 7 ISO17485\n accuracy = 6 ISO17485", RATE).errors()).containsExactly("BC2007");
+        assertThat(specs("accuracy = 7 ISO17485\n accuracy = 6 ISO17485", RATE).errors())
+                .containsExactly("BC2007");
     }
 
     @Test
     void moreLoadNeverRaisesAMargin() {
         double before = Double.POSITIVE_INFINITY;
         for (int kw = 1; kw <= 40; kw++) {
-            double m = Specs.of(drive("", RATE).replace("1 kW", kw + " kW")).with("house.method", HOUSE).requirement("head.main.pinion.holds").margin();
+            double m = Specs.of(drive("", RATE).replace("1 kW", kw + " kW"))
+                    .with("house.method", HOUSE)
+                    .requirement("head.main.pinion.holds")
+                    .margin();
             assertThat(m).isLessThan(before);
             before = m;
         }
@@ -272,6 +304,10 @@ class LanguageTest {
                 .replace("5 mm", "0.19685039370078738 in")
                 .replace("20 mm", "0.78740157480314954 in")
                 .replace("60 kN", "13488.536591 lbf");
-        assertThat(Specs.of(us).with("house.method", HOUSE).requirement("head.main.pinion.holds").value()).isCloseTo(10.471976, within(1e-6));
+        assertThat(Specs.of(us)
+                        .with("house.method", HOUSE)
+                        .requirement("head.main.pinion.holds")
+                        .value())
+                .isCloseTo(10.471976, within(1e-6));
     }
 }

@@ -74,7 +74,9 @@ final class Specs {
     }
 
     Explanation explain(String name) {
-        return analyse().explain(name).orElseThrow(() -> new AssertionError("nothing is called " + name + "\n" + messages()));
+        return analyse()
+                .explain(name)
+                .orElseThrow(() -> new AssertionError("nothing is called " + name + "\n" + messages()));
     }
 
     RequirementAnswer requirement(String id) {

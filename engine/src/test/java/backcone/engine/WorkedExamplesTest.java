@@ -46,7 +46,10 @@ class WorkedExamplesTest {
         FileId id = new FileId(t.name());
         Parser.Parsed p = Parser.parse(id, t.text());
         assertThat(p.problems()).as(t.name()).isEmpty();
-        LibraryBuilder.Built built = new LibraryBuilder(Handbook.standard().shapes().library()).add(id, p.tree()).build();
+        LibraryBuilder.Built built = new LibraryBuilder(
+                        Handbook.standard().shapes().library())
+                .add(id, p.tree())
+                .build();
         assertThat(built.problems()).as(t.name()).isEmpty();
         Shapes shapes = new Shapes(built.library());
         assertThat(Checker.check(shapes)).as(t.name()).isEmpty();
@@ -63,7 +66,9 @@ class WorkedExamplesTest {
                 out.add(DynamicTest.dynamicTest(
                         t.name() + " / " + o.path(),
                         () -> assertThat(o.met())
-                                .as("%s: got %s, printed %s %s, tolerance %s %s", o.path(), o.got(), o.expected(), o.unit(), o.tolerance(), o.why())
+                                .as(
+                                        "%s: got %s, printed %s %s, tolerance %s %s",
+                                        o.path(), o.got(), o.expected(), o.unit(), o.tolerance(), o.why())
                                 .isTrue()));
             }
         }
@@ -75,7 +80,8 @@ class WorkedExamplesTest {
     void tableOfDeviationsIsCurrent() throws IOException {
         StringBuilder b = new StringBuilder();
         b.append("# Published examples met by the handbook\n\n");
-        b.append("Written by `WorkedExamplesTest`. \"memory\" means that the printed figures were remembered, not read again.\n\n");
+        b.append(
+                "Written by `WorkedExamplesTest`. \"memory\" means that the printed figures were remembered, not read again.\n\n");
         b.append("| example | source | obtained | figures | worst deviation |\n|---|---|---|---|---|\n");
         for (Text t : texts()) {
             Examples.Report r = run(t);
@@ -83,8 +89,17 @@ class WorkedExamplesTest {
             for (Examples.Outcome o : r.outcomes()) {
                 worst = Math.max(worst, Double.isNaN(o.deviation()) ? 0 : o.deviation());
             }
-            b.append("| ").append(t.name().replace(".method", "")).append(" | ").append(header(t, "# source:")).append(" | ").append(header(t, "# obtained:"))
-                    .append(" | ").append(r.outcomes().size()).append(" | ").append(Numbers.format(worst * 100, 2)).append(" % |\n");
+            b.append("| ")
+                    .append(t.name().replace(".method", ""))
+                    .append(" | ")
+                    .append(header(t, "# source:"))
+                    .append(" | ")
+                    .append(header(t, "# obtained:"))
+                    .append(" | ")
+                    .append(r.outcomes().size())
+                    .append(" | ")
+                    .append(Numbers.format(worst * 100, 2))
+                    .append(" % |\n");
         }
         System.out.println(b);
         if (Boolean.getBoolean("backcone.update")) {

@@ -195,7 +195,12 @@ final class ExplainCommand implements Callable<Integer> {
         String more = indent + (markdown ? "  " : "    ");
         String equation = e.equation();
         if (equation != null && e.numbers() != null) {
-            wrapped(more, (e.symbol() == null || e.status() == Explanation.Status.SOLVED ? "" : e.symbol() + " = ") + equation, out, markdown);
+            wrapped(
+                    more,
+                    (e.symbol() == null || e.status() == Explanation.Status.SOLVED ? "" : e.symbol() + " = ")
+                            + equation,
+                    out,
+                    markdown);
             if (!equation.equals(e.numbers()) && !e.numbers().isEmpty()) {
                 wrapped(more, "= " + e.numbers(), out, markdown);
             }

@@ -316,7 +316,9 @@ public final class DriveResults {
             }
             Code code = level.equals("error")
                     ? Code.IMPOSSIBLE
-                    : level.equals("sum") ? Code.SUM_OF_SHARES : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
+                    : level.equals("sum")
+                            ? Code.SUM_OF_SHARES
+                            : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
             Element at = l.at().isSpace() && l.at().parent != null ? l.at().parent : l.at();
             FileId file = run.graph.fileOfElement(at);
             problems.add(Diagnostic.of(code, file, at.headSpan(), capital(limitText(run, l)) + ".")
@@ -733,7 +735,9 @@ public final class DriveResults {
         if (r.comparison().equals("between")) {
             boolean below = r.value() < r.required();
             double off = below ? r.required() - r.value() : r.value() - r.upper();
-            return (below ? "below it by " : "above it by ") + Numbers.format(off, 3) + (r.unit().isEmpty() ? "" : " " + r.unit());
+            return (below ? "below it by " : "above it by ")
+                    + Numbers.format(off, 3)
+                    + (r.unit().isEmpty() ? "" : " " + r.unit());
         }
         return "short by " + Numbers.format(Math.abs(r.margin()) * 100, 2) + " %";
     }

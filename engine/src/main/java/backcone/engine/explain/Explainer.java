@@ -227,7 +227,8 @@ public final class Explainer {
         return d.per == null && (d.value instanceof Expr.Path || d.role != Decl.Role.QUANTITY);
     }
 
-    private static Status status(Run run, Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
+    private static Status status(
+            Run run, Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
         if (v instanceof Val.Num n && Double.isNaN(value)) {
             return Why.isFault(run, n.register()) ? Status.FAULT : Status.OPEN;
         }

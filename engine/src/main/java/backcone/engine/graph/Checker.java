@@ -275,14 +275,24 @@ public final class Checker {
 
     /** A relation must be solvable for each of its names: every one is reached by + - * / and fixed powers, once. */
     private void solvable(BodyDef.RelationDef r, Ctx ctx) {
-        if (!(r.syntax().equation() instanceof Expr.Compare c) || c.operands().size() != 2 || c.ops().get(0) != Expr.Cmp.EQ) {
-            graph.problems.add(Code.NOT_SOLVABLE, r.file(), r.syntax().equation().span(), "A relation says that two things are equal: `relation : a * b == c`.");
+        if (!(r.syntax().equation() instanceof Expr.Compare c)
+                || c.operands().size() != 2
+                || c.ops().get(0) != Expr.Cmp.EQ) {
+            graph.problems.add(
+                    Code.NOT_SOLVABLE,
+                    r.file(),
+                    r.syntax().equation().span(),
+                    "A relation says that two things are equal: `relation : a * b == c`.");
             return;
         }
         for (Expr side : c.operands()) {
             Expr stuck = stuck(side, true);
             if (stuck != null) {
-                graph.problems.add(Code.NOT_SOLVABLE, r.file(), stuck.span(), "A relation is solved by undoing + - * / and fixed powers; a name can't be brought out of this.");
+                graph.problems.add(
+                        Code.NOT_SOLVABLE,
+                        r.file(),
+                        stuck.span(),
+                        "A relation is solved by undoing + - * / and fixed powers; a name can't be brought out of this.");
             }
         }
     }
@@ -306,8 +316,12 @@ public final class Checker {
         if (e instanceof Expr.Choose c) {
             return c.arms().stream().anyMatch(a -> computes(a.value()));
         }
-        return e instanceof Expr.Binary || e instanceof Expr.Root || e instanceof Expr.Settle
-                || (e instanceof Expr.Call c && !Set.of("upstream", "downstream", "case_at_hand", "count").contains(c.callee().text()));
+        return e instanceof Expr.Binary
+                || e instanceof Expr.Root
+                || e instanceof Expr.Settle
+                || (e instanceof Expr.Call c
+                        && !Set.of("upstream", "downstream", "case_at_hand", "count")
+                                .contains(c.callee().text()));
     }
 
     /** A method must not declare again what its mesh, the members or the drive have: formulas would silently take the other. */
@@ -326,8 +340,12 @@ public final class Checker {
             for (Shape s : around) {
                 for (String n : d.symbol == null ? List.of(d.name) : List.of(d.name, d.symbol)) {
                     if (s.names.get(n) instanceof Shape.Member m) {
-                        graph.problems.add(Diagnostic.of(Code.HIDDEN_NAME, d.file, d.nameNode.span(), "`" + n + "` is there already (" + m.decl().owner
-                                        + "); give this value a name of its own.")
+                        graph.problems.add(Diagnostic.of(
+                                        Code.HIDDEN_NAME,
+                                        d.file,
+                                        d.nameNode.span(),
+                                        "`" + n + "` is there already (" + m.decl().owner
+                                                + "); give this value a name of its own.")
                                 .withRelated(m.decl().file, m.decl().nameNode.span(), "declared here"));
                     }
                 }
@@ -340,7 +358,12 @@ public final class Checker {
         Expr e = d.value;
         Ctx ctx = Ctx.of(s.owner);
         if (e != null && d.role == Decl.Role.QUANTITY && d.per == null && computes(e)) {
-            graph.problems.add(Code.NO_SOURCE, d.file, d.nameNode.span(), "`" + d.symbolOrName() + "` is an equation without a source; say where it comes from: `per SOURCE \"clause\", agreed`.");
+            graph.problems.add(
+                    Code.NO_SOURCE,
+                    d.file,
+                    d.nameNode.span(),
+                    "`" + d.symbolOrName()
+                            + "` is an equation without a source; say where it comes from: `per SOURCE \"clause\", agreed`.");
         }
         if (e != null) {
             equation(s, e, ctx);

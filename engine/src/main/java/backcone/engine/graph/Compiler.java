@@ -2,8 +2,8 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
-import backcone.engine.model.English;
 import backcone.engine.model.ChoiceKind;
+import backcone.engine.model.English;
 import backcone.engine.model.FunctionDef;
 import backcone.engine.model.QuantityKind;
 import backcone.engine.model.Suggest;
@@ -190,12 +190,14 @@ final class Compiler {
     }
 
     private Val factValue(Slot s, Expr e, Ctx ctx, Frame f) {
-        if (s.decl.kind instanceof ValueKind.Text && (e instanceof Expr.Path || e instanceof Expr.Num || e instanceof Expr.Binary)) {
+        if (s.decl.kind instanceof ValueKind.Text
+                && (e instanceof Expr.Path || e instanceof Expr.Num || e instanceof Expr.Binary)) {
             problem(
                     Code.WRONG_FORM,
                     f,
                     e.span(),
-                    "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"" + textOf(e, f) + "\"`.");
+                    "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"" + textOf(e, f)
+                            + "\"`.");
             return BAD;
         }
         if (e instanceof Expr.Path p && p.names().size() == 1) {
@@ -268,7 +270,8 @@ final class Compiler {
                         Code.NOT_A_BLOCK,
                         f,
                         e.span(),
-                        "`" + s.decl.name + "` refers to " + English.a(r.kind()) + "; `" + ref.element().name + "` is a "
+                        "`" + s.decl.name + "` refers to " + English.a(r.kind()) + "; `" + ref.element().name
+                                + "` is a "
                                 + (ref.element().kind().isEmpty()
                                         ? "word"
                                         : ref.element().kind()) + ".");
@@ -319,7 +322,8 @@ final class Compiler {
                         Code.DIMENSION_MISMATCH,
                         f,
                         e.span(),
-                        "With `in " + result.text() + "` the right side must be a pure number; it is " + English.a(units.nameOf(n.dimension())) + ".");
+                        "With `in " + result.text() + "` the right side must be a pure number; it is "
+                                + English.a(units.nameOf(n.dimension())) + ".");
                 return bad(want);
             }
             n = scaled(n, result);
@@ -331,8 +335,9 @@ final class Compiler {
                         Code.WRONG_UNIT,
                         f,
                         e.span(),
-                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + "; found " + English.a(units.nameOf(n.dimension()))
-                                + ". Write it in " + q.shown().text() + " or another unit of that kind.");
+                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + "; found "
+                                + English.a(units.nameOf(n.dimension())) + ". Write it in "
+                                + q.shown().text() + " or another unit of that kind.");
             } else {
                 problem(
                         Code.DIMENSION_MISMATCH,
@@ -350,7 +355,8 @@ final class Compiler {
                         f,
                         e.span(),
                         "`" + s.decl.name + "` is a whole number; found " + literal.text() + ". Write "
-                                + (long) Math.floor(literal.value()) + " or " + (long) Math.ceil(literal.value()) + ".");
+                                + (long) Math.floor(literal.value()) + " or " + (long) Math.ceil(literal.value())
+                                + ".");
                 return bad(want);
             }
         }
@@ -972,7 +978,8 @@ final class Compiler {
                     Code.DIMENSION_MISMATCH,
                     f,
                     at.span(),
-                    English.capital(English.a(units.nameOf(a))) + " and " + English.a(units.nameOf(b)) + " can't be " + done + ".");
+                    English.capital(English.a(units.nameOf(a))) + " and " + English.a(units.nameOf(b)) + " can't be "
+                            + done + ".");
             return null;
         }
         return a;

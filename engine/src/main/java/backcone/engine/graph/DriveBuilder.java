@@ -179,8 +179,11 @@ public final class DriveBuilder {
     /** A name of the drive that nothing speaks of. */
     private static void unusedLets(DriveGraph g) {
         for (Object x : g.drive.named.values()) {
-            if (x instanceof Slot s && s.decl.role == backcone.engine.model.Decl.Role.LET && !g.usedDecls.contains(s.decl)) {
-                g.problems.add(Code.UNUSED_NAME, s.decl.file, s.decl.nameNode.span(), "Nothing uses `" + s.decl.name + "`.");
+            if (x instanceof Slot s
+                    && s.decl.role == backcone.engine.model.Decl.Role.LET
+                    && !g.usedDecls.contains(s.decl)) {
+                g.problems.add(
+                        Code.UNUSED_NAME, s.decl.file, s.decl.nameNode.span(), "Nothing uses `" + s.decl.name + "`.");
             }
         }
     }

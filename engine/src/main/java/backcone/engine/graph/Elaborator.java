@@ -2,8 +2,8 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
-import backcone.engine.model.English;
 import backcone.engine.model.Decl;
+import backcone.engine.model.English;
 import backcone.engine.model.MethodDef;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.ValueKind;
@@ -675,13 +675,15 @@ final class Elaborator {
         MethodDef def = graph.shapes.library.method(method, mesh.kind());
         if (def == null) {
             noMethod(r, file, mesh, method);
-            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, null, name, "the method `" + method + "` is not in this handbook"));
+            graph.rates.add(new DriveGraph.RateUse(
+                    r, file, mesh, null, null, name, "the method `" + method + "` is not in this handbook"));
             return;
         }
         String edition = edition(r, file, def);
         if (edition == null && !def.body().editions.isEmpty()) {
             // no edition is assumed, so there is nothing to rate by
-            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, def, name, "the edition of `" + method + "` is not written"));
+            graph.rates.add(new DriveGraph.RateUse(
+                    r, file, mesh, null, def, name, "the edition of `" + method + "` is not written"));
             return;
         }
         if (mesh.named.containsKey(name) && !replace) {
@@ -727,13 +729,16 @@ final class Elaborator {
                     Code.UNKNOWN_METHOD,
                     file,
                     r.method().span(),
-                    "`" + method + "` rates " + English.a(other.get(0).kind()) + "; `" + mesh.name + "` is " + English.a(mesh.kind())
-                            + ".");
+                    "`" + method + "` rates " + English.a(other.get(0).kind()) + "; `" + mesh.name + "` is "
+                            + English.a(mesh.kind()) + ".");
             return;
         }
         List<String> fit = new ArrayList<>();
         graph.shapes.library.methods.forEach((k, v) -> {
-            if (v.stream().anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind()) && hasChecks(m) && !graph.shapes.isBuildingBlock(m))) {
+            if (v.stream()
+                    .anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind())
+                            && hasChecks(m)
+                            && !graph.shapes.isBuildingBlock(m))) {
                 fit.add(k);
             }
         });
@@ -750,7 +755,8 @@ final class Elaborator {
                     Code.METHOD_NOT_HERE,
                     file,
                     r.method().span(),
-                    "The method `" + method + "` is not in this handbook; what it would rate stays open. For " + English.a(mesh.kind()) + " it holds " + Compiler.list(fit) + ".");
+                    "The method `" + method + "` is not in this handbook; what it would rate stays open. For "
+                            + English.a(mesh.kind()) + " it holds " + Compiler.list(fit) + ".");
         }
     }
 

@@ -49,7 +49,8 @@ final class Requirements {
                     }
                 }
                 // a variant's line for a fact replaces that of its base
-                below.removeIf(old -> here.stream().anyMatch(u -> u.id.equals(old.id) && u.asserted == old.asserted && u.slot != null));
+                below.removeIf(old -> here.stream()
+                        .anyMatch(u -> u.id.equals(old.id) && u.asserted == old.asserted && u.slot != null));
                 below.addAll(here);
             }
             graph.requirements.addAll(below);
@@ -201,7 +202,8 @@ final class Requirements {
                         Code.WRONG_UNIT,
                         f.file,
                         bound.span(),
-                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; this limit is " + English.a(Units.standard().nameOf(has)) + ".");
+                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; this limit is "
+                                + English.a(Units.standard().nameOf(has)) + ".");
             }
             u.value = graph.compiler.openRegister(new Val.Bad());
         }

@@ -83,7 +83,8 @@ public final class Slot {
     }
 
     boolean isWhole() {
-        return decl.kind instanceof backcone.engine.model.ValueKind.Quantity q && q.kind().whole();
+        return decl.kind instanceof backcone.engine.model.ValueKind.Quantity q
+                && q.kind().whole();
     }
 
     public boolean isOverridden() {

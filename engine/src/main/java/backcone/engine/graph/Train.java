@@ -39,7 +39,8 @@ final class Train {
                         Code.SPLIT_TRAIN,
                         graph.fileOf(mesh),
                         mesh.headSpan(),
-                        "`" + mesh.name + "` joins `" + a.name + "` and `" + b.name + "`, which are in mesh already; a train of shafts is a tree, split power paths are not covered.");
+                        "`" + mesh.name + "` joins `" + a.name + "` and `" + b.name
+                                + "`, which are in mesh already; a train of shafts is a tree, split power paths are not covered.");
             }
         }
         Element source = source(graph);

@@ -42,6 +42,9 @@ public final class EntryNames {
     /** Why an entry that belongs in a method file can't stand in a spec, null for any other entry. */
     public static @Nullable String misplaced(Entry e) {
         String what = ofHandbook(e);
-        return what == null ? null : English.capital(English.a("`" + what + "`").replace("an `", "a `")) + " belongs in a method file (`.method`), not in a spec.";
+        return what == null
+                ? null
+                : English.capital(English.a("`" + what + "`").replace("an `", "a `"))
+                        + " belongs in a method file (`.method`), not in a spec.";
     }
 }
