@@ -25,8 +25,16 @@ import picocli.CommandLine.Spec;
         name = "format",
         mixinStandardHelpOptions = true,
         header = "Puts specs and method files into the canonical layout; meaning and digits stay as they are.",
-        description = {"", "A file with syntax errors is left alone. Exit status: 0 done; 1 with --check, some file would change; 2 some file could not be formatted."},
-        footer = {"", "Examples:", "  backcone format                  every spec below this folder", "  backcone format --check drives   for CI: changes nothing"})
+        description = {
+            "",
+            "A file with syntax errors is left alone. Exit status: 0 done; 1 with --check, some file would change; 2 some file could not be formatted."
+        },
+        footer = {
+            "",
+            "Examples:",
+            "  backcone format                  every spec below this folder",
+            "  backcone format --check drives   for CI: changes nothing"
+        })
 final class FormatCommand implements Callable<Integer> {
     @Spec
     @SuppressWarnings("NullAway.Init")
@@ -53,7 +61,9 @@ final class FormatCommand implements Callable<Integer> {
             Loader.Loaded read = DiskLoader.read(f);
             String shown = FileSet.shown(f);
             if (!(read instanceof Loader.Loaded.Text t)) {
-                err.println("backcone: `" + shown + "` " + (read instanceof Loader.Loaded.Unreadable u ? "can't be read: " + u.reason() : "is gone") + ".");
+                err.println("backcone: `" + shown + "` "
+                        + (read instanceof Loader.Loaded.Unreadable u ? "can't be read: " + u.reason() : "is gone")
+                        + ".");
                 failed = true;
                 continue;
             }
@@ -62,7 +72,8 @@ final class FormatCommand implements Callable<Integer> {
             if (formatted == null) {
                 Places places = new Places(t.text());
                 Diagnostic d = r.problems().get(0);
-                err.println(shown + ":" + places.line(d.span().start()) + ":" + places.column(d.span().start()) + " " + d.message() + " Left as it is.");
+                err.println(shown + ":" + places.line(d.span().start()) + ":"
+                        + places.column(d.span().start()) + " " + d.message() + " Left as it is.");
                 failed = true;
             } else if (!formatted.equals(t.text())) {
                 changed++;
@@ -72,7 +83,10 @@ final class FormatCommand implements Callable<Integer> {
                 }
             }
         }
-        out.println(changed == 0 ? "All " + set.files().size() + " files are in canonical layout." : changed + " of " + set.files().size() + " files " + (check ? "would change." : "changed."));
+        out.println(
+                changed == 0
+                        ? "All " + set.files().size() + " files are in canonical layout."
+                        : changed + " of " + set.files().size() + " files " + (check ? "would change." : "changed."));
         return failed ? 2 : check && changed > 0 ? 1 : 0;
     }
 

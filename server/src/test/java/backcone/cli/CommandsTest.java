@@ -43,7 +43,9 @@ class CommandsTest {
     }
 
     private static void valid(String schema, String json) throws IOException {
-        var errors = SchemaRegistry.withDefaultDialect(SpecificationVersion.DRAFT_2020_12).getSchema(resource("schema/" + schema)).validate(json, InputFormat.JSON);
+        var errors = SchemaRegistry.withDefaultDialect(SpecificationVersion.DRAFT_2020_12)
+                .getSchema(resource("schema/" + schema))
+                .validate(json, InputFormat.JSON);
         assertThat(errors).as(json).isEmpty();
     }
 
@@ -87,9 +89,19 @@ class CommandsTest {
     @Test
     void exitStatusTellsWrongFromShort() throws IOException {
         String text = StartCommand.text("straight-bevel");
-        assertThat(run("check", file("short.drive", text.replace("bending            >= 1.0", "bending            >= 100"))).status()).isEqualTo(1);
-        assertThat(run("check", file("open.drive", text.replace("service_factor = 1.25", "# "))).status()).isEqualTo(1);
-        assertThat(run("check", file("wrong.drive", text.replace("480 rpm", "480 rmp"))).status()).isEqualTo(2);
+        assertThat(run(
+                                "check",
+                                file(
+                                        "short.drive",
+                                        text.replace("bending            >= 1.0", "bending            >= 100")))
+                        .status())
+                .isEqualTo(1);
+        assertThat(run("check", file("open.drive", text.replace("service_factor = 1.25", "# ")))
+                        .status())
+                .isEqualTo(1);
+        assertThat(run("check", file("wrong.drive", text.replace("480 rpm", "480 rmp")))
+                        .status())
+                .isEqualTo(2);
     }
 
     @Test
