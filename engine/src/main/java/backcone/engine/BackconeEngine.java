@@ -1,6 +1,8 @@
 package backcone.engine;
 
 import backcone.engine.parse.Parser;
+import backcone.engine.review.Comparison;
+import backcone.engine.review.DriveReview;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
@@ -8,6 +10,7 @@ import java.time.LocalDate;
 import java.util.List;
 import java.util.Map;
 import java.util.concurrent.ConcurrentHashMap;
+import org.jspecify.annotations.Nullable;
 
 /** The engine on the shipped handbook. Parsed texts are kept; analyses are computed anew. Safe for several threads. */
 public final class BackconeEngine implements Engine {
@@ -38,7 +41,20 @@ public final class BackconeEngine implements Engine {
         texts.remove(file);
     }
 
-    private Object load(FileId file) {
+    /** The drives of a spec as a ledger keeps them, judged without a date. */
+    public List<DriveReview> review(FileId file) {
+        return ((FileAnalysis) analyse(file)).reviews();
+    }
+
+    /**
+     * This state of a spec against another: {@code before} holds the earlier texts. Either file is null where the spec is new
+     * or gone.
+     */
+    public Comparison compare(BackconeEngine before, @Nullable FileId oldFile, @Nullable FileId newFile) {
+        return Comparer.compare(before, oldFile, this, newFile, today);
+    }
+
+    Object load(FileId file) {
         Object known = texts.get(file);
         if (known != null) {
             return known;

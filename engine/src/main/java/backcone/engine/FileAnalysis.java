@@ -16,6 +16,8 @@ import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
 import backcone.engine.model.EntryNames;
 import backcone.engine.model.LibraryBuilder;
+import backcone.engine.review.DriveReview;
+import backcone.engine.review.Reviewer;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.syntax.Name;
@@ -77,14 +79,7 @@ final class FileAnalysis implements Analysis {
         Sources sources = new Sources(main, load);
         List<Diagnostic> found = new ArrayList<>(main.problems());
         found.addAll(sources.problems());
-        Shapes shapes = handbook.shapes();
-        if (!sources.methodFiles().isEmpty()) {
-            LibraryBuilder b = new LibraryBuilder(shapes.library());
-            for (SourceText t : sources.methodFiles()) {
-                b.add(t.file(), t.tree());
-            }
-            shapes = new Shapes(b.build().library());
-        }
+        Shapes shapes = shapes(sources, handbook);
         Problems own = new Problems();
         misplaced(main, own);
         Map<String, DriveSource> byName = new LinkedHashMap<>();
@@ -144,6 +139,101 @@ final class FileAnalysis implements Analysis {
         return new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName);
     }
 
+    /** The handbook with the method files that a spec uses. */
+    static Shapes shapes(Sources sources, Handbook handbook) {
+        Shapes shapes = handbook.shapes();
+        if (!sources.methodFiles().isEmpty()) {
+            LibraryBuilder b = new LibraryBuilder(shapes.library());
+            for (SourceText t : sources.methodFiles()) {
+                b.add(t.file(), t.tree());
+            }
+            shapes = new Shapes(b.build().library());
+        }
+        return shapes;
+    }
+
+    /** The same drives as a ledger keeps them. */
+    List<DriveReview> reviews() {
+        Sources src = sources;
+        List<DriveReview> out = new ArrayList<>();
+        if (src == null) {
+            return out;
+        }
+        for (DriveAnswer d : drives) {
+            DriveSource s = java.util.Objects.requireNonNull(byName.get(d.name()));
+            List<DriveGraph> graphs = new ArrayList<>();
+            for (String c : DriveBuilder.casesInUse(s)) {
+                graphs.add(DriveBuilder.build(shapes, src, s, c, new Problems(), false));
+            }
+            out.add(Reviewer.review(d, graphs, src::textOf));
+        }
+        return out;
+    }
+
+    /** The drives, variants and families that a drive is laid over, by name; empty where there is no such drive. */
+    List<String> layersOf(String name) {
+        List<String> out = new ArrayList<>();
+        DriveSource s = byName.get(name);
+        Sources src = sources;
+        if (s == null || src == null) {
+            return out;
+        }
+        for (DriveSource.Layer l : s.layers()) {
+            for (Entry e : java.util.Objects.requireNonNull(texts().get(l.file())).tree().entries()) {
+                List<Entry> body = e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
+                Name n = Sources.nameOf(e);
+                if (body == l.body() && n != null) {
+                    out.add(n.text());
+                }
+            }
+        }
+        return out;
+    }
+
+    /** The text of a drive with all that it is laid over. */
+    String textOfDrive(String name) {
+        StringBuilder b = new StringBuilder();
+        for (SourceText t : texts().values()) {
+            for (Entry e : t.tree().entries()) {
+                Name n = Sources.nameOf(e);
+                if (n != null && n.text().equals(name)) {
+                    b.append(t.text(), e.span().start(), e.span().end()).append('\n');
+                }
+            }
+        }
+        return b.toString();
+    }
+
+    /** The value of a fact directly in a drive, as written; null when it is not given. */
+    @Nullable
+    String factText(String drive, String fact) {
+        DriveSource s = byName.get(drive);
+        Sources src = sources;
+        if (s == null || src == null) {
+            return null;
+        }
+        String out = null;
+        for (DriveSource.Layer l : s.layers()) {
+            for (Entry e : l.body()) {
+                if (e instanceof Entry.Fact f && f.path().text().equals(fact)) {
+                    out = src.text(l.file(), f.value().span());
+                }
+            }
+        }
+        return out;
+    }
+
+    /** The texts this one rests on, itself included, by name. */
+    Map<FileId, SourceText> texts() {
+        Map<FileId, SourceText> out = new LinkedHashMap<>();
+        out.put(main.file(), main);
+        Sources src = sources;
+        if (src != null) {
+            out.putAll(src.used());
+        }
+        return out;
+    }
+
     /** Findings of this file by place; those in used files are said there. */
     private static List<Diagnostic> sorted(List<Diagnostic> found, SourceText main) {
         List<Diagnostic> out = new ArrayList<>();
@@ -186,7 +276,7 @@ final class FileAnalysis implements Analysis {
 
     // ---- drives, variants, families
 
-    private static void driveSources(Sources sources, SourceText main, Problems own, Map<String, DriveSource> byName) {
+    static void driveSources(Sources sources, SourceText main, Problems own, Map<String, DriveSource> byName) {
         for (Entry e : main.tree().entries()) {
             if (e instanceof Entry.Drive d && !d.name().isHole()) {
                 byName.putIfAbsent(

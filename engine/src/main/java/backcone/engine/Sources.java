@@ -280,6 +280,11 @@ final class Sources implements DriveGraph.Top {
         return t == null || span.end() > t.length() ? "…" : t.substring(span.start(), span.end());
     }
 
+    /** Every text that this one uses, method files included. */
+    Map<FileId, SourceText> used() {
+        return used;
+    }
+
     @Nullable
     String textOf(FileId file) {
         if (file.equals(main.file())) {

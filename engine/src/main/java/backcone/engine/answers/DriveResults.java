@@ -39,15 +39,22 @@ public final class DriveResults {
     private final List<CheckAnswer> unrequired = new ArrayList<>();
     private final Set<Entry.Waive> usedWaivers = new HashSet<>();
     private final Trusts trusts = new Trusts();
+    private final boolean statesOnly;
 
-    private DriveResults(DriveSource source, LocalDate today, Problems problems) {
+    private DriveResults(DriveSource source, LocalDate today, Problems problems, boolean statesOnly) {
         this.source = source;
         this.today = today;
         this.problems = problems;
+        this.statesOnly = statesOnly;
     }
 
     public static DriveAnswer of(DriveSource source, List<Run> runs, LocalDate today, Problems problems) {
-        return new DriveResults(source, today, problems).answer(runs);
+        return new DriveResults(source, today, problems, false).answer(runs);
+    }
+
+    /** States and margins alone: no load reserve, no other readings, no checks that nothing requires. */
+    public static DriveAnswer states(DriveSource source, List<Run> runs, LocalDate today, Problems problems) {
+        return new DriveResults(source, today, problems, true).answer(runs);
     }
 
     private DriveAnswer answer(List<Run> runs) {
@@ -57,7 +64,9 @@ public final class DriveResults {
             for (RequirementUse u : run.graph.requirements()) {
                 requirement(run, u, passed);
             }
-            rest(run);
+            if (!statesOnly) {
+                rest(run);
+            }
         }
         deviations(runs);
         for (Map.Entry<Slot, Set<String>> e : missing.entrySet()) {
@@ -138,7 +147,7 @@ public final class DriveResults {
                 state = State.ACCEPTED;
             }
         }
-        if (rate != null && !Double.isNaN(v)) {
+        if (rate != null && !Double.isNaN(v) && !statesOnly) {
             trusts.add(run, u.value);
         }
         boolean known = state == State.CLEAR
@@ -146,8 +155,8 @@ public final class DriveResults {
                 || state == State.SHORT
                 || state == State.ACCEPTED
                 || state == State.OUTSIDE;
-        double reserve = rate != null && known ? reserve(run, u, required) : Double.NaN;
-        List<RequirementAnswer.Band> bands = known && rate != null ? bands(run, u, state, required) : List.of();
+        double reserve = rate != null && known && !statesOnly ? reserve(run, u, required) : Double.NaN;
+        List<RequirementAnswer.Band> bands = known && rate != null && !statesOnly ? bands(run, u, state, required) : List.of();
         Unit unit = u.unit;
         RequirementAnswer r = new RequirementAnswer(
                 u.id,

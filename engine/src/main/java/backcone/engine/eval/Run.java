@@ -11,8 +11,13 @@ public final class Run {
     private final java.util.Map<String, double[]> others = new java.util.HashMap<>();
 
     public Run(DriveGraph graph) {
+        this(graph, graph.inputValues());
+    }
+
+    /** The same graph for other numbers: one value per input of {@link DriveGraph#inputs()}, in base units. */
+    public Run(DriveGraph graph, double[] inputs) {
         this.graph = graph;
-        this.inputs = graph.inputValues();
+        this.inputs = inputs;
         this.value = new Evaluator(graph.tape()).run(1, inputs).clone();
     }
 
