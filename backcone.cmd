@@ -3,6 +3,9 @@ rem Starts Backcone on Windows. Builds it on first use, then runs it with a star
 setlocal enableextensions
 set "HOME_DIR=%~dp0"
 set "APP=%HOME_DIR%server\target\backcone.jar"
+set "FLAGS=-XX:+UseSerialGC -XX:+IgnoreUnrecognizedVMOptions -Xshare:auto -Xlog:disable -Xlog:all=error:stderr -Xss4m"
+set "CACHE=%LOCALAPPDATA%\backcone"
+
 if defined JAVA_HOME (
   set "JAVA=%JAVA_HOME%\bin\java.exe"
   if not exist "%JAVA_HOME%\bin\java.exe" (
@@ -16,9 +19,17 @@ if defined JAVA_HOME (
     exit /b 70
   )
 )
+
+rem the background half of the first run, below
+if "%~1"=="--make-archive" (
+  "%JAVA%" %FLAGS% -XX:TieredStopAtLevel=1 "-XX:ArchiveClassesAtExit=%~2.new" -jar "%APP%" self-test >nul 2>nul
+  if exist "%~2.new" move /y "%~2.new" "%~2" >nul 2>nul
+  exit /b 0
+)
+
 if not exist "%APP%" (
   where mvn >nul 2>nul || (
-    echo backcone: it is not built yet, and Maven is not here to build it. Install Maven 3.8.7 or newer. 1>&2
+    echo backcone: it must be built first, and there is no Maven to do it. Install Maven 3.8.7 or newer. 1>&2
     exit /b 70
   )
   echo backcone: building, about a minute on first use ... 1>&2
@@ -30,21 +41,20 @@ if not exist "%APP%" (
   )
   popd
 )
-set "FLAGS=-XX:+UseSerialGC -XX:+IgnoreUnrecognizedVMOptions -Xshare:auto -Xlog:disable -Xlog:all=error:stderr -Xss4m"
+
 if /i not "%~1"=="serve" if /i not "%~1"=="explore" set "FLAGS=%FLAGS% -XX:TieredStopAtLevel=1"
 for %%A in ("%APP%") do set "KEY=%%~zA-%%~tA"
 set "KEY=%KEY:/=-%"
 set "KEY=%KEY::=-%"
 set "KEY=%KEY: =-%"
-set "CACHE=%LOCALAPPDATA%\backcone"
 set "ARCHIVE=%CACHE%\%KEY%.jsa"
 if exist "%ARCHIVE%" (
   "%JAVA%" %FLAGS% "-XX:SharedArchiveFile=%ARCHIVE%" -jar "%APP%" %*
-  exit /b %ERRORLEVEL%
+  exit /b
 )
-if defined LOCALAPPDATA (
+if defined LOCALAPPDATA if not exist "%ARCHIVE%.new" (
   if not exist "%CACHE%" mkdir "%CACHE%" >nul 2>nul
-  start "" /b cmd /c ""%JAVA%" %FLAGS% "-XX:ArchiveClassesAtExit=%ARCHIVE%" -jar "%APP%" self-test >nul 2>nul"
+  start "" /b cmd /c "%~f0" --make-archive "%ARCHIVE%"
 )
 "%JAVA%" %FLAGS% -jar "%APP%" %*
-exit /b %ERRORLEVEL%
+exit /b

@@ -1,157 +1,137 @@
 package backcone.cli;
 
-import backcone.engine.Analysis;
-import backcone.engine.BackconeEngine;
-import backcone.engine.answers.DriveAnswer;
-import backcone.engine.answers.RequirementAnswer;
-import backcone.engine.diagnostics.Diagnostic;
-import backcone.engine.diagnostics.Severity;
 import java.io.IOException;
 import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.time.LocalDate;
-import java.util.ArrayList;
+import java.time.ZoneId;
+import java.time.format.DateTimeParseException;
+import java.util.ArrayDeque;
+import java.util.Deque;
+import java.util.Iterator;
 import java.util.List;
-import java.util.concurrent.Callable;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.ExecutorService;
 import java.util.concurrent.Executors;
 import java.util.concurrent.Future;
 import org.jspecify.annotations.Nullable;
-import picocli.CommandLine.Command;
-import picocli.CommandLine.Model.CommandSpec;
-import picocli.CommandLine.Option;
-import picocli.CommandLine.ParameterException;
-import picocli.CommandLine.Parameters;
-import picocli.CommandLine.Spec;
 
 /** {@code backcone check}: diagnostics and requirements of files or folders. */
-@Command(
-        name = "check",
-        mixinStandardHelpOptions = true,
-        header = "Checks specs: what is wrong, what is missing, and every requirement with its margin.",
-        description = {
-            "",
-            "Exit status: 0 nothing short, outside, open or wrong; 1 some requirement short, outside or open; 2 a text is wrong;",
-            "64 wrong usage; 70 a fault of the program. Accepted deviations count as met until their date."
-        },
-        footer = {
-            "",
-            "Examples:",
-            "  backcone check                          every spec below this folder",
-            "  backcone check feeder.drive             one spec",
-            "  backcone check --format json drives     for other programs",
-            "  backcone check --on 2027-07-01 drives   as it will be on that day"
-        })
-final class CheckCommand implements Callable<Integer> {
-    @Spec
-    @SuppressWarnings("NullAway.Init")
-    CommandSpec spec;
+final class CheckCommand implements Command {
+    private static final Usage USAGE = new Usage(
+            "check",
+            "Checks specs: what is wrong, what is missing, and every requirement with its margin.",
+            List.of(new Usage.Operand(
+                    "PATH",
+                    "files, or folders with every .drive below them; this folder if none is named",
+                    false,
+                    true)),
+            List.of(
+                    Usage.Option.oneOf("--format", "FORMAT", "text or json; text unless said", "text", "json"),
+                    Usage.Option.value(
+                            "--on",
+                            "DATE",
+                            "judge acceptances and waivers as of this day (2027-06-30); today unless said"),
+                    Usage.Option.flag("--quiet", "only what is wrong, short, outside or open")),
+            List.of(
+                    "A folder is left out when it is hidden, is called target or node_modules, or holds a file"
+                            + " .backcone-skip; it is checked all the same when it is named.",
+                    "Exit status: 0 nothing is short, outside, open or wrong; 1 some requirement is short, outside or open;"
+                            + " 2 a text is wrong or can't be read; 64 wrong usage; 70 a fault of the program. An accepted"
+                            + " shortfall counts as met until its date."),
+            List.of(
+                    "backcone check                          every spec below this folder",
+                    "backcone check feeder.drive             one spec",
+                    "backcone check --format json drives     for other programs",
+                    "backcone check --on 2027-07-01 drives   as it will be on that day"));
 
-    @Parameters(paramLabel = "PATH", description = "Files or folders; this folder if none is named.")
-    List<Path> paths = new ArrayList<>();
+    /** Specs in work or waiting to be told, for each core: enough to keep both cores busy behind one slow spec. */
+    private static final int AHEAD = 16;
 
-    @Option(names = "--format", paramLabel = "FORMAT", description = "text or json (default: text).")
-    String format = "text";
-
-    @Option(
-            names = "--on",
-            paramLabel = "DATE",
-            description = "Judge acceptances and waivers as of this day (default: today).")
-    @Nullable
-    String on;
-
-    @Option(names = "--quiet", description = "Only what is wrong, short, outside or open.")
-    boolean quiet;
-
-    /** An analysed file. */
-    record Checked(Path file, Analysis analysis) {}
+    /** Deep enough for any nesting that the parser lets through. */
+    private static final long STACK = 16L << 20;
 
     @Override
-    public Integer call() throws IOException, InterruptedException, ExecutionException {
-        LocalDate today = Dates.of(on, spec);
-        if (!format.equals("text") && !format.equals("json")) {
-            throw new ParameterException(spec.commandLine(), "There is no format `" + format + "`; it is text or json");
-        }
-        FileSet set = FileSet.of(paths.isEmpty() ? List.of(Path.of(".")) : paths, false);
-        PrintWriter out = spec.commandLine().getOut();
-        PrintWriter err = spec.commandLine().getErr();
-        if (!set.missing().isEmpty()) {
-            for (String m : set.missing()) {
-                err.println("backcone: there is no file or folder `" + m + "`, or it can't be read.");
-            }
-            return 2;
-        }
-        if (set.files().isEmpty()) {
-            err.println(
-                    "backcone: no spec (.drive) found here. `backcone start straight-bevel` prints one to begin with.");
-            return 2;
-        }
-        List<Checked> all = analyse(set.files(), today);
-        if (format.equals("json")) {
-            JsonReport.write(all, out);
-        } else {
-            new TextReport(out, Terminal.colour(), quiet).write(all);
-        }
-        out.flush();
-        return status(all);
+    public Usage usage() {
+        return USAGE;
     }
 
-    private List<Checked> analyse(List<Path> files, LocalDate today) throws InterruptedException, ExecutionException {
-        DiskLoader loader = new DiskLoader(FileSet.root(files));
-        BackconeEngine engine = BackconeEngine.create(loader, today);
-        List<Checked> out = new ArrayList<>();
-        if (files.size() == 1) {
-            out.add(new Checked(files.get(0), engine.analyse(loader.id(files.get(0)))));
-            return out;
+    @Override
+    public int run(Arguments arguments, PrintWriter out, PrintWriter err)
+            throws WrongUsage, IOException, InterruptedException {
+        LocalDate day = day(arguments.value("--on"));
+        boolean json = arguments.value("--format", "text").equals("json");
+        FileSet set = FileSet.of(arguments.operands(), false);
+        for (String u : set.unreachable()) {
+            err.println("backcone: " + u + ".");
         }
-        ExecutorService pool =
-                Executors.newFixedThreadPool(Math.max(1, Runtime.getRuntime().availableProcessors()));
+        int status = set.unreachable().isEmpty() ? Status.FINE : Status.WRONG_TEXT;
+        if (set.files().isEmpty() && !json) {
+            if (status == Status.FINE) {
+                err.println(
+                        "backcone: no spec (.drive) here. `backcone start straight-bevel` prints one to begin with.");
+            }
+            return Status.WRONG_TEXT;
+        }
+        Report report = json
+                ? new JsonReport(out)
+                : new TextReport(
+                        out,
+                        Terminal.colour(),
+                        arguments.has("--quiet"),
+                        set.files().size() == 1);
+        if (!set.files().isEmpty()) {
+            status = Math.max(status, check(set.files(), day, report, !json && Terminal.out(), err));
+        }
+        report.end(set.unreachable());
+        return set.files().isEmpty() ? Status.WRONG_TEXT : status;
+    }
+
+    private static LocalDate day(@Nullable String text) throws WrongUsage {
+        if (text == null) {
+            return LocalDate.now(ZoneId.systemDefault());
+        }
         try {
-            List<Future<Checked>> work = new ArrayList<>();
-            for (Path f : files) {
-                work.add(pool.submit(() -> new Checked(f, engine.analyse(loader.id(f)))));
-            }
-            Progress progress = new Progress("checking", files.size());
-            for (Future<Checked> w : work) {
-                out.add(w.get());
-                progress.step();
-            }
-            progress.done();
-        } finally {
-            pool.shutdownNow();
+            return LocalDate.parse(text);
+        } catch (DateTimeParseException e) {
+            throw new WrongUsage(USAGE, "`" + text + "` is no date; write it as 2027-06-30.");
         }
-        return out;
     }
 
-    /** 2 when a text is wrong, 1 when some requirement is not met, else 0. */
-    static int status(List<Checked> all) {
-        boolean wrong = false;
-        boolean unmet = false;
-        for (Checked c : all) {
-            for (Diagnostic d : c.analysis().diagnostics()) {
-                wrong |= d.severity() == Severity.ERROR && !aboutStates(d);
-            }
-            for (DriveAnswer d : c.analysis().drives()) {
-                for (RequirementAnswer r : d.requirements()) {
-                    unmet |= !r.state().isMet();
+    /** Analyses on all cores and reports in order; returns the gravest status. */
+    private static int check(List<Path> files, LocalDate day, Report report, boolean visible, PrintWriter err)
+            throws IOException, InterruptedException {
+        EngineFactory engine = new EngineFactory(FileSet.root(files), day);
+        int cores = Math.min(files.size(), Runtime.getRuntime().availableProcessors());
+        ExecutorService pool = Executors.newFixedThreadPool(cores, r -> new Thread(null, r, "check", STACK));
+        Progress progress = new Progress("checking", files.size(), !visible && Terminal.err());
+        int status = Status.FINE;
+        try {
+            Deque<Future<Checked>> ahead = new ArrayDeque<>();
+            Iterator<Path> left = files.iterator();
+            while (left.hasNext() || !ahead.isEmpty()) {
+                while (left.hasNext() && ahead.size() < cores * AHEAD) {
+                    Path next = left.next();
+                    ahead.add(pool.submit(() -> Checked.of(engine, next)));
+                }
+                Checked c = ahead.remove().get();
+                progress.step();
+                if (c.fault() != null) {
+                    progress.done();
+                    Faults.report(c.shown(), c.fault(), err);
+                }
+                report.file(c);
+                status = Math.max(status, c.status());
+                if (!c.drives().isEmpty()) {
+                    engine.forget(c.file()); // libraries stay: others use them
                 }
             }
+        } catch (ExecutionException e) {
+            throw new IllegalStateException(e.getCause()); // Checked.of keeps what an analysis can throw
+        } finally {
+            progress.done();
+            pool.shutdownNow();
         }
-        return wrong ? 2 : unmet ? 1 : 0;
-    }
-
-    /** Findings that repeat the state of a requirement: the text itself is right. */
-    static boolean aboutStates(Diagnostic d) {
-        switch (d.code()) {
-            case SHORT:
-            case OUTSIDE:
-            case ASSERT_FAILED:
-            case ACCEPTANCE_EXPIRED:
-            case WAIVER_EXPIRED:
-                return true;
-            default:
-                return false;
-        }
+        return status;
     }
 }

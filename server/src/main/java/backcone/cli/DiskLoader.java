@@ -12,7 +12,7 @@ import java.nio.file.Files;
 import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
 
-/** Texts below one folder. */
+/** Texts below one folder. A link may not lead out of it. */
 final class DiskLoader implements Loader {
     private static final long LARGEST = 16L << 20;
     private final Path root;
@@ -21,28 +21,39 @@ final class DiskLoader implements Loader {
         this.root = root;
     }
 
-    Path root() {
-        return root;
-    }
-
     FileId id(Path file) {
         return new FileId(
                 root.relativize(file.toAbsolutePath().normalize()).toString().replace('\\', '/'));
     }
 
+    Path path(FileId file) {
+        return root.resolve(file.path());
+    }
+
     @Override
     public Loaded load(FileId file) {
-        return read(root.resolve(file.path()));
+        Path path = path(file);
+        try {
+            if (Files.exists(path) && !path.toRealPath().startsWith(root.toRealPath())) {
+                return new Loaded.Unreadable("it is a link that leads out of the opened folder");
+            }
+        } catch (IOException e) {
+            return new Loaded.Unreadable(reason(e));
+        }
+        return read(path);
     }
 
     /** Reads a file whole, or says why it can't be read. */
     static Loaded read(Path file) {
         try {
+            if (!Files.exists(file)) {
+                return new Loaded.Missing();
+            }
             if (Files.isDirectory(file)) {
                 return new Loaded.Unreadable("it is a folder");
             }
-            if (!Files.exists(file)) {
-                return new Loaded.Missing();
+            if (!Files.isRegularFile(file)) {
+                return new Loaded.Unreadable("it is no plain file"); // reading a pipe could wait for ever
             }
             if (Files.size(file) > LARGEST) {
                 return new Loaded.Unreadable("it is larger than 16 MB");
@@ -58,10 +69,15 @@ final class DiskLoader implements Loader {
             return new Loaded.Unreadable("it is not UTF-8 text; save it as UTF-8");
         } catch (NoSuchFileException e) {
             return new Loaded.Missing();
-        } catch (AccessDeniedException e) {
-            return new Loaded.Unreadable("permission denied");
         } catch (IOException e) {
-            return new Loaded.Unreadable(e.getMessage() == null ? "it can't be read" : e.getMessage());
+            return new Loaded.Unreadable(reason(e));
         }
+    }
+
+    private static String reason(IOException e) {
+        if (e instanceof AccessDeniedException) {
+            return "permission denied";
+        }
+        return e.getMessage() == null ? "it can't be read" : e.getMessage();
     }
 }

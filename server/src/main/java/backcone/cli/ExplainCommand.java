@@ -1,103 +1,133 @@
 package backcone.cli;
 
 import backcone.engine.Analysis;
-import backcone.engine.BackconeEngine;
 import backcone.engine.Loader;
+import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.Explanation;
+import backcone.engine.answers.RequirementAnswer;
+import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.diagnostics.Severity;
 import backcone.engine.model.Suggest;
 import com.fasterxml.jackson.core.JsonGenerator;
 import java.io.IOException;
 import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.time.LocalDate;
+import java.time.ZoneId;
+import java.util.ArrayList;
 import java.util.List;
+import java.util.Objects;
 import java.util.Optional;
-import java.util.concurrent.Callable;
-import picocli.CommandLine.Command;
-import picocli.CommandLine.Model.CommandSpec;
-import picocli.CommandLine.Option;
-import picocli.CommandLine.ParameterException;
-import picocli.CommandLine.Parameters;
-import picocli.CommandLine.Spec;
+import org.jspecify.annotations.Nullable;
 
 /** {@code backcone explain}: how one number came about, or a whole rating in calculation order. */
-@Command(
-        name = "explain",
-        mixinStandardHelpOptions = true,
-        header = "Tells how a number came about: equation, numbers, units, source and trust, down to what was given.",
-        description = {
-            "",
-            "NAME is a value (`head.outer_cone_distance`, `head.main.wheel.pitting`) or a rating (`head.main`), which is then told as a",
-            "whole in calculation order. Where a file holds several drives the drive may stand in front."
-        },
-        footer = {
-            "",
-            "Examples:",
-            "  backcone explain head.drive head.outer_cone_distance",
-            "  backcone explain head.drive crown.lewis_buckingham        the whole rating, fit for a signer's file",
-            "  backcone explain --format json head.drive head.pinion.torque"
-        })
-final class ExplainCommand implements Callable<Integer> {
+final class ExplainCommand implements Command {
     private static final int WIDTH = 100;
 
-    @Spec
-    @SuppressWarnings("NullAway.Init")
-    CommandSpec spec;
+    private static final Usage USAGE = new Usage(
+            "explain",
+            "Tells how a number came about: equation, numbers, units, source and trust, down to what was given.",
+            List.of(
+                    new Usage.Operand("FILE", "a spec", true, false),
+                    new Usage.Operand(
+                            "NAME",
+                            "a value (head.ratio, head.main.wheel.bending) or a rating (head.main), which is"
+                                    + " then told as a whole in the order of calculation",
+                            true,
+                            false)),
+            List.of(
+                    Usage.Option.oneOf(
+                            "--format",
+                            "FORMAT",
+                            "text, json or markdown; text unless said",
+                            "text",
+                            "json",
+                            "markdown"),
+                    Usage.Option.value("--depth", "N", "how many steps down; all unless said")),
+            List.of("Where a file holds several drives, the drive may stand in front: small_gate.head.ratio."),
+            List.of(
+                    "backcone explain head.drive head.pinion.outer_pitch_diameter",
+                    "backcone explain head.drive head.lewis_buckingham",
+                    "backcone explain --format markdown head.drive head.main > head.main.md",
+                    "backcone explain --format json --depth 1 head.drive motor.torque"));
 
-    @Parameters(index = "0", paramLabel = "FILE", description = "A spec.")
-    @SuppressWarnings("NullAway.Init")
-    Path file;
-
-    @Parameters(index = "1", paramLabel = "NAME", description = "A value or a rating.")
-    @SuppressWarnings("NullAway.Init")
-    String name;
-
-    @Option(names = "--format", paramLabel = "FORMAT", description = "text, json or markdown (default: text).")
-    String format = "text";
-
-    @Option(names = "--depth", paramLabel = "N", description = "How many steps down (default: all).")
-    int depth = 1000;
+    private final boolean colour = Terminal.colour();
 
     @Override
-    public Integer call() throws IOException {
-        if (!List.of("text", "json", "markdown").contains(format)) {
-            throw new ParameterException(
-                    spec.commandLine(), "There is no format `" + format + "`; it is text, json or markdown");
-        }
-        PrintWriter out = spec.commandLine().getOut();
-        PrintWriter err = spec.commandLine().getErr();
-        Path path = file.toAbsolutePath().normalize();
-        Loader.Loaded read = DiskLoader.read(path);
-        if (!(read instanceof Loader.Loaded.Text)) {
+    public Usage usage() {
+        return USAGE;
+    }
+
+    @Override
+    public int run(Arguments arguments, PrintWriter out, PrintWriter err) throws WrongUsage, IOException {
+        String file = Objects.requireNonNull(arguments.operand(0));
+        String name = Objects.requireNonNull(arguments.operand(1));
+        String format = arguments.value("--format", "text");
+        int depth = depth(arguments.value("--depth"));
+        Path path = FileSet.path(file);
+        Loader.Loaded read = path == null ? new Loader.Loaded.Missing() : DiskLoader.read(path);
+        if (path == null || !(read instanceof Loader.Loaded.Text)) {
             err.println("backcone: `" + file + "` "
                     + (read instanceof Loader.Loaded.Unreadable u ? "can't be read: " + u.reason() : "does not exist")
                     + ".");
-            return 2;
+            return Status.WRONG_TEXT;
         }
-        DiskLoader loader = new DiskLoader(FileSet.root(List.of(path)));
-        Analysis analysis = BackconeEngine.create(loader, LocalDate.now(java.time.ZoneId.systemDefault()))
-                .analyse(loader.id(path));
+        Path whole = path.toAbsolutePath().normalize();
+        EngineFactory engine = new EngineFactory(FileSet.root(List.of(whole)), LocalDate.now(ZoneId.systemDefault()));
+        Analysis analysis = engine.analyse(whole);
+        warn(file, analysis, err);
         Optional<List<Explanation>> rating = analysis.explainRating(name);
         if (rating.isPresent()) {
-            rating(rating.get(), out);
-            return 0;
+            rating(file, name, rating.get(), analysis, format, out);
+            return Status.FINE;
         }
         Optional<Explanation> one = analysis.explain(name);
         if (one.isPresent()) {
-            value(one.get(), out);
-            return 0;
+            value(one.get(), format, depth, out);
+            return Status.FINE;
         }
-        String near = nearest(analysis.names());
-        err.println("backcone: nothing in `" + file + "` is called `" + name + "`."
-                + (near == null ? "" : " Did you mean `" + near + "`?"));
-        return 2;
+        String near = nearest(name, analysis.names());
+        throw new WrongUsage(
+                USAGE,
+                "nothing in `" + file + "` is called `" + name + "`."
+                        + (near == null ? "" : " Did you mean `" + near + "`?"));
+    }
+
+    private static int depth(@Nullable String text) throws WrongUsage {
+        if (text == null) {
+            return Integer.MAX_VALUE;
+        }
+        int depth;
+        try {
+            depth = Integer.parseInt(text);
+        } catch (NumberFormatException e) {
+            depth = -1;
+        }
+        if (depth < 0) {
+            throw new WrongUsage(USAGE, "`--depth` is a whole number of steps, not `" + text + "`.");
+        }
+        return depth;
+    }
+
+    /** A number from a text with mistakes may rest on less than its author wrote. */
+    private static void warn(String file, Analysis analysis, PrintWriter err) {
+        int wrong = 0;
+        for (Diagnostic d : analysis.diagnostics()) {
+            if (d.severity() == Severity.ERROR && !Checked.aboutStates(d)) {
+                wrong++;
+            }
+        }
+        if (wrong > 0) {
+            err.println("backcone: " + (wrong == 1 ? "one thing is" : wrong + " things are") + " wrong in `" + file
+                    + "`; `backcone check " + file + "` tells what.");
+        }
     }
 
     /** Names behind the same dot come first: what was mistyped is most often the last word. */
-    private @org.jspecify.annotations.Nullable String nearest(List<String> names) {
+    private static @Nullable String nearest(String name, List<String> names) {
         int dot = name.lastIndexOf('.');
         String before = name.substring(0, dot + 1);
-        List<String> last = new java.util.ArrayList<>();
+        List<String> last = new ArrayList<>();
         for (String n : names) {
             if (n.startsWith(before) && n.indexOf('.', before.length()) < 0) {
                 last.add(n.substring(before.length()));
@@ -107,7 +137,7 @@ final class ExplainCommand implements Callable<Integer> {
         return near != null ? before + near : Suggest.nearest(name, names);
     }
 
-    private void value(Explanation e, PrintWriter out) throws IOException {
+    private void value(Explanation e, String format, int depth, PrintWriter out) throws IOException {
         if (format.equals("json")) {
             JsonGenerator g = JsonReport.generator(out);
             json(g, e, depth);
@@ -115,13 +145,19 @@ final class ExplainCommand implements Callable<Integer> {
             out.println();
         } else {
             boolean markdown = format.equals("markdown");
-            tree(e, 0, out, markdown);
-            out.println();
-            out.println(markdown ? "> " + Caution.TEXT : Terminal.Ink.DIM.paint(Caution.TEXT, Terminal.colour()));
+            tree(e, 0, depth, out, markdown);
+            caution(out, markdown);
         }
     }
 
-    private void rating(List<Explanation> steps, PrintWriter out) throws IOException {
+    private void caution(PrintWriter out, boolean markdown) {
+        out.println();
+        out.println(markdown ? "> " + Caution.TEXT : Terminal.Ink.DIM.paint(Caution.TEXT, colour));
+    }
+
+    private void rating(
+            String file, String name, List<Explanation> steps, Analysis analysis, String format, PrintWriter out)
+            throws IOException {
         if (format.equals("json")) {
             JsonGenerator g = JsonReport.generator(out);
             g.writeStartArray();
@@ -134,23 +170,51 @@ final class ExplainCommand implements Callable<Integer> {
             return;
         }
         boolean markdown = format.equals("markdown");
-        out.println((markdown ? "# " : "") + "Rating " + name + " of "
-                + FileSet.shown(file.toAbsolutePath().normalize()));
-        boolean given = false;
-        boolean computed = false;
+        out.println((markdown ? "# " : "") + "Rating " + name + " of " + file);
+        section("Given", steps, true, out, markdown);
+        section("Computed, in order", steps, false, out, markdown);
+        verdicts(name, analysis, out, markdown);
+        caution(out, markdown);
+    }
+
+    private void section(String title, List<Explanation> steps, boolean given, PrintWriter out, boolean markdown) {
+        boolean first = true;
         for (Explanation e : steps) {
-            boolean isGiven = e.equation() != null && e.numbers() == null;
-            if (isGiven && !given) {
-                heading("Given", out, markdown);
-                given = true;
-            } else if (!isGiven && !computed) {
-                heading("Computed, in order", out, markdown);
-                computed = true;
+            if ((e.equation() != null && e.numbers() == null) == given) {
+                if (first) {
+                    heading(title, out, markdown);
+                    first = false;
+                }
+                lines(e, markdown ? 0 : 1, out, markdown);
             }
-            lines(e, 1, out, markdown);
         }
-        out.println();
-        out.println(markdown ? "> " + Caution.TEXT : Caution.TEXT);
+    }
+
+    /** What was required of the rating, and how that came out. */
+    private void verdicts(String name, Analysis analysis, PrintWriter out, boolean markdown) {
+        boolean first = true;
+        for (DriveAnswer d : analysis.drives()) {
+            for (RequirementAnswer r : d.requirements()) {
+                String full = r.mesh() + "." + r.rating();
+                if (!name.equals(full) && !name.equals(d.name() + "." + full)) {
+                    continue;
+                }
+                if (first) {
+                    heading("Required", out, markdown);
+                    first = false;
+                }
+                String margin = Figures.margin(r.margin(), r.comparison());
+                String reserve = Figures.reserve(r.loadReserve());
+                out.println((markdown ? "- " : "  ") + r.id() + " = " + Figures.value(r) + ", required "
+                        + Figures.required(r) + ": "
+                        + DriveTable.paint(r.state(), r.state().word(), colour && !markdown)
+                        + (margin.isEmpty() ? "" : ", margin " + margin)
+                        + (reserve.isEmpty() ? "" : ", load reserve " + reserve));
+            }
+            if (!first) {
+                return; // the drive that was explained
+            }
+        }
     }
 
     private static void heading(String text, PrintWriter out, boolean markdown) {
@@ -161,19 +225,18 @@ final class ExplainCommand implements Callable<Integer> {
         }
     }
 
-    private void tree(Explanation e, int level, PrintWriter out, boolean markdown) {
+    private void tree(Explanation e, int level, int depth, PrintWriter out, boolean markdown) {
         lines(e, level, out, markdown);
         if (level < depth) {
             for (Explanation x : e.from()) {
-                tree(x, level + 1, out, markdown);
+                tree(x, level + 1, depth, out, markdown);
             }
         }
     }
 
     /** Name and value on one line, then equation, numbers and source, each only where there is something to tell. */
-    private static void lines(Explanation e, int level, PrintWriter out, boolean markdown) {
+    private void lines(Explanation e, int level, PrintWriter out, boolean markdown) {
         String indent = "  ".repeat(level);
-        boolean colour = Terminal.colour();
         String symbol = e.symbol() == null ? "" : " " + e.symbol();
         String value = e.text() != null
                 ? e.text()
@@ -194,15 +257,13 @@ final class ExplainCommand implements Callable<Integer> {
         }
         String more = indent + (markdown ? "  " : "    ");
         String equation = e.equation();
-        if (equation != null && e.numbers() != null) {
-            wrapped(
-                    more,
-                    (e.symbol() == null || e.status() == Explanation.Status.SOLVED ? "" : e.symbol() + " = ")
-                            + equation,
-                    out,
-                    markdown);
-            if (!equation.equals(e.numbers()) && !e.numbers().isEmpty()) {
-                wrapped(more, "= " + e.numbers(), out, markdown);
+        String numbers = e.numbers();
+        if (equation != null && numbers != null) {
+            // a relation stands as it is written: it names its unknown itself
+            boolean relation = e.status() == Explanation.Status.SOLVED;
+            wrapped(more, (relation || e.symbol() == null ? "" : e.symbol() + " = ") + equation, out, markdown);
+            if (!equation.equals(numbers) && !numbers.isEmpty()) {
+                wrapped(more, (relation ? "" : "= ") + numbers, out, markdown);
             }
         }
         String source = e.source() == null ? "" : e.source();

@@ -1,8 +1,11 @@
 package backcone.cli;
 
+import backcone.engine.answers.CheckAnswer;
 import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.RequirementAnswer;
+import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
 import com.fasterxml.jackson.core.JsonFactory;
 import com.fasterxml.jackson.core.JsonGenerator;
@@ -13,10 +16,18 @@ import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 
 /** The findings and requirements of checked files as JSON; {@code schema/check.schema.json} describes it. */
-final class JsonReport {
-    static final String VERSION = "0.1.0";
+final class JsonReport implements Report {
+    private final PrintWriter out;
+    private final JsonGenerator g;
 
-    private JsonReport() {}
+    JsonReport(PrintWriter out) throws IOException {
+        this.out = out;
+        this.g = generator(out);
+        g.writeStartObject();
+        g.writeStringField("backcone", Version.TEXT);
+        g.writeStringField("caution", Caution.TEXT);
+        g.writeArrayFieldStart("files");
+    }
 
     static JsonGenerator generator(PrintWriter out) throws IOException {
         JsonGenerator g = new JsonFactory().createGenerator(out);
@@ -25,14 +36,44 @@ final class JsonReport {
         return g;
     }
 
-    static void write(List<CheckCommand.Checked> all, PrintWriter out) throws IOException {
-        JsonGenerator g = generator(out);
+    @Override
+    public void file(Checked c) throws IOException {
         g.writeStartObject();
-        g.writeStringField("backcone", VERSION);
-        g.writeStringField("caution", Caution.TEXT);
-        g.writeArrayFieldStart("files");
-        for (CheckCommand.Checked c : all) {
-            file(g, c);
+        g.writeStringField("path", slashes(c.shown()));
+        g.writeArrayFieldStart("problems");
+        for (Diagnostic d : c.diagnostics()) {
+            g.writeStartObject();
+            g.writeStringField("code", d.code().id());
+            g.writeStringField("severity", d.severity().name().toLowerCase(Locale.ROOT));
+            g.writeStringField("message", d.message());
+            range(c, d.file(), d.span());
+            g.writeEndObject();
+        }
+        Throwable fault = c.fault();
+        if (fault != null) {
+            g.writeStartObject();
+            g.writeStringField("code", Code.INTERNAL.id());
+            g.writeStringField("severity", "error");
+            g.writeStringField(
+                    "message", "The program failed on this file (" + fault + "); standard error tells what to send.");
+            range(c, new FileId(c.shown()), Span.NONE);
+            g.writeEndObject();
+        }
+        g.writeEndArray();
+        g.writeArrayFieldStart("drives");
+        for (DriveAnswer d : c.drives()) {
+            drive(c, d);
+        }
+        g.writeEndArray();
+        g.writeEndObject();
+    }
+
+    @Override
+    public void end(List<String> unreachable) throws IOException {
+        g.writeEndArray();
+        g.writeArrayFieldStart("unreachable");
+        for (String u : unreachable) {
+            g.writeString(u);
         }
         g.writeEndArray();
         g.writeEndObject();
@@ -40,29 +81,11 @@ final class JsonReport {
         out.println();
     }
 
-    private static void file(JsonGenerator g, CheckCommand.Checked c) throws IOException {
-        Places places = new Places(c.analysis().text());
-        g.writeStartObject();
-        g.writeStringField("path", FileSet.shown(c.file()).replace('\\', '/'));
-        g.writeArrayFieldStart("problems");
-        for (Diagnostic d : c.analysis().diagnostics()) {
-            g.writeStartObject();
-            g.writeStringField("code", d.code().id());
-            g.writeStringField("severity", d.severity().name().toLowerCase(Locale.ROOT));
-            g.writeStringField("message", d.message());
-            range(g, places, d.span());
-            g.writeEndObject();
-        }
-        g.writeEndArray();
-        g.writeArrayFieldStart("drives");
-        for (DriveAnswer d : c.analysis().drives()) {
-            drive(g, places, d);
-        }
-        g.writeEndArray();
-        g.writeEndObject();
+    private static String slashes(String path) {
+        return path.replace('\\', '/');
     }
 
-    private static void drive(JsonGenerator g, Places places, DriveAnswer d) throws IOException {
+    private void drive(Checked c, DriveAnswer d) throws IOException {
         g.writeStartObject();
         g.writeStringField("name", d.name());
         text(g, "title", d.title());
@@ -70,7 +93,18 @@ final class JsonReport {
         text(g, "trust", d.weakestTrust());
         g.writeArrayFieldStart("requirements");
         for (RequirementAnswer r : d.requirements()) {
-            requirement(g, places, r);
+            requirement(c, r);
+        }
+        g.writeEndArray();
+        g.writeArrayFieldStart("checks");
+        for (CheckAnswer k : d.unrequired()) {
+            g.writeStartObject();
+            g.writeStringField("id", k.id());
+            g.writeStringField("meaning", k.meaning());
+            g.writeStringField("method", k.method());
+            number(g, "value", k.value());
+            g.writeStringField("unit", k.unit());
+            g.writeEndObject();
         }
         g.writeEndArray();
         g.writeArrayFieldStart("assumptions");
@@ -86,7 +120,7 @@ final class JsonReport {
         g.writeEndObject();
     }
 
-    private static void requirement(JsonGenerator g, Places places, RequirementAnswer r) throws IOException {
+    private void requirement(Checked c, RequirementAnswer r) throws IOException {
         g.writeStartObject();
         g.writeStringField("id", r.id());
         text(g, "method", r.method());
@@ -102,7 +136,7 @@ final class JsonReport {
         number(g, "margin", r.margin());
         number(g, "load_reserve", r.loadReserve());
         g.writeStringField("state", r.state().word());
-        range(g, places, r.span());
+        range(c, r.file(), r.span());
         RequirementAnswer.Acceptance a = r.accepted();
         if (a == null) {
             g.writeNullField("accepted");
@@ -159,14 +193,19 @@ final class JsonReport {
         }
     }
 
-    private static void range(JsonGenerator g, Places places, Span s) throws IOException {
+    /** Lines and columns from 1; with its path where it lies in another file, such as the drive a variant starts from. */
+    private void range(Checked c, FileId file, Span s) throws IOException {
+        if (!c.isOwn(file)) {
+            g.writeStringField("path", slashes(c.shown(file)));
+        }
+        Places places = c.places(file);
         g.writeObjectFieldStart("range");
-        position(g, "start", places, s.start());
-        position(g, "end", places, s.end());
+        position("start", places, s.start());
+        position("end", places, s.end());
         g.writeEndObject();
     }
 
-    private static void position(JsonGenerator g, String name, Places places, int offset) throws IOException {
+    private void position(String name, Places places, int offset) throws IOException {
         g.writeObjectFieldStart(name);
         g.writeNumberField("line", places.line(offset));
         g.writeNumberField("column", places.column(offset));

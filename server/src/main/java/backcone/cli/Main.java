@@ -1,117 +1,161 @@
 package backcone.cli;
 
-import java.io.PrintStream;
+import backcone.engine.model.Suggest;
+import java.io.BufferedWriter;
+import java.io.File;
+import java.io.FileDescriptor;
+import java.io.FileOutputStream;
+import java.io.IOException;
+import java.io.OutputStreamWriter;
 import java.io.PrintWriter;
+import java.nio.charset.Charset;
 import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
-import picocli.CommandLine;
-import picocli.CommandLine.Command;
+import org.jspecify.annotations.Nullable;
 
 /** The door for people and for CI: {@code backcone COMMAND}. */
-@Command(
-        name = "backcone",
-        mixinStandardHelpOptions = true,
-        version = "backcone 0.1.0",
-        synopsisSubcommandLabel = "COMMAND",
-        header = "Rates gear drives written as text.",
-        description = {
-            "",
-            "A spec (.drive) says what a drive is and what is required of it; backcone says whether it is met, with which margin,"
-                    + " and how every number came about.",
-            ""
-        },
-        subcommands = {
-            CheckCommand.class,
-            ExplainCommand.class,
-            FormatCommand.class,
-            HandbookCommand.class,
-            StartCommand.class,
-            SelfTestCommand.class
-        },
-        footer = {
-            "",
-            "Examples:",
-            "  backcone check samples                               every spec below a folder",
-            "  backcone explain head.drive head.outer_cone_distance       how a number came about",
-            "  backcone start straight-bevel > head.drive           a commented spec to begin with",
-            "",
-            Caution.TEXT
-        })
-public final class Main implements Runnable {
-    static final int WRONG_USAGE = 64;
-    static final int INTERNAL = 70;
-
-    @Override
-    public void run() {
-        CommandLine.usage(this, System.out);
-    }
+public final class Main {
+    private Main() {}
 
     public static void main(String[] args) {
-        System.setOut(new PrintStream(
-                new java.io.FileOutputStream(java.io.FileDescriptor.out), false, StandardCharsets.UTF_8));
-        System.setErr(new PrintStream(
-                new java.io.FileOutputStream(java.io.FileDescriptor.err), true, StandardCharsets.UTF_8));
-        int status = run(
-                args,
-                new PrintWriter(System.out, false, StandardCharsets.UTF_8),
-                new PrintWriter(System.err, true, StandardCharsets.UTF_8));
-        System.out.flush();
+        PrintWriter out = writer(FileDescriptor.out, Terminal.out());
+        PrintWriter err = writer(FileDescriptor.err, Terminal.err());
+        int status = run(args, out, err);
         System.exit(status);
+    }
+
+    /** UTF-8, except on a Windows terminal that says it shows something else. */
+    private static PrintWriter writer(FileDescriptor to, boolean terminal) {
+        Charset charset = StandardCharsets.UTF_8;
+        if (terminal && File.separatorChar == '\\') {
+            String shown = System.getProperty("stdout.encoding", System.getProperty("sun.stdout.encoding", "UTF-8"));
+            charset = Charset.isSupported(shown) ? Charset.forName(shown) : charset;
+        }
+        return new PrintWriter(new BufferedWriter(new OutputStreamWriter(new FileOutputStream(to), charset), 1 << 15));
+    }
+
+    static List<Command> commands() {
+        return List.of(
+                new CheckCommand(),
+                new ExplainCommand(),
+                new FormatCommand(),
+                new HandbookCommand(),
+                new StartCommand());
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */
     static int run(String[] args, PrintWriter out, PrintWriter err) {
-        CommandLine line = new CommandLine(new Main());
-        line.setOut(out);
-        line.setErr(err);
-        line.setColorScheme(CommandLine.Help.defaultColorScheme(
-                Terminal.colour() ? CommandLine.Help.Ansi.ON : CommandLine.Help.Ansi.OFF));
-        line.setParameterExceptionHandler((e, a) -> wrongUsage(e, err));
-        line.setExecutionExceptionHandler((e, l, r) -> internal(e, err));
-        int status = line.execute(args);
-        out.flush();
-        err.flush();
-        return status;
+        try {
+            return command(Arrays.asList(args), out, err);
+        } catch (WrongUsage e) {
+            err.println("backcone: " + e.getMessage());
+            err.println("`" + e.help() + "` tells what it takes.");
+            return Status.WRONG_USAGE;
+        } catch (InterruptedException e) {
+            Thread.currentThread().interrupt();
+            err.println("backcone: interrupted.");
+            return Status.INTERNAL;
+        } catch (IOException | RuntimeException | StackOverflowError | OutOfMemoryError e) {
+            Faults.report(null, e, err);
+            return Status.INTERNAL;
+        } finally {
+            out.flush();
+            err.flush();
+        }
     }
 
-    private static int wrongUsage(CommandLine.ParameterException e, PrintWriter err) {
-        err.println("backcone: " + e.getMessage() + ".");
-        List<String> may = new ArrayList<>();
-        if (e instanceof CommandLine.UnmatchedArgumentException u) {
-            String typed = u.getUnmatched().isEmpty() ? "" : u.getUnmatched().get(0);
-            if (e.getCommandLine().getParent() == null && !typed.startsWith("-")) {
-                may.addAll(commands(e.getCommandLine()));
-            } else {
-                e.getCommandLine().getCommandSpec().options().forEach(o -> may.addAll(Arrays.asList(o.names())));
+    private static int command(List<String> args, PrintWriter out, PrintWriter err)
+            throws WrongUsage, IOException, InterruptedException {
+        String first = args.isEmpty() ? "--help" : args.get(0);
+        switch (first) {
+            case "--version":
+            case "-V":
+            case "version":
+                out.println("backcone " + Version.TEXT);
+                return Status.FINE;
+            case "--help":
+            case "-h":
+                help(out);
+                return Status.FINE;
+            case "help": {
+                Command asked = args.size() < 2 ? null : find(args.get(1));
+                if (asked == null) {
+                    help(out);
+                } else {
+                    asked.usage().print(out);
+                }
+                return Status.FINE;
             }
-            String near = backcone.engine.model.Suggest.nearest(typed, may);
-            if (near != null) {
-                err.println("Did you mean `" + near + "`?");
+            case "self-test":
+                return SelfTest.run();
+            default:
+        }
+        Command c = find(first);
+        if (c == null) {
+            throw new WrongUsage(null, unknown(first));
+        }
+        Arguments a = Arguments.read(c.usage(), args.subList(1, args.size()));
+        if (a.help()) {
+            c.usage().print(out);
+            return Status.FINE;
+        }
+        return c.run(a, out, err);
+    }
+
+    private static @Nullable Command find(String name) {
+        for (Command c : commands()) {
+            if (c.usage().name().equals(name)) {
+                return c;
             }
         }
-        String name = e.getCommandLine().getCommandSpec().qualifiedName();
-        err.println("`" + name + " --help` tells what it takes.");
-        return WRONG_USAGE;
+        return null;
     }
 
-    private static List<String> commands(CommandLine line) {
-        List<String> out = new ArrayList<>();
-        line.getSubcommands().forEach((k, v) -> {
-            if (!v.getCommandSpec().usageMessage().hidden()) {
-                out.add(k);
-            }
-        });
-        return out;
+    private static String unknown(String typed) {
+        if (typed.startsWith("-")) {
+            return "there is no option `" + typed + "` before the command."
+                    + Suggest.sentence(typed, List.of("--help", "--version"));
+        }
+        if (typed.endsWith(".drive") || new File(typed).exists()) {
+            return "`" + typed + "` is no command. Did you mean `backcone check " + typed + "`?";
+        }
+        List<String> names = new ArrayList<>();
+        for (Command c : commands()) {
+            names.add(c.usage().name());
+        }
+        String near = Suggest.nearest(typed, names);
+        return "there is no command `" + typed + "`."
+                + (near == null ? " It is one of " + String.join(", ", names) + "." : " Did you mean `" + near + "`?");
     }
 
-    private static int internal(Exception e, PrintWriter err) {
-        err.println(
-                "backcone: a fault of the program, not of your text. Nothing was written. Please report the lines below with the spec that led here.");
-        err.println(
-                "backcone 0.1.0, Java " + System.getProperty("java.version") + ", " + System.getProperty("os.name"));
-        e.printStackTrace(err);
-        return INTERNAL;
+    private static void help(PrintWriter out) {
+        out.println("Rates gear drives written as text.");
+        out.println();
+        Usage.wrap(
+                "A spec (.drive) says what a drive is and what is required of it; backcone says whether it is met, with which"
+                        + " margin, what is missing, and how every number came about.",
+                0,
+                0,
+                out);
+        out.println();
+        out.println("  backcone COMMAND …");
+        out.println();
+        List<String[]> pairs = new ArrayList<>();
+        for (Command c : commands()) {
+            pairs.add(new String[] {c.usage().name(), c.usage().summary()});
+        }
+        Usage.pairs(pairs, out);
+        out.println();
+        out.println("`backcone COMMAND --help` tells what a command takes; `backcone --version` which");
+        out.println("version this is.");
+        out.println();
+        out.println("Examples");
+        out.println("  backcone check samples                          every spec below a folder");
+        out.println("  backcone explain head.drive head.ratio          how a number came about");
+        out.println("  backcone start straight-bevel > head.drive      a commented spec to begin");
+        out.println();
+        Usage.wrap(Caution.TEXT, 0, 0, out);
     }
 }

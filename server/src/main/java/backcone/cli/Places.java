@@ -33,6 +33,11 @@ final class Places {
         return text.codePointCount(start, Math.min(offset, text.length())) + 1;
     }
 
+    /** {@code line:column} */
+    String at(int offset) {
+        return line(offset) + ":" + column(offset);
+    }
+
     String lineText(int line) {
         int from = starts[line - 1];
         int to = line < starts.length ? starts[line] : text.length();

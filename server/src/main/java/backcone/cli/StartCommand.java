@@ -1,41 +1,32 @@
 package backcone.cli;
 
+import backcone.engine.model.Suggest;
 import java.io.IOException;
 import java.io.InputStream;
 import java.io.PrintWriter;
 import java.nio.charset.StandardCharsets;
 import java.util.List;
-import java.util.concurrent.Callable;
-import org.jspecify.annotations.Nullable;
-import picocli.CommandLine.Command;
-import picocli.CommandLine.Model.CommandSpec;
-import picocli.CommandLine.Parameters;
-import picocli.CommandLine.Spec;
 
 /** {@code backcone start}: a commented spec to begin with. */
-@Command(
-        name = "start",
-        mixinStandardHelpOptions = true,
-        header = "Prints a commented spec to begin with; every placeholder says what goes there and why.",
-        footer = {
-            "",
-            "Kinds: straight-bevel, spur, two-stage, hoist",
-            "",
-            "Examples:",
-            "  backcone start straight-bevel > head.drive",
-            "  backcone check head.drive"
-        })
-final class StartCommand implements Callable<Integer> {
-    @Spec
-    @SuppressWarnings("NullAway.Init")
-    CommandSpec spec;
+final class StartCommand implements Command {
+    static final List<String> KINDS = List.of("straight-bevel", "spur", "two-stage", "hoist");
 
-    @Parameters(arity = "0..1", paramLabel = "KIND", description = "straight-bevel, spur, two-stage or hoist.")
-    @Nullable
-    String kind;
+    private static final Usage USAGE = new Usage(
+            "start",
+            "Prints a commented spec to begin with; every placeholder says what goes there and why.",
+            List.of(new Usage.Operand(
+                    "KIND",
+                    "straight-bevel, spur, two-stage (bevel, then spur) or hoist (load spectrum)",
+                    false,
+                    false)),
+            List.of(),
+            List.of(
+                    "The figures are an example that can be checked as it stands; lines marked with \"<-\" wait for yours."),
+            List.of("backcone start straight-bevel > head.drive", "backcone check head.drive"));
 
-    static List<String> kinds() {
-        return List.of("straight-bevel", "spur", "two-stage", "hoist");
+    @Override
+    public Usage usage() {
+        return USAGE;
     }
 
     static String text(String kind) throws IOException {
@@ -48,24 +39,22 @@ final class StartCommand implements Callable<Integer> {
     }
 
     @Override
-    public Integer call() throws IOException {
-        PrintWriter out = spec.commandLine().getOut();
+    public int run(Arguments arguments, PrintWriter out, PrintWriter err) throws WrongUsage, IOException {
+        String kind = arguments.operand(0);
         if (kind == null) {
-            out.println("Kinds of starter: " + String.join(", ", kinds()) + ".");
-            out.println("`backcone start straight-bevel > head.drive` writes one to a file.");
-            return 0;
+            USAGE.print(out);
+            return Status.FINE;
         }
-        if (!kinds().contains(kind)) {
-            String near = backcone.engine.model.Suggest.nearest(kind, kinds());
-            spec.commandLine()
-                    .getErr()
-                    .println("backcone: there is no starter `" + kind + "`."
+        if (!KINDS.contains(kind)) {
+            String near = Suggest.nearest(kind, KINDS);
+            throw new WrongUsage(
+                    USAGE,
+                    "there is no starter `" + kind + "`."
                             + (near == null
-                                    ? " It is one of " + String.join(", ", kinds()) + "."
+                                    ? " It is one of " + String.join(", ", KINDS) + "."
                                     : " Did you mean `" + near + "`?"));
-            return Main.WRONG_USAGE;
         }
         out.print(text(kind));
-        return 0;
+        return Status.FINE;
     }
 }

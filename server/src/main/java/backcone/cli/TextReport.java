@@ -1,13 +1,11 @@
 package backcone.cli;
 
 import backcone.cli.Terminal.Ink;
-import backcone.engine.answers.CheckAnswer;
 import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.RequirementAnswer;
 import backcone.engine.answers.State;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.diagnostics.Severity;
-import backcone.engine.units.Numbers;
 import java.io.PrintWriter;
 import java.util.ArrayList;
 import java.util.EnumMap;
@@ -17,256 +15,237 @@ import java.util.Map;
 import java.util.Set;
 
 /** The findings and requirements of checked files for a person at a terminal. */
-final class TextReport {
+final class TextReport implements Report {
+    /** So many troubles are repeated at the end of a long report: of so many drives. */
+    private static final int REPEATED = 12;
+
+    private static final int LONG = 4;
+
+    private static final int LONGEST_LINE = 200;
     private final PrintWriter out;
     private final boolean colour;
     private final boolean quiet;
+    private final boolean alone;
     private final Map<State, Integer> states = new EnumMap<>(State.class);
-    private int wrong;
+    private final List<String> wrongs = new ArrayList<>();
+    private final List<String> shorts = new ArrayList<>();
+    private final Set<String> recalled = new LinkedHashSet<>();
+    private final Set<String> words = new LinkedHashSet<>();
+    private int files;
+    private int drives;
     private int warnings;
+    private boolean first = true;
 
-    TextReport(PrintWriter out, boolean colour, boolean quiet) {
+    /** {@code alone}: one file was asked for, so it is told even where there is nothing to say of it. */
+    TextReport(PrintWriter out, boolean colour, boolean quiet, boolean alone) {
         this.out = out;
         this.colour = colour;
         this.quiet = quiet;
+        this.alone = alone;
     }
 
-    void write(List<CheckCommand.Checked> all) {
-        boolean first = true;
-        for (CheckCommand.Checked c : all) {
-            if (quiet && !worthSaying(c)) {
-                count(c);
-                continue;
+    @Override
+    public void file(Checked c) {
+        files++;
+        drives += c.drives().size();
+        tally(c);
+        if (c.fault() != null || (!worthSaying(c) && !(alone && !quiet))) {
+            return;
+        }
+        if (!first) {
+            out.println();
+        }
+        first = false;
+        out.println(Ink.BOLD.paint(c.shown(), colour));
+        for (Diagnostic d : c.diagnostics()) {
+            if (isShown(d)) {
+                problem(c, d);
             }
-            if (!first) {
-                out.println();
+        }
+        for (DriveAnswer d : c.drives()) {
+            new DriveTable(c, d, quiet, colour).print(out);
+        }
+        out.flush();
+    }
+
+    private boolean worthSaying(Checked c) {
+        for (Diagnostic d : c.diagnostics()) {
+            if (isShown(d)) {
+                return true;
             }
-            first = false;
-            file(c);
         }
-        summary(all);
-    }
-
-    private static boolean worthSaying(CheckCommand.Checked c) {
-        return c.analysis().diagnostics().stream()
-                        .anyMatch(d -> d.severity() == Severity.ERROR || d.severity() == Severity.WARNING)
-                || c.analysis().drives().stream()
-                        .anyMatch(d -> d.requirements().stream()
-                                .anyMatch(r -> !r.state().isMet()));
-    }
-
-    private void count(CheckCommand.Checked c) {
-        for (DriveAnswer d : c.analysis().drives()) {
-            d.requirements().forEach(r -> states.merge(r.state(), 1, Integer::sum));
-        }
-    }
-
-    private void file(CheckCommand.Checked c) {
-        String shown = FileSet.shown(c.file());
-        out.println(Ink.BOLD.paint(shown, colour));
-        Places places = new Places(c.analysis().text());
-        for (Diagnostic d : c.analysis().diagnostics()) {
-            if (d.severity() == Severity.HINT
-                    || CheckCommand.aboutStates(d)
-                    || (quiet && d.severity() == Severity.INFORMATION)) {
-                continue; // the table tells it
+        for (DriveAnswer d : c.drives()) {
+            if (!quiet && !(d.requirements().isEmpty() && d.unrequired().isEmpty())) {
+                return true;
             }
-            problem(shown, places, d);
+            for (RequirementAnswer r : d.requirements()) {
+                if (!r.state().isMet()) {
+                    return true;
+                }
+            }
         }
-        for (DriveAnswer d : c.analysis().drives()) {
-            drive(d, c.analysis().drives().size() > 1);
+        return false;
+    }
+
+    private boolean isShown(Diagnostic d) {
+        return switch (d.code()) {
+            case SHORT, OUTSIDE, ASSERT_FAILED, MISSING_INPUT, TIGHT, ACCEPTED -> false; // the table tells it
+            default -> d.severity() != Severity.HINT && !(quiet && d.severity() == Severity.INFORMATION);
+        };
+    }
+
+    private void tally(Checked c) {
+        for (Diagnostic d : c.diagnostics()) {
+            if (d.severity() == Severity.ERROR && !Checked.aboutStates(d)) {
+                trouble(
+                        wrongs,
+                        "wrong",
+                        c.shown(d.file()) + ":" + c.places(d.file()).at(d.span().start()) + "  " + d.message());
+            } else if (d.severity() == Severity.WARNING) {
+                warnings++;
+            }
+        }
+        for (DriveAnswer d : c.drives()) {
+            for (RequirementAnswer r : d.requirements()) {
+                states.merge(r.state(), 1, Integer::sum);
+                if (r.state() == State.SHORT || r.state() == State.OUTSIDE) {
+                    String margin = Figures.margin(r.margin(), r.comparison());
+                    trouble(
+                            shorts,
+                            r.state().word(),
+                            c.at(r) + "  " + d.name() + "  " + r.id() + (margin.isEmpty() ? "" : "  " + margin));
+                }
+            }
+            if (d.weakestTrust() != null) {
+                words.add(d.weakestTrust());
+            }
+            recalled.addAll(d.recalled());
         }
     }
 
-    private void problem(String shown, Places places, Diagnostic d) {
-        int line = places.line(d.span().start());
-        int column = places.column(d.span().start());
+    private void trouble(List<String> list, String word, String text) {
+        list.add("  " + Ink.RED.paint(word, colour) + " ".repeat(9 - word.length()) + text);
+    }
+
+    private void problem(Checked c, Diagnostic d) {
+        Places places = c.places(d.file());
         String word;
         Ink ink;
         switch (d.severity()) {
-            case ERROR:
+            case ERROR -> {
                 word = "wrong";
                 ink = Ink.RED;
-                wrong++;
-                break;
-            case WARNING:
+            }
+            case WARNING -> {
                 word = "warning";
                 ink = Ink.YELLOW;
-                warnings++;
-                break;
-            default:
+            }
+            default -> {
                 word = "note";
                 ink = Ink.CYAN;
-        }
-        out.println("  " + shown + ":" + line + ":" + column + " " + ink.paint(word, colour) + " " + d.message() + " "
-                + Ink.DIM.paint("[" + d.code().id() + "]", colour));
-        if (d.severity() == Severity.ERROR) {
-            String text = places.lineText(line);
-            if (!text.isBlank() && text.length() < 200) {
-                String number = Integer.toString(line);
-                String gap = " ".repeat(number.length());
-                int width = Math.min(places.width(d.span()), Math.max(1, text.length() - column + 1));
-                StringBuilder under = new StringBuilder();
-                for (int i = 0; i < Math.min(column - 1, text.length()); i++) {
-                    under.append(text.charAt(i) == '\t' ? '\t' : ' ');
-                }
-                out.println("    " + Ink.DIM.paint(number + " | ", colour) + text);
-                out.println("    " + Ink.DIM.paint(gap + " | ", colour) + under + ink.paint("^".repeat(width), colour));
             }
+        }
+        out.println("  " + c.shown(d.file()) + ":" + places.at(d.span().start()) + " " + ink.paint(word, colour) + " "
+                + d.message() + " " + Ink.DIM.paint("[" + d.code().id() + "]", colour));
+        if (d.severity() == Severity.ERROR) {
+            caret(places, d, ink);
         }
     }
 
-    // ---- one drive
-
-    private void drive(DriveAnswer d, boolean named) {
-        if (d.requirements().isEmpty() && d.unrequired().isEmpty()) {
+    private void caret(Places places, Diagnostic d, Ink ink) {
+        int line = places.line(d.span().start());
+        int column = places.column(d.span().start());
+        String text = places.lineText(line);
+        if (text.isBlank() || text.length() >= LONGEST_LINE) {
             return;
         }
-        String title = d.title() == null ? "" : "  " + d.title();
-        out.println();
-        out.println("  " + Ink.BOLD.paint(d.name(), colour) + title);
-        Columns table = new Columns("    ");
-        table.row("", "requirement", "value", "required", "margin", "load reserve", "");
-        List<String> notes = new ArrayList<>();
-        for (RequirementAnswer r : d.requirements()) {
-            states.merge(r.state(), 1, Integer::sum);
-            if (quiet && r.state().isMet()) {
-                continue;
-            }
-            requirement(d, r, table, notes);
+        String number = Integer.toString(line);
+        int width = Math.min(places.width(d.span()), Math.max(1, text.length() - column + 1));
+        StringBuilder under = new StringBuilder();
+        for (int i = 0; i < Math.min(column - 1, text.length()); i++) {
+            under.append(text.charAt(i) == '\t' ? '\t' : ' ');
         }
-        table.print(out, this::paint);
-        for (CheckAnswer c : d.unrequired()) {
-            if (!quiet && !Double.isNaN(c.value())) {
-                notes.add(c.id() + " is " + Numbers.format(c.value(), 4)
-                        + (c.unit().isEmpty() ? "" : " " + c.unit()) + ", not required");
-            }
-        }
-        Set<String> once = new LinkedHashSet<>(notes);
-        for (String n : once) {
-            out.println("      " + n);
-        }
-        if (!quiet && d.weakestTrust() != null) {
-            trust(d);
-        }
-        if (!quiet && !d.assumptions().isEmpty()) {
-            out.println("      assumed: " + String.join("; ", d.assumptions()));
-        }
+        out.println("    " + Ink.DIM.paint(number + " | ", colour) + text);
+        out.println("    " + Ink.DIM.paint(" ".repeat(number.length()) + " | ", colour) + under
+                + ink.paint("^".repeat(width), colour));
     }
 
-    private void trust(DriveAnswer d) {
-        int n = d.recalled().size();
-        out.println("      weakest source behind these figures: " + d.weakestTrust()
-                + (n == 0
-                        ? ""
-                        : " (" + n + (n == 1 ? " equation or table" : " equations or tables")
-                                + " from memory; `backcone explain` names them)"));
-    }
+    // ---- the end
 
-    private void requirement(DriveAnswer d, RequirementAnswer r, Columns table, List<String> notes) {
-        String unit = r.unit().isEmpty() ? "" : " " + r.unit();
-        String value = Double.isNaN(r.value()) ? "–" : Numbers.format(r.value(), 4) + unit;
-        String required = r.comparison().equals("between")
-                ? Numbers.format(r.required(), 4) + " … " + Numbers.format(r.upper(), 4) + unit
-                : Double.isNaN(r.required()) ? "holds" : r.comparison() + " " + Numbers.format(r.required(), 4) + unit;
-        String margin = margin(r);
-        String reserve = Double.isNaN(r.loadReserve())
-                ? ""
-                : "× " + Numbers.format(r.loadReserve(), 3) + (r.id().equals(d.governing()) ? " governs" : "");
-        String after = "";
-        RequirementAnswer.Acceptance a = r.accepted();
-        if (r.state() == State.ACCEPTED && a != null) {
-            after = "until " + a.until() + " by " + a.by();
+    @Override
+    public void end(List<String> unreachable) {
+        if (!quiet && drives >= LONG) {
+            repeat();
         }
-        table.row(r.state().word(), r.id(), value, required, margin, reserve, after);
-        explain(r, notes);
-    }
-
-    private static String margin(RequirementAnswer r) {
-        if (Double.isNaN(r.margin()) || r.comparison().equals("==")) {
-            return "";
+        if (!first) {
+            out.println();
         }
-        if (Double.isInfinite(r.margin())) {
-            return "ample";
+        out.println(
+                count(files, "file") + ", " + count(drives, "drive") + ": " + String.join(", ", counts(unreachable)));
+        if (!quiet && !words.isEmpty()) {
+            out.println(Ink.DIM.paint(trust(), colour));
         }
-        double percent = r.margin() * 100;
-        return (percent < 0 ? "−" : "+") + Numbers.format(Math.abs(percent), Math.abs(percent) >= 99.5 ? 3 : 2) + " %";
-    }
-
-    private static void explain(RequirementAnswer r, List<String> notes) {
-        if (!r.missing().isEmpty()) {
-            StringBuilder b = new StringBuilder(r.id()).append(" needs ");
-            for (int i = 0; i < r.missing().size(); i++) {
-                RequirementAnswer.Missing m = r.missing().get(i);
-                b.append(i == 0 ? "" : i == r.missing().size() - 1 ? " and " : ", ")
-                        .append(m.path())
-                        .append(" (")
-                        .append(m.meaning())
-                        .append(')');
-            }
-            notes.add(b.toString());
-        } else if (r.fault() != null && !r.fault().endsWith("is not in this handbook")) {
-            notes.add(r.id() + ": " + r.fault());
-        }
-        for (RequirementAnswer.Passed p : r.outside()) {
-            notes.add((p.waived() ? "waived: " : "outside: ") + p.message());
-        }
-        for (RequirementAnswer.Band b : r.bands()) {
-            notes.add(r.id() + " hangs on an open point: with reading `" + b.reading() + "` of `" + b.equation()
-                    + "` it is " + Numbers.format(b.value(), 4) + " and "
-                    + b.state().word());
-        }
-        RequirementAnswer.Acceptance a = r.accepted();
-        if (a != null && r.state() == State.ACCEPTED) {
-            notes.add(r.id() + " is accepted because " + a.because());
-        }
-    }
-
-    private String paint(int column, String cell, List<String> row) {
-        if (column != 0 && !(column == 4)) {
-            return cell;
-        }
-        switch (row.get(0)) {
-            case "short":
-            case "outside":
-                return Ink.RED.paint(cell, colour);
-            case "open":
-                return Ink.CYAN.paint(cell, colour);
-            case "tight":
-            case "accepted":
-                return Ink.YELLOW.paint(cell, colour);
-            case "clear":
-                return Ink.GREEN.paint(cell, colour);
-            default:
-                return cell;
-        }
-    }
-
-    private void summary(List<CheckCommand.Checked> all) {
-        int drives = 0;
-        for (CheckCommand.Checked c : all) {
-            drives += c.analysis().drives().size();
-        }
-        List<String> parts = new ArrayList<>();
-        for (State s : new State[] {State.SHORT, State.OUTSIDE, State.OPEN, State.ACCEPTED, State.TIGHT, State.CLEAR}) {
-            int n = states.getOrDefault(s, 0);
-            if (n > 0) {
-                parts.add(paint(0, n + " " + s.word(), List.of(s.word())));
-            }
-        }
-        if (wrong > 0) {
-            parts.add(0, Ink.RED.paint(wrong + " wrong", colour));
-        }
-        if (warnings > 0) {
-            parts.add(warnings + (warnings == 1 ? " warning" : " warnings"));
-        }
-        out.println();
-        out.println(count(all.size(), "file") + ", " + count(drives, "drive") + ": "
-                + (parts.isEmpty() ? "nothing required" : String.join(", ", parts)));
         out.println(Ink.DIM.paint(Caution.TEXT, colour));
     }
 
+    /** Texts that are wrong come first: what else is amiss may follow from them. */
+    private void repeat() {
+        List<String> troubles = new ArrayList<>(wrongs);
+        troubles.addAll(shorts);
+        if (troubles.isEmpty()) {
+            return;
+        }
+        out.println();
+        out.println(Ink.BOLD.paint("Look here first", colour));
+        for (int i = 0; i < Math.min(REPEATED, troubles.size()); i++) {
+            out.println(troubles.get(i));
+        }
+        if (troubles.size() > REPEATED) {
+            out.println("  … and " + (troubles.size() - REPEATED) + " more");
+        }
+    }
+
+    private List<String> counts(List<String> unreachable) {
+        List<String> out = new ArrayList<>();
+        if (!unreachable.isEmpty()) {
+            out.add(Ink.RED.paint(unreachable.size() + " not found or unreadable", colour));
+        }
+        if (!wrongs.isEmpty()) {
+            out.add(Ink.RED.paint(wrongs.size() + " wrong", colour));
+        }
+        for (State s : DriveTable.order()) {
+            int n = states.getOrDefault(s, 0);
+            if (n > 0) {
+                out.add(DriveTable.paint(s, n + " " + s.word(), colour));
+            }
+        }
+        if (warnings > 0) {
+            out.add(count(warnings, "warning"));
+        }
+        if (out.isEmpty()) {
+            out.add("nothing is required");
+        }
+        return out;
+    }
+
+    /** The weakest word of trust behind any verdict. */
+    private String trust() {
+        String weakest = "";
+        for (String w : List.of("confirmed", "derived", "agreed", "recalled", "uncertain")) {
+            weakest = words.contains(w) ? w : weakest;
+        }
+        return "Weakest source behind these figures: " + weakest
+                + (recalled.isEmpty()
+                        ? "."
+                        : "; " + count(recalled.size(), "equation or table", "equations or tables")
+                                + " from memory, named by `backcone explain FILE MESH.RATING`.");
+    }
+
     private static String count(int n, String what) {
-        return n + " " + what + (n == 1 ? "" : "s");
+        return count(n, what, what + "s");
+    }
+
+    private static String count(int n, String one, String many) {
+        return n + " " + (n == 1 ? one : many);
     }
 }
