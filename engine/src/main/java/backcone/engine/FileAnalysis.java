@@ -14,6 +14,7 @@ import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.DriveSource;
 import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
+import backcone.engine.model.EntryNames;
 import backcone.engine.model.LibraryBuilder;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.FileSyntax;
@@ -43,7 +44,11 @@ final class FileAnalysis implements Analysis {
     private final Map<String, DriveSource> byName;
 
     private FileAnalysis(
-            SourceText main, @Nullable Sources sources, Shapes shapes, List<Diagnostic> diagnostics, List<DriveAnswer> drives,
+            SourceText main,
+            @Nullable Sources sources,
+            Shapes shapes,
+            List<Diagnostic> diagnostics,
+            List<DriveAnswer> drives,
             Map<String, DriveSource> byName) {
         this.main = main;
         this.sources = sources;
@@ -55,7 +60,11 @@ final class FileAnalysis implements Analysis {
 
     static FileAnalysis unreadable(FileId file, Loader.Loaded why) {
         Diagnostic d = why instanceof Loader.Loaded.Unreadable u
-                ? Diagnostic.of(Code.FILE_UNREADABLE, file, Span.NONE, "`" + file.path() + "` can't be read: " + u.reason() + ".")
+                ? Diagnostic.of(
+                        Code.FILE_UNREADABLE,
+                        file,
+                        Span.NONE,
+                        "`" + file.path() + "` can't be read: " + u.reason() + ".")
                 : Diagnostic.of(Code.FILE_NOT_FOUND, file, Span.NONE, "There is no file `" + file.path() + "`.");
         SourceText none = new SourceText(file, "", BackconeEngine.empty(), List.of());
         return new FileAnalysis(none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of());
@@ -84,10 +93,20 @@ final class FileAnalysis implements Analysis {
         for (Entry e : main.tree().entries()) {
             if (e instanceof Entry.Block b) {
                 if (b.name() == null || b.name().isHole()) {
-                    own.add(Code.WRONG_PLACE, main.file(), b.head().span(), "A block at the top of a file has a name: `" + b.head() + " NAME { … }`.");
+                    own.add(
+                            Code.WRONG_PLACE,
+                            main.file(),
+                            b.head().span(),
+                            "A block at the top of a file has a name: `" + b.head() + " NAME { … }`.");
                 } else if (!shapes.library().kinds.containsKey(b.head().text())) {
-                    own.add(Code.UNKNOWN_KIND, main.file(), b.head().span(), "There is no kind of block `" + b.head() + "`."
-                            + backcone.engine.model.Suggest.sentence(b.head().text(), shapes.library().kinds.keySet()));
+                    own.add(
+                            Code.UNKNOWN_KIND,
+                            main.file(),
+                            b.head().span(),
+                            "There is no kind of block `" + b.head() + "`."
+                                    + backcone.engine.model.Suggest.sentence(
+                                            b.head().text(),
+                                            shapes.library().kinds.keySet()));
                 } else {
                     blocks.add(b.name().text());
                 }
@@ -108,7 +127,17 @@ final class FileAnalysis implements Analysis {
             answers.add(DriveResults.of(s, runs, today, p));
             boolean derived = s.layers().size() > 1;
             for (Diagnostic d : p.all()) {
-                own.add(derived ? new Diagnostic(d.code(), d.severity(), d.file(), d.span(), "In `" + s.name() + "`: " + d.message(), d.related(), d.fixes()) : d);
+                own.add(
+                        derived
+                                ? new Diagnostic(
+                                        d.code(),
+                                        d.severity(),
+                                        d.file(),
+                                        d.span(),
+                                        "In `" + s.name() + "`: " + d.message(),
+                                        d.related(),
+                                        d.fixes())
+                                : d);
             }
         }
         found.addAll(own.all());
@@ -127,45 +156,32 @@ final class FileAnalysis implements Analysis {
                 out.add(d);
             }
         }
-        out.sort(Comparator.comparingInt((Diagnostic d) -> d.span().start()).thenComparingInt(d -> d.span().end()).thenComparing(d -> d.code().id()));
+        out.sort(Comparator.comparingInt((Diagnostic d) -> d.span().start())
+                .thenComparingInt(d -> d.span().end())
+                .thenComparing(d -> d.code().id()));
         return List.copyOf(out);
     }
 
     private static void misplaced(SourceText main, Problems own) {
         for (Entry e : main.tree().entries()) {
-            if (e instanceof Entry.Drive || e instanceof Entry.Variant || e instanceof Entry.Family || e instanceof Entry.Block || e instanceof Entry.Let
-                    || e instanceof Entry.Use || e instanceof Entry.Bad) {
+            if (e instanceof Entry.Drive
+                    || e instanceof Entry.Variant
+                    || e instanceof Entry.Family
+                    || e instanceof Entry.Block
+                    || e instanceof Entry.Let
+                    || e instanceof Entry.Use
+                    || e instanceof Entry.Bad) {
                 continue;
             }
-            Span at = new Span(e.span().start(), Math.min(e.span().end(), e.span().start() + 20));
-            String what = handbook(e);
-            own.add(Code.WRONG_PLACE, main.file(), at, what != null
-                    ? "A `" + what + "` belongs in a method file (`.method`), not in a spec."
-                    : "This stands outside any drive; put it inside `drive NAME { … }`.");
+            Span at =
+                    new Span(e.span().start(), Math.min(e.span().end(), e.span().start() + 20));
+            String why = EntryNames.misplaced(e);
+            own.add(
+                    Code.WRONG_PLACE,
+                    main.file(),
+                    at,
+                    why != null ? why : "This stands outside any drive; put it inside `drive NAME { … }`.");
         }
-    }
-
-    private static @Nullable String handbook(Entry e) {
-        if (e instanceof Entry.Table) {
-            return "table";
-        } else if (e instanceof Entry.Method) {
-            return "method";
-        } else if (e instanceof Entry.Chapter) {
-            return "chapter";
-        } else if (e instanceof Entry.Kind) {
-            return "kind";
-        } else if (e instanceof Entry.Function) {
-            return "function";
-        } else if (e instanceof Entry.Quantity) {
-            return "quantity";
-        } else if (e instanceof Entry.Choice) {
-            return "choice";
-        } else if (e instanceof Entry.Source) {
-            return "source";
-        } else if (e instanceof Entry.Declaration) {
-            return "declaration";
-        }
-        return null;
     }
 
     // ---- drives, variants, families
@@ -173,12 +189,26 @@ final class FileAnalysis implements Analysis {
     private static void driveSources(Sources sources, SourceText main, Problems own, Map<String, DriveSource> byName) {
         for (Entry e : main.tree().entries()) {
             if (e instanceof Entry.Drive d && !d.name().isHole()) {
-                byName.putIfAbsent(d.name().text(), new DriveSource(d.name().text(), d.title(), main.file(), d.span(), List.of(new DriveSource.Layer(main.file(), d.body()))));
+                byName.putIfAbsent(
+                        d.name().text(),
+                        new DriveSource(
+                                d.name().text(),
+                                d.title(),
+                                main.file(),
+                                d.span(),
+                                List.of(new DriveSource.Layer(main.file(), d.body()))));
             } else if (e instanceof Entry.Variant v && !v.name().isHole()) {
-                List<DriveSource.Layer> layers = layers(sources, v.base(), main, own, new LinkedHashSet<>(Set.of(v.name().text())));
+                List<DriveSource.Layer> layers = layers(
+                        sources,
+                        v.base(),
+                        main,
+                        own,
+                        new LinkedHashSet<>(Set.of(v.name().text())));
                 if (layers != null) {
                     layers.add(new DriveSource.Layer(main.file(), v.body()));
-                    byName.putIfAbsent(v.name().text(), new DriveSource(v.name().text(), v.title(), main.file(), v.span(), layers));
+                    byName.putIfAbsent(
+                            v.name().text(),
+                            new DriveSource(v.name().text(), v.title(), main.file(), v.span(), layers));
                 }
             } else if (e instanceof Entry.Family f && !f.name().isHole()) {
                 family(sources, f, main, own, byName);
@@ -186,7 +216,8 @@ final class FileAnalysis implements Analysis {
         }
     }
 
-    private static @Nullable List<DriveSource.Layer> layers(Sources sources, Name base, SourceText main, Problems own, Set<String> seen) {
+    private static @Nullable List<DriveSource.Layer> layers(
+            Sources sources, Name base, SourceText main, Problems own, Set<String> seen) {
         if (base.isHole()) {
             return null;
         }
@@ -201,13 +232,19 @@ final class FileAnalysis implements Analysis {
             }
             return below;
         }
-        own.add(Code.UNKNOWN_NAME, main.file(), base.span(), t != null && t.entry() instanceof Entry.Variant
-                ? "These variants are each other's base; one of them must start from a drive."
-                : "There is no drive `" + base + "`." + backcone.engine.model.Suggest.sentence(base.text(), sources.names()));
+        own.add(
+                Code.UNKNOWN_NAME,
+                main.file(),
+                base.span(),
+                t != null && t.entry() instanceof Entry.Variant
+                        ? "These variants are each other's base; one of them must start from a drive."
+                        : "There is no drive `" + base + "`."
+                                + backcone.engine.model.Suggest.sentence(base.text(), sources.names()));
         return null;
     }
 
-    private static void family(Sources sources, Entry.Family f, SourceText main, Problems own, Map<String, DriveSource> byName) {
+    private static void family(
+            Sources sources, Entry.Family f, SourceText main, Problems own, Map<String, DriveSource> byName) {
         List<DriveSource.Layer> base = layers(sources, f.base(), main, own, new LinkedHashSet<>());
         if (base == null || f.rows().isEmpty()) {
             return;
@@ -216,7 +253,12 @@ final class FileAnalysis implements Analysis {
         for (int r = 1; r < f.rows().size(); r++) {
             Entry.Row row = f.rows().get(r);
             if (row.cells().size() != header.cells().size()) {
-                own.add(Code.BAD_TABLE, main.file(), row.span(), "This row has " + row.cells().size() + " cells, the header has " + header.cells().size() + ".");
+                own.add(
+                        Code.BAD_TABLE,
+                        main.file(),
+                        row.span(),
+                        "This row has " + row.cells().size() + " cells, the header has "
+                                + header.cells().size() + ".");
                 continue;
             }
             List<Entry> facts = new ArrayList<>();
@@ -229,7 +271,11 @@ final class FileAnalysis implements Analysis {
                 } else if (head instanceof backcone.engine.syntax.Expr.Path p) {
                     facts.add(new Entry.Fact(p, cell, List.of(), cell.span()));
                 } else {
-                    own.add(Code.BAD_TABLE, main.file(), head.span(), "A column of a family is the path of a fact, for example `head.outer_module`.");
+                    own.add(
+                            Code.BAD_TABLE,
+                            main.file(),
+                            head.span(),
+                            "A column of a family is the path of a fact, for example `head.outer_module`.");
                 }
             }
             List<DriveSource.Layer> layers = new ArrayList<>(base);
@@ -240,7 +286,9 @@ final class FileAnalysis implements Analysis {
     }
 
     private static backcone.engine.syntax.Expr first(Entry.Cell c) {
-        return c.values().isEmpty() ? new backcone.engine.syntax.Expr.Hole(c.span()) : c.values().get(0);
+        return c.values().isEmpty()
+                ? new backcone.engine.syntax.Expr.Hole(c.span())
+                : c.values().get(0);
     }
 
     // ---- method files
@@ -257,9 +305,16 @@ final class FileAnalysis implements Analysis {
         found.addAll(report.problems());
         for (Examples.Outcome o : report.outcomes()) {
             if (!o.met()) {
-                found.add(Diagnostic.of(Code.EXAMPLE_FAILED, main.file(), o.syntax().span(), "`" + o.path() + "` comes to "
-                        + (Double.isNaN(o.got()) ? o.why() : Numbers.format(o.got(), 7) + (o.unit().isEmpty() ? "" : " " + o.unit()))
-                        + ", the example says " + Numbers.format(o.expected(), 7) + (o.unit().isEmpty() ? "" : " " + o.unit()) + "."));
+                found.add(Diagnostic.of(
+                        Code.EXAMPLE_FAILED,
+                        main.file(),
+                        o.syntax().span(),
+                        "`" + o.path() + "` comes to "
+                                + (Double.isNaN(o.got())
+                                        ? o.why()
+                                        : Numbers.format(o.got(), 7) + (o.unit().isEmpty() ? "" : " " + o.unit()))
+                                + ", the example says " + Numbers.format(o.expected(), 7)
+                                + (o.unit().isEmpty() ? "" : " " + o.unit()) + "."));
             }
         }
         Problems once = new Problems();
@@ -355,7 +410,8 @@ final class FileAnalysis implements Analysis {
         }
         for (DriveSource s : byName.values()) {
             for (String c : DriveBuilder.casesInUse(s)) {
-                out.addAll(new Explainer(DriveBuilder.build(shapes, src, s, c, new Problems(), false), src::textOf).names());
+                out.addAll(new Explainer(DriveBuilder.build(shapes, src, s, c, new Problems(), false), src::textOf)
+                        .names());
             }
         }
         return List.copyOf(out);

@@ -4,6 +4,7 @@ import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.graph.Shapes;
 import backcone.engine.model.LibraryBuilder;
 import backcone.engine.parse.Parser;
+import backcone.engine.parse.TreeCodec;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import java.io.IOException;
@@ -64,7 +65,13 @@ public final class Handbook {
         return out;
     }
 
+    /** The tree made by the build; parsed afresh where there is none of this version, as in a half-built project. */
     private static FileSyntax tree(String name, FileId id, List<Diagnostic> found) {
+        byte[] compiled = bytes(FOLDER + name + ".tree");
+        FileSyntax tree = compiled == null ? null : TreeCodec.read(compiled);
+        if (tree != null) {
+            return tree;
+        }
         String text = text(id);
         Parser.Parsed p = Parser.parse(id, text == null ? "" : text);
         found.addAll(p.problems());
@@ -77,8 +84,13 @@ public final class Handbook {
     }
 
     private static @Nullable String resource(String path) {
+        byte[] bytes = bytes(path);
+        return bytes == null ? null : new String(bytes, StandardCharsets.UTF_8);
+    }
+
+    private static byte @Nullable [] bytes(String path) {
         try (InputStream in = Handbook.class.getResourceAsStream(path)) {
-            return in == null ? null : new String(in.readAllBytes(), StandardCharsets.UTF_8);
+            return in == null ? null : in.readAllBytes();
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }

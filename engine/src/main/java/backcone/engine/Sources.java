@@ -48,7 +48,11 @@ final class Sources implements DriveGraph.Top {
             }
             DriveGraph.TopEntry old = names.putIfAbsent(n.text(), new DriveGraph.TopEntry(t.file(), e, Map.of()));
             if (old != null) {
-                problems.add(Diagnostic.of(Code.DUPLICATE_NAME, t.file(), n.span(), "`" + n + "` is there already; give one of the two another name.")
+                problems.add(Diagnostic.of(
+                                Code.DUPLICATE_NAME,
+                                t.file(),
+                                n.span(),
+                                "`" + n + "` is there already; give one of the two another name.")
                         .withRelated(old.file(), old.entry().span(), "the other `" + n + "`"));
             }
         }
@@ -107,8 +111,13 @@ final class Sources implements DriveGraph.Top {
     private void put(String name, DriveGraph.TopEntry entry, Entry.Use u, Span at) {
         DriveGraph.TopEntry old = names.putIfAbsent(name, entry);
         if (old != null && !old.entry().equals(entry.entry())) {
-            problems.add(Diagnostic.of(Code.DUPLICATE_NAME, main.file(), at, "`" + name + "` of this file is there already; put the file behind a name of its own: `use \""
-                            + u.path() + "\" as lib`.")
+            problems.add(Diagnostic.of(
+                            Code.DUPLICATE_NAME,
+                            main.file(),
+                            at,
+                            "`" + name
+                                    + "` of this file is there already; put the file behind a name of its own: `use \""
+                                    + u.path() + "\" as lib`.")
                     .withRelated(old.file(), old.entry().span(), "the other `" + name + "`"));
         }
     }
@@ -142,9 +151,17 @@ final class Sources implements DriveGraph.Top {
             return t;
         }
         if (o instanceof Loader.Loaded.Unreadable r) {
-            problems.add(Diagnostic.of(Code.FILE_UNREADABLE, main.file(), u.pathSpan(), "`" + u.path() + "` can't be read: " + r.reason() + "."));
+            problems.add(Diagnostic.of(
+                    Code.FILE_UNREADABLE,
+                    main.file(),
+                    u.pathSpan(),
+                    "`" + u.path() + "` can't be read: " + r.reason() + "."));
         } else {
-            problems.add(Diagnostic.of(Code.FILE_NOT_FOUND, main.file(), u.pathSpan(), "There is no file `" + id.path() + "`; the path is taken from the folder of this file."));
+            problems.add(Diagnostic.of(
+                    Code.FILE_NOT_FOUND,
+                    main.file(),
+                    u.pathSpan(),
+                    "There is no file `" + id.path() + "`; the path is taken from the folder of this file."));
         }
         return null;
     }
@@ -164,8 +181,16 @@ final class Sources implements DriveGraph.Top {
                     for (FileId f : chain) {
                         b.append('`').append(f.path()).append("` -> ");
                     }
-                    b.append('`').append(t.file().path()).append("` -> `").append(main.file().path()).append('`');
-                    problems.add(Diagnostic.of(Code.USE_CYCLE, main.file(), u.pathSpan(), "These files use each other: " + b + ". Move what they share to a file of its own."));
+                    b.append('`')
+                            .append(t.file().path())
+                            .append("` -> `")
+                            .append(main.file().path())
+                            .append('`');
+                    problems.add(Diagnostic.of(
+                            Code.USE_CYCLE,
+                            main.file(),
+                            u.pathSpan(),
+                            "These files use each other: " + b + ". Move what they share to a file of its own."));
                     return;
                 }
                 if (!chain.contains(id) && !id.equals(t.file()) && load.apply(id) instanceof SourceText n) {
@@ -181,12 +206,17 @@ final class Sources implements DriveGraph.Top {
     static @Nullable FileId resolve(FileId from, Entry.Use u, List<Diagnostic> problems) {
         String path = u.path().replace('\\', '/');
         if (path.isBlank()) {
-            problems.add(Diagnostic.of(Code.FILE_NOT_FOUND, from, u.pathSpan(), "The path of the used file is missing."));
+            problems.add(
+                    Diagnostic.of(Code.FILE_NOT_FOUND, from, u.pathSpan(), "The path of the used file is missing."));
             return null;
         }
         List<String> parts = new ArrayList<>();
         if (path.startsWith("/") || path.matches("[A-Za-z]:.*")) {
-            problems.add(Diagnostic.of(Code.FILE_OUTSIDE, from, u.pathSpan(), "A path is relative to the folder of this file; `" + u.path() + "` is not."));
+            problems.add(Diagnostic.of(
+                    Code.FILE_OUTSIDE,
+                    from,
+                    u.pathSpan(),
+                    "A path is relative to the folder of this file; `" + u.path() + "` is not."));
             return null;
         }
         String[] base = from.path().split("/");
@@ -199,7 +229,13 @@ final class Sources implements DriveGraph.Top {
             }
             if (p.equals("..")) {
                 if (parts.isEmpty()) {
-                    problems.add(Diagnostic.of(Code.FILE_OUTSIDE, from, u.pathSpan(), "`" + u.path() + "` lies outside the opened folder; copy the file into it, or open a folder that holds both."));
+                    problems.add(
+                            Diagnostic.of(
+                                    Code.FILE_OUTSIDE,
+                                    from,
+                                    u.pathSpan(),
+                                    "`" + u.path()
+                                            + "` lies outside the opened folder; copy the file into it, or open a folder that holds both."));
                     return null;
                 }
                 parts.remove(parts.size() - 1);
@@ -244,7 +280,8 @@ final class Sources implements DriveGraph.Top {
         return t == null || span.end() > t.length() ? "…" : t.substring(span.start(), span.end());
     }
 
-    @Nullable String textOf(FileId file) {
+    @Nullable
+    String textOf(FileId file) {
         if (file.equals(main.file())) {
             return main.text();
         }

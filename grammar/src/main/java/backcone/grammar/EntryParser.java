@@ -1,10 +1,12 @@
 package backcone.grammar;
 
 import backcone.grammar.gen.BackconeLexer;
+import backcone.grammar.gen.BackconeParser;
 import org.antlr.v4.runtime.Parser;
+import org.antlr.v4.runtime.ParserRuleContext;
 import org.antlr.v4.runtime.Token;
 import org.antlr.v4.runtime.TokenStream;
-import org.antlr.v4.runtime.WritableToken;
+import org.jspecify.annotations.Nullable;
 
 /**
  * The part of the parser that is not grammar. What an entry could not use gets token types of its own once the entry is
@@ -13,8 +15,28 @@ import org.antlr.v4.runtime.WritableToken;
  */
 public abstract class EntryParser extends Parser {
 
+    private @Nullable Builder builder;
+
     protected EntryParser(TokenStream input) {
         super(input);
+    }
+
+    /** Who builds the tree of an entry as soon as it has been read; the parser's own is dropped then. */
+    public interface Builder {
+        Object build(ParserRuleContext entry);
+    }
+
+    public final void setBuilder(Builder builder) {
+        this.builder = builder;
+    }
+
+    /** Called by the grammar at the end of each entry. Keeps the parser's tree as small as the deepest entry. */
+    protected final void built(BackconeParser.EntryContext entry) {
+        if (builder != null) {
+            entry.stop = _input.LT(-1);
+            entry.tree = builder.build(entry);
+            entry.children = null;
+        }
     }
 
     /** Marks all tokens from here to the end of the entry, row, arm or word as lost; those inside braces stay. */
@@ -28,7 +50,7 @@ public abstract class EntryParser extends Parser {
                 if (ends(type)) {
                     return;
                 }
-                ((WritableToken) t).setType(opens ? lostBrace(type) : BackconeLexer.LOST);
+                ((Tok) t).lose(opens ? lostBrace(type) : BackconeLexer.LOST);
             }
             if (opens) {
                 depth++;
@@ -54,15 +76,11 @@ public abstract class EntryParser extends Parser {
     }
 
     private static int lostBrace(int type) {
-        switch (type) {
-            case BackconeLexer.ROWS_OPEN:
-                return BackconeLexer.LOST_ROWS;
-            case BackconeLexer.ARMS_OPEN:
-                return BackconeLexer.LOST_ARMS;
-            case BackconeLexer.WORDS_OPEN:
-                return BackconeLexer.LOST_WORDS;
-            default:
-                return BackconeLexer.LOST_BODY;
-        }
+        return switch (type) {
+            case BackconeLexer.ROWS_OPEN -> BackconeLexer.LOST_ROWS;
+            case BackconeLexer.ARMS_OPEN -> BackconeLexer.LOST_ARMS;
+            case BackconeLexer.WORDS_OPEN -> BackconeLexer.LOST_WORDS;
+            default -> BackconeLexer.LOST_BODY;
+        };
     }
 }

@@ -31,10 +31,7 @@ final class EntryStarts {
 
     private boolean isEnd(int index) {
         int t = type(index);
-        return t == BackconeLexer.NL
-                || t == BackconeLexer.SEMI
-                || t == BackconeLexer.RBRACE
-                || t == BackconeLexer.EOF;
+        return t == BackconeLexer.NL || t == BackconeLexer.SEMI || t == BackconeLexer.RBRACE || t == BackconeLexer.EOF;
     }
 
     static boolean isComparison(int type) {
@@ -54,24 +51,28 @@ final class EntryStarts {
         return k;
     }
 
-    /** True when the first line of a brace holds a bar: it is a table then. */
-    boolean firstLineHasBar(int brace) {
+    /** What a brace holds as far as its first line shows: a bar makes it a table, an arrow a choice. */
+    Lines.Holds firstLineHolds(int brace) {
         int k = brace + 1;
         while (type(k) == BackconeLexer.NL) {
             k++;
         }
         for (; ; k++) {
             switch (type(k)) {
-                case BackconeLexer.PIPE:
-                    return true;
-                case BackconeLexer.NL:
-                case BackconeLexer.LBRACE:
-                case BackconeLexer.RBRACE:
-                case BackconeLexer.SEMI:
-                case BackconeLexer.EOF:
-                    return false;
-                default:
-                    break;
+                case BackconeLexer.PIPE -> {
+                    return Lines.Holds.ROWS;
+                }
+                case BackconeLexer.ARROW -> {
+                    return Lines.Holds.ARMS;
+                }
+                case BackconeLexer.NL,
+                        BackconeLexer.LBRACE,
+                        BackconeLexer.RBRACE,
+                        BackconeLexer.SEMI,
+                        BackconeLexer.EOF -> {
+                    return Lines.Holds.BODY;
+                }
+                default -> {}
             }
         }
     }
@@ -87,7 +88,7 @@ final class EntryStarts {
         }
         Tok first = at(index);
         String word = first.getText();
-        if (word.equals("each")) {
+        if (word.equals("each") && (isName(index + 1) || isEnd(index + 1))) {
             return BackconeLexer.EACH_BLOCK;
         }
         if (Words.reserved(word) != null) {
@@ -121,7 +122,7 @@ final class EntryStarts {
             return behindText(k);
         }
         if (isName(k)) {
-            return twoNames(index, k, item);
+            return twoNames(k, item);
         }
         return next == BackconeLexer.LBRACE ? BackconeLexer.BLOCK : BackconeLexer.FACT;
     }
@@ -134,7 +135,7 @@ final class EntryStarts {
                 : BackconeLexer.BLOCK;
     }
 
-    private int twoNames(int index, int second, Lines.Item item) {
+    private int twoNames(int second, Lines.Item item) {
         String word = at(second).getText();
         int next = type(second + 1);
         if (word.equals("on")) {
@@ -193,149 +194,135 @@ final class EntryStarts {
         if (isEnd(next)) {
             return type;
         }
-        boolean fits;
-        switch (type) {
-            case BackconeLexer.USE:
-                fits = isName(next) || isText(next) && type(next + 1) != BackconeLexer.COLON;
-                break;
-            case BackconeLexer.EDITIONS:
-                fits = type(next) == BackconeLexer.NUMBER;
-                break;
-            case BackconeLexer.RELATION:
-                fits = isText(next) || type(next) == BackconeLexer.COLON || at(next).is("when");
-                break;
-            case BackconeLexer.EXAMPLE:
-                fits = isText(next) && type(next + 1) != BackconeLexer.COLON;
-                break;
-            case BackconeLexer.REQUIRE:
-            case BackconeLexer.ASSERT:
-                fits = isName(next)
+        if (isName(next) && !takesColon(type) && (type(next + 1) == BackconeLexer.COLON || colonBehindText(next + 1))) {
+            // method m "…" : Kind declares a name, whatever it spells
+            return null;
+        }
+
+        boolean fits = switch (type) {
+            case BackconeLexer.USE -> isName(next) || (isText(next) && type(next + 1) != BackconeLexer.COLON);
+            case BackconeLexer.EDITIONS -> type(next) == BackconeLexer.NUMBER;
+            case BackconeLexer.RELATION -> isText(next) || type(next) == BackconeLexer.COLON || at(next).is("when");
+            case BackconeLexer.EXAMPLE -> isText(next) && type(next + 1) != BackconeLexer.COLON;
+            case BackconeLexer.REQUIRE, BackconeLexer.ASSERT ->
+                isName(next)
                         || type(next) == BackconeLexer.NUMBER
                         || type(next) == BackconeLexer.LPAREN
                         || type(next) == BackconeLexer.MINUS;
-                break;
-            default:
-                fits = isName(next);
-        }
+            default -> isName(next);
+        };
         return fits ? type : null;
+    }
+
+    private static boolean takesColon(int type) {
+        return switch (type) {
+            case BackconeLexer.PART,
+                    BackconeLexer.PARTS,
+                    BackconeLexer.LIMIT,
+                    BackconeLexer.CHECK,
+                    BackconeLexer.TABLE,
+                    BackconeLexer.RELATION -> true;
+            default -> false;
+        };
     }
 
     // ---- does the line go on
 
     /** Does the line at {@code index} go on with the entry above, outside of brackets? */
     boolean goesOn(int index, Lines.Item item, boolean inArms) {
-        switch (type(index)) {
-            case BackconeLexer.STAR:
-            case BackconeLexer.SLASH:
-            case BackconeLexer.PLUS:
-            case BackconeLexer.MINUS:
-            case BackconeLexer.CARET:
-            case BackconeLexer.ASSIGN:
-            case BackconeLexer.EQ:
-            case BackconeLexer.NE:
-            case BackconeLexer.LE:
-            case BackconeLexer.GE:
-            case BackconeLexer.LT:
-            case BackconeLexer.GT:
-            case BackconeLexer.DOTDOT:
-            case BackconeLexer.COLON:
-            case BackconeLexer.COMMA:
-            case BackconeLexer.ARROW:
-                return true;
-            case BackconeLexer.LBRACE:
-                return takesBody(item);
-            case BackconeLexer.NAME:
-                return clauseGoesOn(index, item, inArms);
-            default:
-                return false;
-        }
+        return switch (type(index)) {
+            case BackconeLexer.STAR,
+                    BackconeLexer.SLASH,
+                    BackconeLexer.PLUS,
+                    BackconeLexer.MINUS,
+                    BackconeLexer.CARET,
+                    BackconeLexer.EQ,
+                    BackconeLexer.NE,
+                    BackconeLexer.LE,
+                    BackconeLexer.GE,
+                    BackconeLexer.LT,
+                    BackconeLexer.GT,
+                    BackconeLexer.DOTDOT,
+                    BackconeLexer.COLON,
+                    BackconeLexer.COMMA,
+                    BackconeLexer.ARROW -> true;
+            case BackconeLexer.ASSIGN -> !item.pastSign;
+            case BackconeLexer.LBRACE -> takesBody(item);
+            case BackconeLexer.NAME -> clauseGoesOn(index, item, inArms);
+            default -> false;
+        };
     }
 
     private static boolean takesBody(Lines.Item item) {
-        switch (item.type) {
-            case BackconeLexer.BLOCK:
-            case BackconeLexer.DRIVE:
-            case BackconeLexer.RATE:
-            case BackconeLexer.VARIANT:
-            case BackconeLexer.FAMILY:
-            case BackconeLexer.CHOICE:
-            case BackconeLexer.KIND:
-            case BackconeLexer.CHAPTER:
-            case BackconeLexer.METHOD:
-            case BackconeLexer.TABLE:
-            case BackconeLexer.CASES:
-            case BackconeLexer.EACH_BLOCK:
-            case BackconeLexer.EXAMPLE:
-                return true;
-            default:
-                return item.choosing;
-        }
+        return switch (item.type) {
+            case BackconeLexer.BLOCK,
+                    BackconeLexer.DRIVE,
+                    BackconeLexer.RATE,
+                    BackconeLexer.VARIANT,
+                    BackconeLexer.FAMILY,
+                    BackconeLexer.CHOICE,
+                    BackconeLexer.KIND,
+                    BackconeLexer.CHAPTER,
+                    BackconeLexer.METHOD,
+                    BackconeLexer.TABLE,
+                    BackconeLexer.CASES,
+                    BackconeLexer.EACH_BLOCK,
+                    BackconeLexer.EXAMPLE -> true;
+            default -> item.choosing;
+        };
     }
 
     private boolean clauseGoesOn(int index, Lines.Item item, boolean inArms) {
         String word = at(index).getText();
         switch (word) {
-            case "and":
-            case "or":
-                return !isEnd(index + 1);
-            case "else":
-                return isText(index + 1) || !inArms && !isEnd(index + 1);
-            default:
-                break;
+            case "and", "or" -> {
+                return !isEnd(index + 1) && type(index + 1) != BackconeLexer.ASSIGN;
+            }
+            case "else" -> {
+                return isText(index + 1) || (!inArms && !isEnd(index + 1));
+            }
+            default -> {}
         }
         if (Words.inside(word) == null || isEntryLike(index)) {
             return false;
         }
         int next = index + 1;
-        if (isEnd(next) && !word.equals("measured") && !word.equals("assumed")) {
+        boolean standsAlone = word.equals("measured")
+                || word.equals("assumed")
+                || (word.equals("rows") && item.type == BackconeLexer.TABLE);
+        if (isEnd(next) && !standsAlone) {
             // a clause word alone is half-typed: the entry above is not to suffer
             return false;
         }
-        switch (word) {
-            case "per":
-                return isName(next) || isText(next);
-            case "taking":
-            case "because":
-            case "until":
-            case "within":
-                return true;
-            case "reading":
-            case "rows":
-                return isName(next);
-            case "measured":
-            case "assumed":
-                return isEnd(next) || isText(next) || isName(next);
-            case "by":
-                return isText(next) || item.type == BackconeLexer.RATE || item.type == BackconeLexer.TABLE;
-            case "range":
-            case "default":
-            case "worst":
-            case "needed":
-            case "offer":
-                return true;
-            case "relation":
-                return !isText(next) && !at(next).is("when");
-            case "is":
-                return isName(next);
-            case "as":
-            case "under":
-                return item.type == BackconeLexer.RATE && isName(next);
-            case "between":
-                return item.type == BackconeLexer.REQUIRE || item.rooting;
-            case "from":
-            case "at":
-                return item.settling;
-            case "on":
-                return type(next) == BackconeLexer.DATE;
-            case "where":
-                return item.type == BackconeLexer.COLLECT;
-            default:
-                return false;
-        }
+        // an equation still to come, or a head that lacks it
+        boolean declares = item.type == BackconeLexer.DECLARATION
+                || (!item.pastSign && (item.type == BackconeLexer.FACT || item.type == BackconeLexer.BLOCK));
+        return switch (word) {
+            case "per" -> isName(next) || isText(next);
+            case "taking", "because", "until", "within" -> true;
+            case "reading" -> isName(next);
+            case "rows" -> isName(next) || standsAlone;
+            case "measured", "assumed" -> isEnd(next) || isText(next) || isName(next);
+            case "by" -> isText(next) || item.type == BackconeLexer.RATE || item.type == BackconeLexer.TABLE;
+            case "range", "default", "worst", "needed", "offer" -> declares;
+            case "relation" -> declares && !isText(next) && !at(next).is("when");
+            case "is" -> (declares && isName(next)) || item.type == BackconeLexer.KIND;
+            case "as", "under" -> item.type == BackconeLexer.RATE && isName(next);
+            case "between" -> item.type == BackconeLexer.REQUIRE || item.rooting;
+            case "from", "at" -> item.settling;
+            case "on" -> type(next) == BackconeLexer.DATE;
+            case "where" -> item.type == BackconeLexer.COLLECT;
+            default -> false;
+        };
+    }
+
+    /** An entry word with what belongs to it. */
+    boolean startsWithEntryWord(int index) {
+        return isName(index) && !isEnd(index + 1) && entryWord(at(index).getText(), index) != null;
     }
 
     /** A fact, a requirement, a declaration or a block, whatever its first word spells. */
-    private boolean isEntryLike(int index) {
+    boolean isEntryLike(int index) {
         int k = behindPath(index);
         if (type(k) == BackconeLexer.ASSIGN || isComparison(type(k))) {
             return true;
@@ -358,18 +345,15 @@ final class EntryStarts {
     /** Does the line at {@code index} go on with an expression whose bracket is still open? */
     boolean goesOnInBracket(int index, boolean inArms, boolean lineIsIncomplete) {
         switch (type(index)) {
-            case BackconeLexer.RBRACE:
-            case BackconeLexer.LBRACE:
-            case BackconeLexer.SEMI:
-            case BackconeLexer.EOF:
+            case BackconeLexer.RBRACE, BackconeLexer.LBRACE, BackconeLexer.SEMI, BackconeLexer.EOF -> {
                 return false;
-            case BackconeLexer.NAME:
+            }
+            case BackconeLexer.NAME -> {
                 if (!nameGoesOnInBracket(index, lineIsIncomplete)) {
                     return false;
                 }
-                break;
-            default:
-                break;
+            }
+            default -> {}
         }
         return !inArms || !lineHasArrow(index);
     }
@@ -415,15 +399,13 @@ final class EntryStarts {
     private boolean lineHasArrow(int index) {
         for (int k = index; ; k++) {
             switch (type(k)) {
-                case BackconeLexer.ARROW:
+                case BackconeLexer.ARROW -> {
                     return true;
-                case BackconeLexer.NL:
-                case BackconeLexer.EOF:
-                case BackconeLexer.LBRACE:
-                case BackconeLexer.RBRACE:
+                }
+                case BackconeLexer.NL, BackconeLexer.EOF, BackconeLexer.LBRACE, BackconeLexer.RBRACE -> {
                     return false;
-                default:
-                    break;
+                }
+                default -> {}
             }
         }
     }

@@ -27,13 +27,15 @@ final class Lines {
         /** The type of the marker or entry word it starts with; 0 while it has not started. */
         int type;
 
-        @Nullable Tok start;
+        @Nullable
+        Tok start;
 
         /** Names of its head that are still to come and are names whatever they spell. */
         int headNames;
 
         /** Behind the sign of a fact or requirement. */
         boolean pastSign;
+
         boolean choosing;
         boolean settling;
         boolean rooting;
@@ -69,29 +71,27 @@ final class Lines {
         while (true) {
             Tok t = in.get(i);
             switch (t.getType()) {
-                case BackconeLexer.EOF:
+                case BackconeLexer.EOF -> {
                     closeBrackets(t);
                     out.add(t);
                     return;
-                case BackconeLexer.NL:
-                    lineEnd(t);
-                    break;
-                case BackconeLexer.SEMI:
+                }
+                case BackconeLexer.NL -> lineEnd(t);
+                case BackconeLexer.SEMI -> {
                     closeBrackets(t);
                     endItem(t);
                     i++;
-                    break;
-                case BackconeLexer.LBRACE:
+                }
+                case BackconeLexer.LBRACE -> {
                     openBrace(t);
                     i++;
-                    break;
-                case BackconeLexer.RBRACE:
+                }
+                case BackconeLexer.RBRACE -> {
                     closeBrackets(t);
                     closeBrace(t);
                     i++;
-                    break;
-                default:
-                    word(t);
+                }
+                default -> word(t);
             }
         }
     }
@@ -127,16 +127,11 @@ final class Lines {
 
     /** True behind {@code and}, {@code or}, {@code not}, a comma or an opening bracket: the line is not complete. */
     private boolean lastIsLogical() {
-        switch (out.get(out.size() - 1).getType()) {
-            case BackconeLexer.AND:
-            case BackconeLexer.OR:
-            case BackconeLexer.NOT:
-            case BackconeLexer.COMMA:
-            case BackconeLexer.LPAREN:
-                return true;
-            default:
-                return false;
-        }
+        return switch (out.get(out.size() - 1).getType()) {
+            case BackconeLexer.AND, BackconeLexer.OR, BackconeLexer.NOT, BackconeLexer.COMMA, BackconeLexer.LPAREN ->
+                true;
+            default -> false;
+        };
     }
 
     private Holds holdsBehindBrackets() {
@@ -157,10 +152,13 @@ final class Lines {
 
     private void closeBrackets(Tok before) {
         while (holds() == Holds.BRACKET) {
-            Tok close = Tok.inserted(before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
+            Tok close = Tok.inserted(
+                    before, BackconeLexer.RPAREN, out.get(out.size() - 1).end());
             out.add(close);
             frames.pop();
-            missing(close);
+            if (before.getType() != BackconeLexer.RBRACE || !before.isInserted()) {
+                missing(close);
+            }
         }
     }
 
@@ -185,6 +183,9 @@ final class Lines {
         if (item.type == 0) {
             start(t);
         }
+        if (t.faulty) {
+            fault();
+        }
         if (item.choosing) {
             holds = Holds.ARMS;
             item.choosing = false;
@@ -193,20 +194,13 @@ final class Lines {
         } else if (item.type == BackconeLexer.CHOICE || item.type == BackconeLexer.CASES) {
             holds = Holds.WORDS;
         } else {
-            holds = starts.firstLineHasBar(i) ? Holds.ROWS : Holds.BODY;
+            holds = starts.firstLineHolds(i);
         }
         switch (holds) {
-            case ARMS:
-                t.setType(BackconeLexer.ARMS_OPEN);
-                break;
-            case ROWS:
-                t.setType(BackconeLexer.ROWS_OPEN);
-                break;
-            case WORDS:
-                t.setType(BackconeLexer.WORDS_OPEN);
-                break;
-            default:
-                break;
+            case ARMS -> t.setType(BackconeLexer.ARMS_OPEN);
+            case ROWS -> t.setType(BackconeLexer.ROWS_OPEN);
+            case WORDS -> t.setType(BackconeLexer.WORDS_OPEN);
+            default -> {}
         }
         out.add(t);
         frames.push(new Frame(holds, item));
@@ -214,8 +208,12 @@ final class Lines {
     }
 
     private void closeBrace(Tok t) {
-        out.add(t);
         Frame frame = frames.pop();
+        if (t.isInserted()) {
+            // the entry before a forgotten brace is half-typed as a rule: said once, of the brace
+            fault();
+        }
+        out.add(t);
         item = frame.item();
         if (frame.holds() == Holds.ARMS) {
             return;
@@ -243,24 +241,25 @@ final class Lines {
             }
         }
         switch (t.getType()) {
-            case BackconeLexer.LPAREN:
-                frames.push(new Frame(Holds.BRACKET, item));
-                break;
-            case BackconeLexer.RPAREN:
+            case BackconeLexer.LPAREN -> frames.push(new Frame(Holds.BRACKET, item));
+            case BackconeLexer.RPAREN -> {
                 if (holds() == Holds.BRACKET) {
                     frames.pop();
                 }
-                break;
-            case BackconeLexer.ASSIGN:
-            case BackconeLexer.EQ:
-            case BackconeLexer.NE:
-            case BackconeLexer.LE:
-            case BackconeLexer.GE:
-            case BackconeLexer.LT:
-            case BackconeLexer.GT:
+            }
+            case BackconeLexer.ASSIGN,
+                    BackconeLexer.EQ,
+                    BackconeLexer.NE,
+                    BackconeLexer.LE,
+                    BackconeLexer.GE,
+                    BackconeLexer.LT,
+                    BackconeLexer.GT -> {
+                if (splitsRequirement(t)) {
+                    return;
+                }
                 item.pastSign = true;
-                break;
-            case BackconeLexer.COMMA:
+            }
+            case BackconeLexer.COMMA -> {
                 if (holds() == Holds.WORDS) {
                     t.setType(BackconeLexer.WORD_COMMA);
                     out.add(t);
@@ -268,15 +267,17 @@ final class Lines {
                     item = new Item();
                     return;
                 }
-                break;
-            case BackconeLexer.NAME:
+            }
+            case BackconeLexer.NAME -> {
                 if (splitsEntry(t)) {
                     return;
                 }
                 name(t);
-                break;
-            default:
-                break;
+                if (t.getType() == BackconeLexer.NAME && isReference()) {
+                    out.add(Tok.inserted(t, BackconeLexer.REFERENCE, t.start()));
+                }
+            }
+            default -> {}
         }
         take(t);
     }
@@ -292,18 +293,13 @@ final class Lines {
     private void start(Tok t) {
         int marker;
         switch (holds()) {
-            case ROWS:
-                marker = BackconeLexer.ROW;
-                break;
-            case ARMS:
-                marker = BackconeLexer.ARM;
-                break;
-            case WORDS:
+            case ROWS -> marker = BackconeLexer.ROW;
+            case ARMS -> marker = BackconeLexer.ARM;
+            case WORDS -> {
                 marker = BackconeLexer.WORD;
                 item.headNames = 1;
-                break;
-            default:
-                marker = starts.classify(i, item);
+            }
+            default -> marker = starts.classify(i, item);
         }
         item.type = marker;
         if (EntryStarts.isEntryWord(marker)) {
@@ -325,8 +321,10 @@ final class Lines {
         }
         int k = starts.behindPath(i);
         boolean next = in.get(k).getType() == BackconeLexer.ASSIGN
-                || requirement && EntryStarts.isComparison(in.get(k).getType());
-        if (!next || in.get(k).getLine() != t.getLine() || out.get(out.size() - 1).getLine() != t.getLine()) {
+                || (requirement && EntryStarts.isComparison(in.get(k).getType()));
+        if (!next
+                || in.get(k).getLine() != t.getLine()
+                || out.get(out.size() - 1).getLine() != t.getLine()) {
             return false;
         }
         String name = t.getText();
@@ -334,6 +332,36 @@ final class Lines {
         fault();
         endItem(Tok.inserted(t, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
         return true;
+    }
+
+    /**
+     * {@code pitting >= 1.1 bending >= 1.4}: what was glued as a unit is the name of a second requirement, since a
+     * requirement holds one comparison.
+     */
+    private boolean splitsRequirement(Tok comparison) {
+        Tok last = out.get(out.size() - 1);
+        boolean splits = item.type == BackconeLexer.REQUIREMENT
+                && item.pastSign
+                && holds() == Holds.BODY
+                && comparison.getType() != BackconeLexer.ASSIGN
+                && last.getType() == BackconeLexer.UNIT
+                && last == in.get(i - 1)
+                && isWord(last.getText());
+        if (!splits) {
+            return false;
+        }
+        out.remove(out.size() - 1);
+        last.setType(BackconeLexer.NAME);
+        findings.add(new Finding(Finding.Kind.TWO_ENTRIES, last.start(), last.end(), last.getText(), ""));
+        fault();
+        endItem(Tok.inserted(last, BackconeLexer.SEMI, out.get(out.size() - 1).end()));
+        i--;
+        return true;
+    }
+
+    private static boolean isWord(String unit) {
+        return Character.isLetter(unit.charAt(0))
+                && unit.chars().allMatch(c -> Character.isLetterOrDigit(c) || c == '_');
     }
 
     /** Decides whether a word inside an entry is a keyword. */
@@ -351,8 +379,8 @@ final class Lines {
             }
             return;
         }
-        if (item.headNames > 0 && !last.isInserted() && last.getType() == BackconeLexer.NAME
-                || item.headNames > 0 && isStart(last)) {
+        if ((item.headNames > 0 && !last.isInserted() && last.getType() == BackconeLexer.NAME)
+                || (item.headNames > 0 && isStart(last))) {
             item.headNames--;
             return;
         }
@@ -375,6 +403,22 @@ final class Lines {
         } else {
             prefix(t);
         }
+    }
+
+    /** {@code = gear sun}: two names side by side where a value starts. */
+    private boolean isReference() {
+        Tok next = in.get(i + 1);
+        if (next.getType() != BackconeLexer.NAME) {
+            return false;
+        }
+        int last = out.get(out.size() - 1).getType();
+        boolean valueStarts = (last == BackconeLexer.ASSIGN && item.type != BackconeLexer.COLLECT)
+                || (holds() == Holds.ROWS && (last == BackconeLexer.PIPE || last == BackconeLexer.ROW));
+        if (!valueStarts) {
+            return false;
+        }
+        String word = next.getText();
+        return Words.reserved(word) == null && (Words.inside(word) == null || holds() == Holds.ROWS);
     }
 
     private boolean isStart(Tok last) {
@@ -403,22 +447,20 @@ final class Lines {
     }
 
     private static boolean endsOperand(Tok t) {
-        switch (t.getType()) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.STRING:
-            case BackconeLexer.OPENSTRING:
-            case BackconeLexer.DATE:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.RBRACE:
-            case BackconeLexer.MEASURED:
-            case BackconeLexer.ASSUMED:
-            case BackconeLexer.NEEDED:
-            case BackconeLexer.WHOLE:
-                return true;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.STRING,
+                    BackconeLexer.OPENSTRING,
+                    BackconeLexer.DATE,
+                    BackconeLexer.RPAREN,
+                    BackconeLexer.RBRACE,
+                    BackconeLexer.MEASURED,
+                    BackconeLexer.ASSUMED,
+                    BackconeLexer.NEEDED,
+                    BackconeLexer.WHOLE -> true;
+            default -> false;
+        };
     }
 }

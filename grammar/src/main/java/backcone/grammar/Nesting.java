@@ -41,48 +41,47 @@ final class Nesting {
     private void take(List<Tok> tokens, int i) {
         Tok t = tokens.get(i);
         switch (t.getType()) {
-            case BackconeLexer.NL:
+            case BackconeLexer.NL -> {
                 lineEnd(i + 1 < tokens.size() ? tokens.get(i + 1).getType() : BackconeLexer.EOF);
                 keep(t, open <= MOST_OPEN);
-                break;
-            case BackconeLexer.LPAREN:
+            }
+            case BackconeLexer.LPAREN -> {
                 push(false);
                 check(t);
                 keep(t, open <= MOST_OPEN && !cutLine);
-                break;
-            case BackconeLexer.LBRACE:
+            }
+            case BackconeLexer.LBRACE -> {
                 push(true);
                 check(t);
                 keep(t, open <= MOST_OPEN);
-                break;
-            case BackconeLexer.RPAREN:
+            }
+            case BackconeLexer.RPAREN -> {
                 keep(t, open <= MOST_OPEN && !cutLine);
                 if (open > 0 && !isBrace[open]) {
                     pop();
                 }
                 afterCall = true;
                 return;
-            case BackconeLexer.RBRACE:
+            }
+            case BackconeLexer.RBRACE -> {
                 popBrackets();
                 keep(t, open <= MOST_OPEN);
                 if (open > 0) {
                     pop();
                 }
-                break;
-            case BackconeLexer.EOF:
-                keep(t, true);
-                break;
-            case BackconeLexer.SEMI:
-            case BackconeLexer.COMMA:
-            case BackconeLexer.PIPE:
-            case BackconeLexer.COLON:
-            case BackconeLexer.ARROW:
-            case BackconeLexer.ASSIGN:
+            }
+            case BackconeLexer.EOF -> keep(t, true);
+            case BackconeLexer.SEMI,
+                    BackconeLexer.COMMA,
+                    BackconeLexer.PIPE,
+                    BackconeLexer.COLON,
+                    BackconeLexer.ARROW,
+                    BackconeLexer.ASSIGN -> {
                 keep(t, open <= MOST_OPEN && !cutLine);
                 total -= operators[open];
                 operators[open] = 0;
-                break;
-            default:
+            }
+            default -> {
                 if (isOperator(t)) {
                     operators[open]++;
                     total++;
@@ -92,32 +91,29 @@ final class Nesting {
                 if (t.getType() == BackconeLexer.DOT || t.getType() == BackconeLexer.NAME) {
                     return;
                 }
+            }
         }
         afterCall = false;
     }
 
     private boolean isOperator(Tok t) {
-        switch (t.getType()) {
-            case BackconeLexer.PLUS:
-            case BackconeLexer.MINUS:
-            case BackconeLexer.STAR:
-            case BackconeLexer.SLASH:
-            case BackconeLexer.CARET:
-            case BackconeLexer.EQ:
-            case BackconeLexer.NE:
-            case BackconeLexer.LE:
-            case BackconeLexer.GE:
-            case BackconeLexer.LT:
-            case BackconeLexer.GT:
-            case BackconeLexer.IN:
-                return true;
-            case BackconeLexer.DOT:
-                return afterCall;
-            case BackconeLexer.NAME:
-                return t.end() - t.start() <= 6 && Words.reserved(t.getText()) != null;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.PLUS,
+                    BackconeLexer.MINUS,
+                    BackconeLexer.STAR,
+                    BackconeLexer.SLASH,
+                    BackconeLexer.CARET,
+                    BackconeLexer.EQ,
+                    BackconeLexer.NE,
+                    BackconeLexer.LE,
+                    BackconeLexer.GE,
+                    BackconeLexer.LT,
+                    BackconeLexer.GT,
+                    BackconeLexer.IN -> true;
+            case BackconeLexer.DOT -> afterCall;
+            case BackconeLexer.NAME -> t.end() - t.start() <= 6 && Words.reserved(t.getText()) != null;
+            default -> false;
+        };
     }
 
     /** A line that starts with an operator goes on with the expression. Brackets cut too deep end with their line. */
@@ -131,9 +127,9 @@ final class Nesting {
                 || next == BackconeLexer.STAR
                 || next == BackconeLexer.SLASH
                 || next == BackconeLexer.CARET
-                || next >= BackconeLexer.EQ && next <= BackconeLexer.GT
+                || (next >= BackconeLexer.EQ && next <= BackconeLexer.GT)
                 || next == BackconeLexer.NAME;
-        if (!goesOn || isBrace[open] && next == BackconeLexer.NAME) {
+        if (!goesOn || (isBrace[open] && next == BackconeLexer.NAME)) {
             total -= operators[open];
             operators[open] = 0;
         }

@@ -33,26 +33,21 @@ final class Numbers {
         while (i < in.size()) {
             Tok t = in.get(i);
             switch (t.getType()) {
-                case BackconeLexer.NUMBER:
-                    number(t);
-                    break;
-                case BackconeLexer.DOT:
-                    pointFirst(t);
-                    break;
-                case BackconeLexer.DATE:
-                    date(t);
-                    break;
-                case BackconeLexer.NAME:
+                case BackconeLexer.NUMBER -> number(t);
+                case BackconeLexer.DOT -> pointFirst(t);
+                case BackconeLexer.DATE -> date(t);
+                case BackconeLexer.NAME -> {
                     out.add(t);
                     i++;
                     if (t.is("in") && out.size() > 1 && endsOperand(out.get(out.size() - 2))) {
                         t.setType(BackconeLexer.IN);
                         unitAfterIn();
                     }
-                    break;
-                default:
+                }
+                default -> {
                     out.add(t);
                     i++;
+                }
             }
         }
     }
@@ -66,16 +61,14 @@ final class Numbers {
     }
 
     private static boolean endsOperand(Tok t) {
-        switch (t.getType()) {
-            case BackconeLexer.NAME:
-            case BackconeLexer.NUMBER:
-            case BackconeLexer.UNIT:
-            case BackconeLexer.RPAREN:
-            case BackconeLexer.RBRACE:
-                return true;
-            default:
-                return false;
-        }
+        return switch (t.getType()) {
+            case BackconeLexer.NAME,
+                    BackconeLexer.NUMBER,
+                    BackconeLexer.UNIT,
+                    BackconeLexer.RPAREN,
+                    BackconeLexer.RBRACE -> true;
+            default -> false;
+        };
     }
 
     // ---- numbers
@@ -87,11 +80,11 @@ final class Numbers {
             number = decimalComma(t);
         } else if (typeAt(i) == BackconeLexer.DOT && t.touches(at(i))) {
             number = secondPoint(t);
-        } else if (digits(i) && !oneOver(i) && sameLine(t, at(i))) {
+        } else if (t.end() - t.start() <= 3 && groupOfThree(t, i)) {
             number = groupedDigits(t);
         }
         out.add(number);
-        if (!number.unreadable) {
+        if (!number.faulty) {
             checkSize(number);
         }
         afterNumber(number);
@@ -108,10 +101,7 @@ final class Numbers {
     /** {@code 1,5} or {@code 1,480,000}: one unreadable number, since both readings are common. */
     private Tok decimalComma(Tok first) {
         Tok last = first;
-        while (typeAt(i) == BackconeLexer.COMMA
-                && last.touches(at(i))
-                && digits(i + 1)
-                && at(i).touches(at(i + 1))) {
+        while (typeAt(i) == BackconeLexer.COMMA && last.touches(at(i)) && digits(i + 1) && at(i).touches(at(i + 1))) {
             last = at(i + 1);
             i += 2;
         }
@@ -132,15 +122,28 @@ final class Numbers {
             return unreadable(first, last, Finding.Kind.TWO_POINTS, "");
         }
         Tok whole = span(first, point);
-        find(Finding.Kind.POINT_LAST, whole, first.getText() + ".0");
+        boolean power = first.getText().indexOf('e') >= 0 || first.getText().indexOf('E') >= 0;
+        whole.unreadable = power;
+        find(Finding.Kind.POINT_LAST, whole, power ? first.getText() : first.getText() + ".0");
         return whole;
+    }
+
+    /** Three digits, and perhaps decimals, behind a blank. Other numbers side by side lack something between them. */
+    private boolean groupOfThree(Tok before, int index) {
+        if (!digits(index) || !sameLine(before, at(index)) || before.getText().indexOf('.') >= 0) {
+            return false;
+        }
+        String group = at(index).getText();
+        int point = group.indexOf('.');
+        return (point < 0 ? group.length() : point) == 3
+                && group.chars().allMatch(c -> c == '.' || Character.isDigit(c));
     }
 
     /** {@code 1 480} or {@code 12 000 000}. */
     private Tok groupedDigits(Tok first) {
         Tok last = first;
         StringBuilder joined = new StringBuilder(first.getText());
-        while (digits(i) && !oneOver(i) && sameLine(last, at(i))) {
+        while (groupOfThree(last, i)) {
             last = at(i);
             joined.append(last.getText());
             i++;
@@ -149,9 +152,8 @@ final class Numbers {
     }
 
     private void pointFirst(Tok point) {
-        boolean behindName = !out.isEmpty()
-                && out.get(out.size() - 1).touches(point)
-                && endsOperand(out.get(out.size() - 1));
+        boolean behindName =
+                !out.isEmpty() && out.get(out.size() - 1).touches(point) && endsOperand(out.get(out.size() - 1));
         if (behindName || !digits(i + 1) || !point.touches(at(i + 1))) {
             out.add(point);
             i++;
@@ -166,7 +168,9 @@ final class Numbers {
     }
 
     private void checkSize(Tok number) {
-        if (number.end() - number.start() < 18 && number.getText().indexOf('e') < 0 && number.getText().indexOf('E') < 0) {
+        if (number.end() - number.start() < 18
+                && number.getText().indexOf('e') < 0
+                && number.getText().indexOf('E') < 0) {
             return;
         }
         String text = number.getText();
@@ -231,7 +235,8 @@ final class Numbers {
             if (word.charAt(0) == '_' && number.touches(next) && word.matches("[_0-9]+")) {
                 out.set(
                         out.size() - 1,
-                        unreadable(number, next, Finding.Kind.GROUPED_DIGITS, (number.getText() + word).replace("_", "")));
+                        unreadable(
+                                number, next, Finding.Kind.GROUPED_DIGITS, (number.getText() + word).replace("_", "")));
                 i++;
                 return;
             }
@@ -240,7 +245,7 @@ final class Numbers {
             }
             boolean path = next.touches(at(i + 1))
                     && (typeAt(i + 1) == BackconeLexer.LPAREN
-                            || typeAt(i + 1) == BackconeLexer.DOT && typeAt(i + 2) == BackconeLexer.NAME);
+                            || (typeAt(i + 1) == BackconeLexer.DOT && typeAt(i + 2) == BackconeLexer.NAME));
             boolean name = word.indexOf('_') >= 0 && !Words.UNDERSCORED_UNITS.contains(word);
             if (path || name) {
                 times(number, next, word);
@@ -280,10 +285,10 @@ final class Numbers {
 
     private void unitAfterIn() {
         int type = typeAt(i);
-        boolean starts = type == BackconeLexer.NAME && !Words.neverUnit(at(i).getText())
+        boolean starts = (type == BackconeLexer.NAME && !Words.neverUnit(at(i).getText()))
                 || type == BackconeLexer.PERCENT
                 || type == BackconeLexer.DEGREE
-                || digits(i) && at(i).is("1");
+                || (digits(i) && at(i).is("1"));
         if (starts && sameLine(out.get(out.size() - 1), at(i))) {
             unit();
         }
@@ -313,14 +318,16 @@ final class Numbers {
         }
         int type = typeAt(index);
         if (type == BackconeLexer.CARET) {
-            int k = typeAt(index + 1) == BackconeLexer.MINUS && at(index + 1).touches(at(index + 2)) ? index + 2 : index + 1;
+            int k = typeAt(index + 1) == BackconeLexer.MINUS && at(index + 1).touches(at(index + 2))
+                    ? index + 2
+                    : index + 1;
             return digits(k) ? k + 1 : group(k, index);
         }
         if (type == BackconeLexer.STAR || type == BackconeLexer.SLASH) {
             int next = typeAt(index + 1);
             boolean callOrPath = at(index + 1).touches(at(index + 2))
                     && (typeAt(index + 2) == BackconeLexer.LPAREN || typeAt(index + 2) == BackconeLexer.DOT);
-            if (next == BackconeLexer.NAME && !callOrPath
+            if ((next == BackconeLexer.NAME && !callOrPath)
                     || next == BackconeLexer.PERCENT
                     || next == BackconeLexer.DEGREE
                     || digits(index + 1)) {
@@ -339,24 +346,22 @@ final class Numbers {
         int depth = 0;
         for (int k = index; k < in.size(); k++) {
             switch (typeAt(k)) {
-                case BackconeLexer.LPAREN:
-                    depth++;
-                    break;
-                case BackconeLexer.RPAREN:
+                case BackconeLexer.LPAREN -> depth++;
+                case BackconeLexer.RPAREN -> {
                     depth--;
                     if (depth == 0) {
                         return k + 1;
                     }
-                    break;
-                case BackconeLexer.NAME:
-                case BackconeLexer.NUMBER:
-                case BackconeLexer.STAR:
-                case BackconeLexer.SLASH:
-                case BackconeLexer.CARET:
-                case BackconeLexer.MINUS:
-                    break;
-                default:
+                }
+                case BackconeLexer.NAME,
+                        BackconeLexer.NUMBER,
+                        BackconeLexer.STAR,
+                        BackconeLexer.SLASH,
+                        BackconeLexer.CARET,
+                        BackconeLexer.MINUS -> {}
+                default -> {
                     return otherwise;
+                }
             }
             if (!at(k).touches(at(k + 1))) {
                 return otherwise;
@@ -368,7 +373,19 @@ final class Numbers {
     // ---- findings
 
     private void times(Tok number, Tok next, String word) {
-        find(Finding.Kind.MISSING_TIMES, span(number, next), word);
+        Tok last = next;
+        String factor = word;
+        int k = i + 1;
+        while (last.touches(at(k)) && typeAt(k) == BackconeLexer.DOT && typeAt(k + 1) == BackconeLexer.NAME) {
+            last = at(k + 1);
+            factor += "." + last.getText();
+            k += 2;
+        }
+        if (next.getType() == BackconeLexer.NAME && last.touches(at(k)) && typeAt(k) == BackconeLexer.LPAREN) {
+            last = at(k);
+            factor += "(";
+        }
+        find(Finding.Kind.MISSING_TIMES, span(number, last), factor);
         Tok star = Tok.inserted(next, BackconeLexer.STAR, next.start());
         star.faulty = true;
         out.add(star);

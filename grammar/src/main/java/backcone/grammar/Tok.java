@@ -12,6 +12,9 @@ public final class Tok extends CommonToken {
     /** A finding was made in the entry that starts with this token; what else goes wrong in it is a consequence. */
     boolean faulty;
 
+    /** What it was before its entry could not use it; 0 when it could. */
+    private int typeBefore;
+
     /** A number that has no readable value. */
     boolean unreadable;
 
@@ -38,6 +41,16 @@ public final class Tok extends CommonToken {
     /** True for markers and for brackets and operators that the author did not write. */
     public boolean isInserted() {
         return stop < start && type != EOF;
+    }
+
+    /** What the token list took it for, also when its entry could not use it. */
+    public int kind() {
+        return typeBefore == 0 ? type : typeBefore;
+    }
+
+    void lose(int lostType) {
+        typeBefore = type;
+        type = lostType;
     }
 
     public boolean isFaulty() {

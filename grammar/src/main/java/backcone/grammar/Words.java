@@ -28,7 +28,8 @@ public final class Words {
     static final Set<String> UNDERSCORED_UNITS = Set.of("AGMA_Q", "AGMA_A");
 
     /** What may stand behind a slash that follows a number: {@code 8 /in}. */
-    static final Set<String> RECIPROCAL_UNITS = Set.of("in", "mm", "cm", "m", "um", "ft", "s", "min", "h", "rad", "rev");
+    static final Set<String> RECIPROCAL_UNITS =
+            Set.of("in", "mm", "cm", "m", "um", "ft", "s", "min", "h", "rad", "rev");
 
     static {
         ENTRY.put("drive", BackconeLexer.DRIVE);
@@ -135,6 +136,6 @@ public final class Words {
 
     /** Words that may follow a number and are never its unit. {@code in} is not among them: there it is the inch. */
     static boolean neverUnit(String word) {
-        return INSIDE.containsKey(word) || RESERVED.containsKey(word) && !word.equals("in");
+        return INSIDE.containsKey(word) || (RESERVED.containsKey(word) && !word.equals("in"));
     }
 }

@@ -69,8 +69,17 @@ public final class DriveResults {
                 governing = r;
             }
         }
-        return new DriveAnswer(source.name(), source.title(), source.file(), source.span(), List.copyOf(requirements), List.copyOf(unrequired),
-                governing == null ? null : governing.id(), assumptions(runs), trusts.weakest(), trusts.recalled());
+        return new DriveAnswer(
+                source.name(),
+                source.title(),
+                source.file(),
+                source.span(),
+                List.copyOf(requirements),
+                List.copyOf(unrequired),
+                governing == null ? null : governing.id(),
+                assumptions(runs),
+                trusts.weakest(),
+                trusts.recalled());
     }
 
     // ---- requirements
@@ -92,10 +101,9 @@ public final class DriveResults {
         double margin = Double.NaN;
         State state;
         boolean condition = u.form == RequirementUse.Form.CONDITION;
-        boolean noMethod = rate != null && rate.space() == null;
-        if (noMethod) {
+        if (rate != null && rate.space() == null) {
             state = State.OPEN;
-            fault = "the method `" + rate.syntax().method() + "` is not in this handbook";
+            fault = rate.why();
         } else if (condition && u.value < 0) {
             state = u.holds ? State.CLEAR : State.SHORT;
             v = u.holds ? 1 : 0;
@@ -133,7 +141,11 @@ public final class DriveResults {
         if (rate != null && !Double.isNaN(v)) {
             trusts.add(run, u.value);
         }
-        boolean known = state == State.CLEAR || state == State.TIGHT || state == State.SHORT || state == State.ACCEPTED || state == State.OUTSIDE;
+        boolean known = state == State.CLEAR
+                || state == State.TIGHT
+                || state == State.SHORT
+                || state == State.ACCEPTED
+                || state == State.OUTSIDE;
         double reserve = rate != null && known ? reserve(run, u, required) : Double.NaN;
         List<RequirementAnswer.Band> bands = known && rate != null ? bands(run, u, state, required) : List.of();
         Unit unit = u.unit;
@@ -144,7 +156,9 @@ public final class DriveResults {
                 member(u),
                 u.slot == null ? null : u.slot.decl.name,
                 rate == null ? null : rate.syntax().method().text(),
-                rate == null || rate.syntax().edition() == null ? null : rate.syntax().edition().text(),
+                rate == null || rate.syntax().edition() == null
+                        ? null
+                        : rate.syntax().edition().text(),
                 run.graph.activeCase() == null ? null : run.graph.activeCase().name,
                 u.meaning,
                 in(unit, v),
@@ -210,7 +224,7 @@ public final class DriveResults {
 
     private @Nullable String fault(RequirementUse u, Reasons.Why why) {
         if (why.faults().isEmpty()) {
-            return why.broken() ? "something above could not be understood" : null;
+            return why.open().isEmpty() ? "something it rests on could not be understood" : null;
         }
         Reasons.Fault first = why.faults().get(0);
         Code code = first.op() == backcone.engine.graph.Op.ROOT || first.op() == backcone.engine.graph.Op.SETTLE
@@ -218,8 +232,13 @@ public final class DriveResults {
                 : first.op() == backcone.engine.graph.Op.TABLE ? Code.BEYOND_TABLE : Code.FAULT;
         if (first.op() != backcone.engine.graph.Op.OPEN) {
             Slot s = first.slot();
-            Diagnostic d = Diagnostic.of(code, u.file, u.span(), "`" + u.id + "` can't be computed: " + first.message() + ".");
-            problems.add(s == null ? d : d.withRelated(s.decl.file, s.decl.span, "the equation of `" + s.decl.symbolOrName() + "`"));
+            Diagnostic d =
+                    Diagnostic.of(code, u.file, u.span(), "`" + u.id + "` can't be computed: " + first.message() + ".");
+            problems.add(
+                    s == null
+                            ? d
+                            : d.withRelated(
+                                    s.decl.file, s.decl.span, "the equation of `" + s.decl.symbolOrName() + "`"));
         }
         return first.message();
     }
@@ -227,7 +246,9 @@ public final class DriveResults {
     private static double margin(RequirementUse.Form f, double v, double required, double upper) {
         switch (f) {
             case AT_LEAST:
-                return required == 0 ? (v >= 0 ? Double.POSITIVE_INFINITY : Double.NEGATIVE_INFINITY) : required > 0 ? v / required - 1 : (v - required) / -required;
+                return required == 0
+                        ? (v >= 0 ? Double.POSITIVE_INFINITY : Double.NEGATIVE_INFINITY)
+                        : required > 0 ? v / required - 1 : (v - required) / -required;
             case AT_MOST:
                 return v == 0 ? Double.POSITIVE_INFINITY : v > 0 ? required / v - 1 : (required - v) / -v;
             case BETWEEN: {
@@ -260,9 +281,15 @@ public final class DriveResults {
         for (DriveGraph.AppliesUse a : run.graph.applies()) {
             boolean fails = a.condition() < 0 ? !a.holds() : run.at(a.condition()) == 0;
             if (fails && (a.at() == space || a.at().parent == space)) {
-                String text = a.syntax().otherwise() == null ? "the method does not cover this pair" : a.syntax().otherwise();
-                problems.add(Diagnostic.of(Code.NOT_APPLICABLE, rate.file(), rate.syntax().method().span(),
-                                "`" + rate.syntax().method() + "` does not rate `" + rate.mesh().path() + "`: " + text + ".")
+                String text = a.syntax().otherwise() == null
+                        ? "the method does not cover this pair"
+                        : a.syntax().otherwise();
+                problems.add(Diagnostic.of(
+                                Code.NOT_APPLICABLE,
+                                rate.file(),
+                                rate.syntax().method().span(),
+                                "`" + rate.syntax().method() + "` does not rate `"
+                                        + rate.mesh().path() + "`: " + text + ".")
                         .withRelated(a.file(), a.syntax().span(), "the condition of the method"));
                 return text;
             }
@@ -281,15 +308,24 @@ public final class DriveResults {
             }
             boolean waived = waived(run, l);
             passed.put(l, waived);
-            String level = l.def().syntax().level() == null ? (l.def().ofMethod() ? "outside" : "warning") : l.def().syntax().level().text();
+            String level = l.def().syntax().level() == null
+                    ? (l.def().ofMethod() ? "outside" : "warning")
+                    : l.def().syntax().level().text();
             if (waived || level.equals("outside")) {
                 continue;
             }
-            Code code = level.equals("error") ? Code.IMPOSSIBLE : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
+            Code code = level.equals("error")
+                    ? Code.IMPOSSIBLE
+                    : level.equals("sum")
+                            ? Code.SUM_OF_SHARES
+                            : level.equals("hint") ? Code.CUSTOM_HINT : Code.LIMIT_PASSED;
             Element at = l.at().isSpace() && l.at().parent != null ? l.at().parent : l.at();
             FileId file = run.graph.fileOfElement(at);
             problems.add(Diagnostic.of(code, file, at.headSpan(), capital(limitText(run, l)) + ".")
-                    .withRelated(l.def().file(), l.def().syntax().span(), "the limit `" + l.def().syntax().name() + "`"));
+                    .withRelated(
+                            l.def().file(),
+                            l.def().syntax().span(),
+                            "the limit `" + l.def().syntax().name() + "`"));
         }
         return passed;
     }
@@ -306,12 +342,18 @@ public final class DriveResults {
         if (l.at().space() != null) {
             path = l.at().space().path();
         }
-        b.append('`').append(path.isEmpty() ? x.name().text() : path).append("`: ").append(x.meaning() == null ? x.name().text() : x.meaning());
+        b.append('`')
+                .append(path.isEmpty() ? x.name().text() : path)
+                .append("`: ")
+                .append(x.meaning() == null ? x.name().text() : x.meaning());
         if (l.left() >= 0 && l.compare() != null) {
             Unit u = l.unit();
-            b.append(" is ").append(Numbers.format(in(u, run.at(l.left())), 4)).append(u == null || text(u).isEmpty() ? "" : " " + text(u));
+            b.append(" is ")
+                    .append(Numbers.format(in(u, run.at(l.left())), 4))
+                    .append(u == null || text(u).isEmpty() ? "" : " " + text(u));
             b.append(", limit ").append(l.compare().ops().get(0).sign).append(' ');
-            b.append(Numbers.format(in(u, run.at(l.right())), 4)).append(u == null || text(u).isEmpty() ? "" : " " + text(u));
+            b.append(Numbers.format(in(u, run.at(l.right())), 4))
+                    .append(u == null || text(u).isEmpty() ? "" : " " + text(u));
         }
         if (x.otherwise() != null) {
             b.append(": ").append(x.otherwise());
@@ -331,7 +373,12 @@ public final class DriveResults {
                     continue;
                 }
                 if (today.isAfter(until)) {
-                    problems.add(Code.WAIVER_EXPIRED, layer.file(), w.span(), "This waiver ended on " + until + ": " + limitText(run, l) + ". Mend it, or extend the waiver with a reason.");
+                    problems.add(
+                            Code.WAIVER_EXPIRED,
+                            layer.file(),
+                            w.span(),
+                            "This waiver ended on " + until + ": " + limitText(run, l)
+                                    + ". Mend it, or extend the waiver with a reason.");
                     continue;
                 }
                 return true;
@@ -355,7 +402,8 @@ public final class DriveResults {
         return at.equals(said) || at.startsWith(said + ".");
     }
 
-    private List<RequirementAnswer.Passed> outside(Run run, RequirementUse u, Map<DriveGraph.LimitUse, Boolean> passed) {
+    private List<RequirementAnswer.Passed> outside(
+            Run run, RequirementUse u, Map<DriveGraph.LimitUse, Boolean> passed) {
         List<RequirementAnswer.Passed> out = new ArrayList<>();
         DriveGraph.RateUse rate = u.rate;
         if (rate == null || u.slot == null) {
@@ -364,7 +412,9 @@ public final class DriveResults {
         for (Map.Entry<DriveGraph.LimitUse, Boolean> e : passed.entrySet()) {
             DriveGraph.LimitUse l = e.getKey();
             boolean mine = l.at() == rate.space() || l.at().space() == rate.space();
-            String level = l.def().syntax().level() == null ? "" : l.def().syntax().level().text();
+            String level = l.def().syntax().level() == null
+                    ? ""
+                    : l.def().syntax().level().text();
             boolean impossible = level.equals("error") && (l.at() == rate.mesh() || l.at().parent == rate.mesh());
             if (!(mine && (level.isEmpty() || level.equals("outside"))) && !impossible) {
                 continue;
@@ -398,10 +448,11 @@ public final class DriveResults {
     // ---- load reserve and open points
 
     private double reserve(Run run, RequirementUse u, double required) {
-        if (!run.loadActsOn(u.value) || (u.form != RequirementUse.Form.AT_LEAST && u.form != RequirementUse.Form.AT_MOST)) {
+        if (!run.loadActsOn(u.value)
+                || (u.form != RequirementUse.Form.AT_LEAST && u.form != RequirementUse.Form.AT_MOST)) {
             return Double.NaN;
         }
-        Run.Scaled scaled = run.scaled();
+        java.util.function.DoubleUnaryOperator scaled = run.underLoad(u.value);
         boolean metNow = met(u.form, run.at(u.value), required, Double.NaN);
         double inner = 1;
         double outer = 1;
@@ -410,7 +461,7 @@ public final class DriveResults {
         for (int i = 0; i < 80 && !found; i++) {
             inner = outer;
             outer *= step;
-            double v = scaled.at(outer)[u.value];
+            double v = scaled.applyAsDouble(outer);
             found = Double.isNaN(v) || met(u.form, v, required, Double.NaN) != metNow;
             if (Double.isNaN(v)) {
                 return Double.NaN;
@@ -424,7 +475,7 @@ public final class DriveResults {
             if (mid == inner || mid == outer) {
                 break;
             }
-            if (met(u.form, scaled.at(mid)[u.value], required, Double.NaN) == metNow) {
+            if (met(u.form, scaled.applyAsDouble(mid), required, Double.NaN) == metNow) {
                 inner = mid;
             } else {
                 outer = mid;
@@ -448,7 +499,11 @@ public final class DriveResults {
                     ? State.SHORT
                     : margin(u.form, v, required, Double.NaN) >= tight - SLACK ? State.CLEAR : State.TIGHT;
             State here = state == State.ACCEPTED ? State.SHORT : state;
-            if (other != here && here != State.OUTSIDE && out.stream().noneMatch(b -> b.equation().equals(p.slot().decl.name) && b.reading().equals(p.reading()))) {
+            if (other != here
+                    && here != State.OUTSIDE
+                    && out.stream()
+                            .noneMatch(b -> b.equation().equals(p.slot().decl.name)
+                                    && b.reading().equals(p.reading()))) {
                 out.add(new RequirementAnswer.Band(p.slot().decl.name, p.reading(), in(u.unit, v), other));
             }
         }
@@ -474,7 +529,8 @@ public final class DriveResults {
         }
     }
 
-    private RequirementAnswer.Acceptance acceptance(Run run, RequirementUse u, RequirementUse.Acceptance a, State state, double v) {
+    private RequirementAnswer.Acceptance acceptance(
+            Run run, RequirementUse u, RequirementUse.Acceptance a, State state, double v) {
         LocalDate until = until(a.syntax().notes());
         String by = "";
         String because = "";
@@ -490,16 +546,29 @@ public final class DriveResults {
         double bound = run.at(a.bound());
         if (complete && state == State.SHORT) {
             if (today.isAfter(until)) {
-                problems.add(Code.ACCEPTANCE_EXPIRED, a.file(), a.syntax().span(), "This acceptance ended on " + until + "; `" + u.id
-                        + "` is short again. Mend it, or extend the acceptance with a reason.");
+                problems.add(
+                        Code.ACCEPTANCE_EXPIRED,
+                        a.file(),
+                        a.syntax().span(),
+                        "This acceptance ended on " + until + "; `" + u.id
+                                + "` is short again. Mend it, or extend the acceptance with a reason.");
             } else if (!met(u.form, v, bound, Double.NaN)) {
-                problems.add(Code.SHORT, a.file(), a.syntax().span(), "`" + u.id + "` is " + say(u, v) + ", below even what is accepted (" + say(u, bound) + ").");
+                problems.add(
+                        Code.SHORT,
+                        a.file(),
+                        a.syntax().span(),
+                        "`" + u.id + "` is " + say(u, v) + ", below even what is accepted (" + say(u, bound) + ").");
             } else if (!today.plusDays(30).isBefore(until)) {
-                problems.add(Code.ACCEPTANCE_SOON, a.file(), a.syntax().span(), "This acceptance ends on " + until + ", within 30 days; `" + u.id
-                        + "` will then be short. Mend it, or extend the acceptance with a reason.");
+                problems.add(
+                        Code.ACCEPTANCE_SOON,
+                        a.file(),
+                        a.syntax().span(),
+                        "This acceptance ends on " + until + ", within 30 days; `" + u.id
+                                + "` will then be short. Mend it, or extend the acceptance with a reason.");
             }
         }
-        return new RequirementAnswer.Acceptance(in(u.unit, bound), until == null ? "" : until.toString(), by, because, expired);
+        return new RequirementAnswer.Acceptance(
+                in(u.unit, bound), until == null ? "" : until.toString(), by, because, expired);
     }
 
     private static String say(RequirementUse u, double v) {
@@ -532,16 +601,35 @@ public final class DriveResults {
             for (Entry e : l.body()) {
                 if (e instanceof Entry.Accept a) {
                     complete("An acceptance", a.notes(), l.file(), a.span());
+                    if (runs.stream().anyMatch(r -> r.graph.ambiguous().contains(a))) {
+                        continue;
+                    }
                     if (!covered.contains(a)) {
-                        problems.add(Code.UNKNOWN_REQUIREMENT, l.file(), a.path().span(), "Nothing here requires `" + a.path().text() + "`, so there is nothing to accept."
-                                + backcone.engine.model.Suggest.sentence(a.path().text(), ids()));
+                        problems.add(
+                                Code.UNKNOWN_REQUIREMENT,
+                                l.file(),
+                                a.path().span(),
+                                "Nothing here requires `" + a.path().text() + "`, so there is nothing to accept."
+                                        + backcone.engine.model.Suggest.sentence(
+                                                a.path().text(), ids()));
                     } else if (!needed.contains(a) && !open.contains(a)) {
-                        problems.add(Code.ACCEPTANCE_NOT_NEEDED, l.file(), a.span(), "`" + a.path().text() + "` is met; this acceptance is no longer needed. Remove it.");
+                        problems.add(
+                                Code.ACCEPTANCE_NOT_NEEDED,
+                                l.file(),
+                                a.span(),
+                                "`" + a.path().text() + "` is met; this acceptance is no longer needed. Remove it.");
                     }
                 } else if (e instanceof Entry.Waive w) {
                     complete("A waiver", w.notes(), l.file(), w.span());
-                    if (!usedWaivers.contains(w) && runs.stream().noneMatch(r -> r.graph.limits().stream().anyMatch(x -> names(w.path().text(), x)))) {
-                        problems.add(Code.UNKNOWN_REQUIREMENT, l.file(), w.path().span(), "There is no limit `" + w.path().text() + "` to waive.");
+                    if (!usedWaivers.contains(w)
+                            && runs.stream()
+                                    .noneMatch(r -> r.graph.limits().stream()
+                                            .anyMatch(x -> names(w.path().text(), x)))) {
+                        problems.add(
+                                Code.UNKNOWN_REQUIREMENT,
+                                l.file(),
+                                w.path().span(),
+                                "There is no limit `" + w.path().text() + "` to waive.");
                     }
                 }
             }
@@ -562,11 +650,17 @@ public final class DriveResults {
         if (notes.stream().noneMatch(n -> n instanceof Note.By b && !b.person().isBlank())) {
             lacks.add("a person (`by \"…\"`)");
         }
-        if (notes.stream().noneMatch(n -> n instanceof Note.Because b && !b.text().isBlank())) {
+        if (notes.stream()
+                .noneMatch(n -> n instanceof Note.Because b && !b.text().isBlank())) {
             lacks.add("a reason (`because \"…\"`)");
         }
         if (!lacks.isEmpty()) {
-            problems.add(Code.NEEDS_REASON, file, span, what + " counts only with date, person and reason; this one lacks " + String.join(" and ", lacks) + ".");
+            problems.add(
+                    Code.NEEDS_REASON,
+                    file,
+                    span,
+                    what + " counts only with date, person and reason; this one lacks " + String.join(" and ", lacks)
+                            + ".");
         }
     }
 
@@ -582,29 +676,54 @@ public final class DriveResults {
         switch (r.state()) {
             case SHORT:
                 if (u.asserted) {
-                    problems.add(Code.ASSERT_FAILED, r.file(), at, u.form == RequirementUse.Form.CONDITION
-                            ? "This was stated as a fact and does not hold: " + u.meaning + "."
-                            : "`" + r.id() + "` was stated as " + bound + " and is " + value + ".");
+                    problems.add(
+                            Code.ASSERT_FAILED,
+                            r.file(),
+                            at,
+                            u.form == RequirementUse.Form.CONDITION
+                                    ? "This was stated as a fact and does not hold: " + u.meaning + "."
+                                    : "`" + r.id() + "` was stated as " + bound + " and is " + value + ".");
                 } else if (u.form == RequirementUse.Form.CONDITION) {
                     problems.add(Code.SHORT, r.file(), at, "This requirement does not hold: " + u.meaning + ".");
                 } else {
-                    problems.add(decides(run, u, Diagnostic.of(Code.SHORT, r.file(), at, "`" + r.id() + "` is " + value + ", required " + bound + ": short by "
-                            + Numbers.format(Math.abs(r.margin()) * 100, 2) + " %" + reserveText(r) + ".")));
+                    problems.add(decides(
+                            run,
+                            u,
+                            Diagnostic.of(
+                                    Code.SHORT,
+                                    r.file(),
+                                    at,
+                                    "`" + r.id() + "` is " + value + ", required " + bound + ": " + shortBy(r)
+                                            + reserveText(r) + ".")));
                 }
                 break;
             case OUTSIDE:
                 for (RequirementAnswer.Passed p : r.outside()) {
                     if (!p.waived()) {
-                        problems.add(Code.OUTSIDE, r.file(), at, "`" + r.id() + "` is " + value + ", but outside the method: " + p.message() + ".");
+                        problems.add(
+                                Code.OUTSIDE,
+                                r.file(),
+                                at,
+                                "`" + r.id() + "` is " + value + ", but outside the method: " + p.message() + ".");
                     }
                 }
                 break;
             case TIGHT:
-                problems.add(Code.TIGHT, r.file(), at, "`" + r.id() + "` is " + value + ", required " + bound + ": met with " + percent(r.margin()) + reserveText(r) + ".");
+                problems.add(
+                        Code.TIGHT,
+                        r.file(),
+                        at,
+                        "`" + r.id() + "` is " + value + ", required " + bound + ": met with " + percent(r.margin())
+                                + reserveText(r) + ".");
                 break;
             case ACCEPTED: {
                 RequirementAnswer.Acceptance a = r.accepted();
-                problems.add(Code.ACCEPTED, r.file(), at, "`" + r.id() + "` is " + value + ", required " + bound + ": accepted until " + (a == null ? "" : a.until() + " by " + a.by()) + ".");
+                problems.add(
+                        Code.ACCEPTED,
+                        r.file(),
+                        at,
+                        "`" + r.id() + "` is " + value + ", required " + bound + ": accepted until "
+                                + (a == null ? "" : a.until() + " by " + a.by()) + ".");
                 break;
             }
             default:
@@ -612,8 +731,21 @@ public final class DriveResults {
         }
     }
 
+    private static String shortBy(RequirementAnswer r) {
+        if (r.comparison().equals("between")) {
+            boolean below = r.value() < r.required();
+            double off = below ? r.required() - r.value() : r.value() - r.upper();
+            return (below ? "below it by " : "above it by ")
+                    + Numbers.format(off, 3)
+                    + (r.unit().isEmpty() ? "" : " " + r.unit());
+        }
+        return "short by " + Numbers.format(Math.abs(r.margin()) * 100, 2) + " %";
+    }
+
     private static String reserveText(RequirementAnswer r) {
-        return Double.isNaN(r.loadReserve()) ? "" : ", just met at " + Numbers.format(r.loadReserve(), 3) + " times the load";
+        return Double.isNaN(r.loadReserve())
+                ? ""
+                : ", just met at " + Numbers.format(r.loadReserve(), 3) + " times the load";
     }
 
     static String percent(double fraction) {
@@ -626,6 +758,12 @@ public final class DriveResults {
     }
 
     private void missingInput(Slot s, Set<String> waiting) {
+        if (s.hasRelations()
+                && problems.all().stream()
+                        .anyMatch(d -> d.severity() == backcone.engine.diagnostics.Severity.ERROR
+                                && (d.code() == Code.UNKNOWN_NAME || d.code() == Code.UNKNOWN_KIND))) {
+            return; // a shaft or mesh that is not understood leaves the train open; that is said where it stands
+        }
         Element e = s.owner;
         FileId file = new FileId("");
         Span span = Span.NONE;
@@ -642,8 +780,12 @@ public final class DriveResults {
                 ? String.join(", ", ids)
                 : ids.get(0) + ", " + ids.get(1) + " and " + (ids.size() - 2) + " more";
         String hint = s.decl.neededBecause == null ? "" : " It is never assumed: " + s.decl.neededBecause + ".";
-        problems.add(Code.MISSING_INPUT, file, uniqueSpan(span, s), "`" + s.path() + "` (" + (s.decl.meaning == null ? s.decl.name : s.decl.meaning)
-                + ") is not given; " + who + (ids.size() == 1 ? " waits for it." : " wait for it.") + hint);
+        problems.add(
+                Code.MISSING_INPUT,
+                file,
+                uniqueSpan(span, s),
+                "`" + s.path() + "` (" + (s.decl.meaning == null ? s.decl.name : s.decl.meaning) + ") is not given; "
+                        + who + (ids.size() == 1 ? " waits for it." : " wait for it.") + hint);
     }
 
     /** Several inputs missing in one block are several findings at one place; their spans differ by one so that none hides another. */
@@ -677,7 +819,13 @@ public final class DriveResults {
                     }
                 }
                 Unit u = run.graph.shownUnit(s);
-                unrequired.add(new CheckAnswer(id, s.decl.meaning == null ? s.decl.name : s.decl.meaning, in(u, v), u == null ? "" : text(u), r.syntax().method().text(), open));
+                unrequired.add(new CheckAnswer(
+                        id,
+                        s.decl.meaning == null ? s.decl.name : s.decl.meaning,
+                        in(u, v),
+                        u == null ? "" : text(u),
+                        r.syntax().method().text(),
+                        open));
             }
         }
     }

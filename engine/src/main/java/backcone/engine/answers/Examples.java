@@ -1,5 +1,6 @@
 package backcone.engine.answers;
 
+import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.eval.Run;
 import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.ExampleGraph;
@@ -8,7 +9,6 @@ import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
 import backcone.engine.graph.Slot;
 import backcone.engine.graph.Tape;
-import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.model.BodyDef;
 import backcone.engine.model.Decl;
 import backcone.engine.model.KindDef;
@@ -31,14 +31,27 @@ public final class Examples {
 
     /** One {@code gives}: NaN where open; deviation is relative. */
     public record Outcome(
-            String owner, String example, String path, double got, double expected, double tolerance, String unit, boolean met, String why,
-            FileId file, Entry.Gives syntax) {
+            String owner,
+            String example,
+            String path,
+            double got,
+            double expected,
+            double tolerance,
+            String unit,
+            boolean met,
+            String why,
+            FileId file,
+            Entry.Gives syntax) {
         public double deviation() {
             return expected == 0 ? Math.abs(got) : Math.abs(got / expected - 1);
         }
     }
 
-    public record Report(List<Outcome> outcomes, List<Diagnostic> problems, Set<Decl> reachedEquations, Set<TableDef> reachedTables) {}
+    public record Report(
+            List<Outcome> outcomes,
+            List<Diagnostic> problems,
+            Set<Decl> reachedEquations,
+            Set<TableDef> reachedTables) {}
 
     /** The examples of all files for which {@code wanted} holds. */
     public static Report run(Shapes shapes, java.util.function.Predicate<FileId> wanted) {
@@ -61,7 +74,12 @@ public final class Examples {
     }
 
     private static void all(
-            Shapes shapes, String kind, @Nullable MethodDef method, BodyDef body, java.util.function.Predicate<FileId> wanted, Report report) {
+            Shapes shapes,
+            String kind,
+            @Nullable MethodDef method,
+            BodyDef body,
+            java.util.function.Predicate<FileId> wanted,
+            Report report) {
         if (!wanted.test(body.file)) {
             return;
         }
@@ -75,7 +93,8 @@ public final class Examples {
         }
     }
 
-    private static void one(Shapes shapes, String kind, @Nullable MethodDef method, BodyDef body, Entry.Example x, Report report) {
+    private static void one(
+            Shapes shapes, String kind, @Nullable MethodDef method, BodyDef body, Entry.Example x, Report report) {
         Problems problems = new Problems();
         ExampleGraph g = ExampleGraph.build(shapes, kind, method, x, body.file, problems, false);
         Run run = new Run(g.graph);
@@ -83,19 +102,38 @@ public final class Examples {
         for (ExampleGraph.Expectation e : g.expectations) {
             report.outcomes.add(outcome(run, body, x, e));
             reach(run, e.value(), report);
+            Slot named = run.graph.find("it." + e.syntax().path().text());
+            if (named != null && named.factSpan() == null) {
+                report.reachedEquations.add(named.decl);
+            }
         }
     }
 
     private static Outcome outcome(Run run, BodyDef body, Entry.Example x, ExampleGraph.Expectation e) {
         String path = e.syntax().path().text();
         if (e.wordExpected() != null) {
-            String found = e.word() != null ? e.word() : Double.isNaN(run.at(e.value())) ? "open" : e.words().get((int) run.at(e.value()));
+            String found = e.word() != null
+                    ? e.word()
+                    : Double.isNaN(run.at(e.value())) ? "open" : e.words().get((int) run.at(e.value()));
             boolean met = e.wordExpected().equals(found);
-            return new Outcome(body.owner, x.title(), path, Double.NaN, Double.NaN, 0, "", met, met ? "" : "found " + found, body.file, e.syntax());
+            return new Outcome(
+                    body.owner,
+                    x.title(),
+                    path,
+                    Double.NaN,
+                    Double.NaN,
+                    0,
+                    "",
+                    met,
+                    met ? "" : "found " + found,
+                    body.file,
+                    e.syntax());
         }
         double got = run.at(e.value());
         double expected = run.at(e.expected());
-        double tolerance = e.within() < 0 ? 1e-9 * Math.abs(expected) : run.at(e.within()) * (e.relative() ? Math.abs(expected) : 1);
+        double tolerance = e.within() < 0
+                ? 1e-9 * Math.abs(expected)
+                : run.at(e.within()) * (e.relative() ? Math.abs(expected) : 1);
         boolean met = Math.abs(got - expected) <= tolerance * (1 + 1e-9) + 1e-15;
         String why = "";
         if (Double.isNaN(got)) {
@@ -106,8 +144,18 @@ public final class Examples {
             why = b.toString();
         }
         Unit u = e.dimension() == null ? null : run.graph.shownUnit(e.dimension());
-        return new Outcome(body.owner, x.title(), path, DriveResults.in(u, got), DriveResults.in(u, expected), u == null ? tolerance : tolerance * u.denominator() / u.numerator(),
-                u == null ? "" : DriveResults.text(u), met, why, body.file, e.syntax());
+        return new Outcome(
+                body.owner,
+                x.title(),
+                path,
+                DriveResults.in(u, got),
+                DriveResults.in(u, expected),
+                u == null ? tolerance : tolerance * u.denominator() / u.numerator(),
+                u == null ? "" : DriveResults.text(u),
+                met,
+                why,
+                body.file,
+                e.syntax());
     }
 
     /** Equations and tables on the way to a value, over the arms taken. */
@@ -124,9 +172,11 @@ public final class Examples {
             if (!seen.add(r)) {
                 continue;
             }
-            for (Slot s : List.of(java.util.Optional.ofNullable(g.ownerOf(r)), java.util.Optional.ofNullable(g.near(r))).stream()
-                    .flatMap(java.util.Optional::stream)
-                    .toList()) {
+            for (Slot s :
+                    List.of(java.util.Optional.ofNullable(g.ownerOf(r)), java.util.Optional.ofNullable(g.near(r)))
+                            .stream()
+                            .flatMap(java.util.Optional::stream)
+                            .toList()) {
                 if (s.factSpan() == null) {
                     report.reachedEquations.add(s.decl);
                 }

@@ -31,6 +31,9 @@ final class Facts {
         for (DriveGraph.InRange r : run.graph.ranges()) {
             range(r);
         }
+        if (problems.all().stream().anyMatch(d -> d.code() == Code.SPLIT_TRAIN)) {
+            return; // speeds around a ring can't agree; the ring is said already
+        }
         for (DriveGraph.Agreement a : run.graph.agreements()) {
             agree(a);
         }
@@ -45,11 +48,20 @@ final class Facts {
         Span span = s.factSpan();
         FileId file = s.factFile();
         if (span != null && file != null) {
-            problems.add(Code.NOT_WHOLE, file, span, "`" + s.decl.name + "` is a whole number; found " + Numbers.format(v, 8) + ". Write " + near(v) + ".");
+            problems.add(
+                    Code.NOT_WHOLE,
+                    file,
+                    span,
+                    "`" + s.decl.name + "` is a whole number; found " + Numbers.format(v, 8) + ". Write " + near(v)
+                            + ".");
         } else {
             FileId f = run.graph.fileOfElement(s.owner);
-            problems.add(Code.NOT_WHOLE, f, s.owner.headSpan(), "`" + s.path() + "` would be " + Numbers.format(v, 8)
-                    + ", which is not whole; give it as " + near(v) + ", or change what it follows from.");
+            problems.add(
+                    Code.NOT_WHOLE,
+                    f,
+                    s.owner.headSpan(),
+                    "`" + s.path() + "` would be " + Numbers.format(v, 8) + ", which is not whole; give it as "
+                            + near(v) + ", or change what it follows from.");
         }
     }
 
@@ -61,7 +73,10 @@ final class Facts {
         double v = run.at(r.register());
         double lo = run.at(r.low());
         double hi = run.at(r.high());
-        if (Double.isNaN(v) || Double.isNaN(lo) || Double.isNaN(hi) || (v >= lo - 1e-9 * Math.abs(lo) && v <= hi + 1e-9 * Math.abs(hi))) {
+        if (Double.isNaN(v)
+                || Double.isNaN(lo)
+                || Double.isNaN(hi)
+                || (v >= lo - 1e-9 * Math.abs(lo) && v <= hi + 1e-9 * Math.abs(hi))) {
             return;
         }
         Slot s = r.slot();
@@ -69,8 +84,12 @@ final class Facts {
         FileId file = s.factFile();
         if (span != null && file != null) {
             Unit u = run.graph.shownUnit(s);
-            problems.add(Code.OUT_OF_RANGE, file, span, "`" + s.decl.name + "` is " + show(u, v) + "; it lies between " + show(u, lo) + " and " + show(u, hi)
-                    + ". Check the number and its unit.");
+            problems.add(
+                    Code.OUT_OF_RANGE,
+                    file,
+                    span,
+                    "`" + s.decl.name + "` is " + show(u, v) + "; it lies between " + show(u, lo) + " and "
+                            + show(u, hi) + ". Check the number and its unit.");
         }
     }
 
@@ -82,7 +101,9 @@ final class Facts {
     private void agree(DriveGraph.Agreement a) {
         double l = run.at(a.left());
         double r = run.at(a.right());
-        if (Double.isNaN(l) || Double.isNaN(r) || Math.abs(l - r) <= a.within() * Math.max(Math.abs(l), Math.abs(r)) + 1e-12) {
+        if (Double.isNaN(l)
+                || Double.isNaN(r)
+                || Math.abs(l - r) <= a.within() * Math.max(Math.abs(l), Math.abs(r)) + 1e-12) {
             return;
         }
         List<Slot> given = new ArrayList<>();
@@ -94,11 +115,15 @@ final class Facts {
         StringBuilder b = new StringBuilder();
         for (Slot s : a.slots()) {
             b.append(b.length() == 0 ? "" : ", ").append('`').append(s.path()).append("` ");
-            b.append(s.factSpan() != null ? "= " : "comes to ").append(show(run.graph.shownUnit(s), run.at(s.register())));
+            b.append(s.factSpan() != null ? "= " : "comes to ")
+                    .append(show(run.graph.shownUnit(s), run.at(s.register())));
         }
         double off = Math.abs(l - r) / Math.max(Math.abs(l), Math.abs(r)) * 100;
-        String meaning = a.def().syntax().meaning() == null ? "" : " (" + a.def().syntax().meaning() + ")";
-        String text = "These contradict each other" + meaning + " by " + Numbers.format(off, 2) + " %: " + b + ". Give one less, or correct one.";
+        String meaning = a.def().syntax().meaning() == null
+                ? ""
+                : " (" + a.def().syntax().meaning() + ")";
+        String text = "These contradict each other" + meaning + " by " + Numbers.format(off, 2) + " %: " + b
+                + ". Give one less, or correct one.";
         FileId file;
         Span span;
         if (given.isEmpty()) {
@@ -111,7 +136,9 @@ final class Facts {
         }
         Diagnostic d = Diagnostic.of(Code.DISAGREE, file, span, text);
         for (int i = 0; i + 1 < given.size(); i++) {
-            d = d.withRelated(java.util.Objects.requireNonNull(given.get(i).factFile()), java.util.Objects.requireNonNull(given.get(i).factSpan()),
+            d = d.withRelated(
+                    java.util.Objects.requireNonNull(given.get(i).factFile()),
+                    java.util.Objects.requireNonNull(given.get(i).factSpan()),
                     "`" + given.get(i).path() + "` is given here");
         }
         problems.add(d.withRelated(a.def().file(), a.def().syntax().span(), "the relation between them"));

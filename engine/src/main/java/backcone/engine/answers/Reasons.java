@@ -48,7 +48,9 @@ final class Reasons {
                 } else {
                     broken |= why instanceof Val.Bad;
                     if (why instanceof Val.Group g) {
-                        faults.put("empty " + g.collection(), new Fault(op, null, "there is no `" + g.collection() + "` yet"));
+                        faults.put(
+                                "empty " + g.collection(),
+                                new Fault(op, null, "there is no `" + g.collection() + "` yet"));
                     }
                 }
             } else {
@@ -75,24 +77,32 @@ final class Reasons {
             case ACOS:
                 return "an angle whose sine or cosine would be " + Numbers.format(run.at(tape.a(r)), 5) + where;
             case POW:
-                return "a power that is no number (" + Numbers.format(run.at(tape.a(r)), 4) + " ^ " + Numbers.format(run.at(tape.b(r)), 4) + ")" + where;
+                return "a power that is no number (" + Numbers.format(run.at(tape.a(r)), 4) + " ^ "
+                        + Numbers.format(run.at(tape.b(r)), 4) + ")" + where;
             case ROOT:
             case SETTLE: {
                 DriveGraph.Unknown u = graph.unknown(r);
                 String text = u == null ? null : u.otherwise();
                 String name = u == null ? "" : "`" + u.slot().path() + "`: ";
-                return name + (text != null ? text : op == Op.ROOT
-                        ? "the equation has no solution between " + Numbers.format(run.at(tape.a(r)), 4) + " and " + Numbers.format(run.at(tape.b(r)), 4)
-                        : "the iteration does not settle");
+                return name
+                        + (text != null
+                                ? text
+                                : op == Op.ROOT
+                                        ? "the equation has no solution between " + Numbers.format(run.at(tape.a(r)), 4)
+                                                + " and " + Numbers.format(run.at(tape.b(r)), 4)
+                                        : "the iteration does not settle");
             }
             case TABLE:
             case NEXT_KEY:
             case NEAREST_KEY: {
                 TableDef t = graph.tableAt(r);
                 Interpolation in = tape.table(tape.b(r));
-                String unit = t == null || t.units.get(0) == null ? "" : " " + t.units.get(0).text();
-                return "the table `" + (t == null ? "" : t.name()) + "` holds from " + Numbers.format(in.first(), 6) + " to " + Numbers.format(in.last(), 6)
-                        + unit + "; asked for " + Numbers.format(run.at(tape.a(r)), 6) + unit + where;
+                String unit = t == null || t.units.get(0) == null
+                        ? ""
+                        : " " + t.units.get(0).text();
+                return "the table `" + (t == null ? "" : t.name()) + "` holds from " + Numbers.format(in.first(), 6)
+                        + " to " + Numbers.format(in.last(), 6) + unit + "; asked for "
+                        + Numbers.format(run.at(tape.a(r)), 6) + unit + where;
             }
             default:
                 return "a number out of range" + where;
@@ -113,6 +123,7 @@ final class Reasons {
     }
 
     static RequirementAnswer.Missing missing(Slot s) {
-        return new RequirementAnswer.Missing(s.path(), s.decl.meaning == null ? s.decl.name : s.decl.meaning, kindName(s));
+        return new RequirementAnswer.Missing(
+                s.path(), s.decl.meaning == null ? s.decl.name : s.decl.meaning, kindName(s));
     }
 }

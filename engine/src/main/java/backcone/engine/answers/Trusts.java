@@ -62,7 +62,9 @@ final class Trusts {
 
     /** Plain renamings, lets, checks and pure numbers that a drive replaces may lack a source. */
     private static boolean counts(Decl d) {
-        return d.role == Decl.Role.QUANTITY && (d.per != null || !(d.value instanceof Expr.Path)) && !(d.how == Entry.Given.DEFAULT && d.per == null);
+        return d.role == Decl.Role.QUANTITY
+                && (d.per != null || !(d.value instanceof Expr.Path))
+                && !(d.how == Entry.Given.DEFAULT && d.per == null);
     }
 
     private void note(Trust t, String what) {
@@ -72,7 +74,8 @@ final class Trusts {
         }
     }
 
-    @Nullable String weakest() {
+    @Nullable
+    String weakest() {
         return weakest == null ? null : weakest.word();
     }
 

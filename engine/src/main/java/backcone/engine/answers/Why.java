@@ -6,6 +6,12 @@ import backcone.engine.eval.Run;
 public final class Why {
     private Why() {}
 
+    /** Whether something went wrong, as opposed to something not being given yet. */
+    public static boolean isFault(Run run, int register) {
+        Reasons.Why w = new Reasons(run).of(register);
+        return w.open().isEmpty();
+    }
+
     public static String open(Run run, int register) {
         Reasons.Why w = new Reasons(run).of(register);
         StringBuilder b = new StringBuilder();

@@ -61,7 +61,6 @@ public enum Code {
     // 5xxx requirements
     SHORT(5001, Severity.ERROR, "a requirement that is not met"),
     OUTSIDE(5002, Severity.ERROR, "a result outside the validity of its method"),
-    OPEN(5003, Severity.INFORMATION, "a requirement that cannot be evaluated yet"),
     TIGHT(5004, Severity.HINT, "a requirement met with little margin"),
     ACCEPTED(5005, Severity.HINT, "a shortfall accepted until a date"),
     ACCEPTANCE_EXPIRED(5006, Severity.ERROR, "an acceptance past its date"),
@@ -76,7 +75,7 @@ public enum Code {
     NOT_APPLICABLE(5015, Severity.INFORMATION, "a method that does not cover this pair"),
     UNKNOWN_REQUIREMENT(5016, Severity.ERROR, "a deviation for something that is not required"),
     // 6xxx handbook
-    NO_SOURCE(6001, Severity.ERROR, "an equation without its source"),
+    NO_SOURCE(6001, Severity.WARNING, "an equation without its source"),
     EXAMPLE_FAILED(6002, Severity.ERROR, "a worked example that is not met"),
     NOT_SOLVABLE(6003, Severity.ERROR, "a relation that cannot be solved for a name"),
     BAD_TABLE(6004, Severity.ERROR, "a table that cannot be read"),

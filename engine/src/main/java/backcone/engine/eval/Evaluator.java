@@ -9,33 +9,72 @@ public final class Evaluator {
     private static final int MOST_STEPS = 200;
     private final Tape tape;
     private final double[] value;
+    private final int[] order;
+    private final int[] blockEnd;
 
     public Evaluator(Tape tape) {
         this.tape = tape;
         this.value = new double[tape.size()];
+        this.order = new int[tape.length()];
+        this.blockEnd = new int[tape.length()];
+        for (int i = 0; i < order.length; i++) {
+            order[i] = tape.at(i);
+            blockEnd[i] = tape.blockEnd(i);
+        }
+    }
+
+    /**
+     * Runs only what of {@code register} changes with {@code cause}; everything else keeps its value from {@code base}.
+     * Same digits as a full run.
+     */
+    public Evaluator(Tape tape, double[] base, int register, int cause) {
+        this.tape = tape;
+        this.value = base.clone();
+        boolean[] keep = tape.between(register, cause);
+        int n = 0;
+        for (int i = 0; i < tape.length(); i++) {
+            n += keep[tape.at(i)] ? 1 : 0;
+        }
+        this.order = new int[n];
+        this.blockEnd = new int[n];
+        int[] start = new int[tape.size()];
+        int k = 0;
+        for (int i = 0; i < tape.length(); i++) {
+            int r = tape.at(i);
+            if (keep[r]) {
+                order[k] = r;
+                Op op = tape.op(r);
+                if (op == Op.ROOT || op == Op.SETTLE) {
+                    start[r] = k;
+                } else if (op == Op.END) {
+                    blockEnd[start[tape.a(r)]] = k;
+                }
+                k++;
+            }
+        }
     }
 
     /** Runs with the constants and inputs of the tape. {@code inputs} replaces INPUT registers where not null. */
     public double[] run(double load, double @Nullable [] inputs) {
-        span(0, tape.length(), load, inputs);
+        span(0, order.length, load, inputs);
         return value;
     }
 
     private void span(int from, int to, double load, double @Nullable [] inputs) {
         for (int i = from; i < to; i++) {
-            int r = tape.at(i);
+            int r = order[i];
             Op op = tape.op(r);
             if (op == Op.ROOT) {
-                int end = tape.blockEnd(i);
+                int end = blockEnd[i];
                 root(i, end, load, inputs);
                 i = end;
             } else if (op == Op.SETTLE) {
-                int end = tape.blockEnd(i);
+                int end = blockEnd[i];
                 settle(i, end, load, inputs);
                 i = end;
             } else if (op != Op.END) {
                 double v = step(op, r, load, inputs);
-                value[r] = v - v == 0 ? v : Double.NaN;
+                value[r] = Double.isFinite(v) ? v : Double.NaN;
             }
         }
     }
@@ -55,7 +94,7 @@ public final class Evaluator {
                 return -v[tape.a(r)];
             case NOT: {
                 double x = v[tape.a(r)];
-                return x != x ? x : x == 0 ? 1 : 0;
+                return Double.isNaN(x) ? x : x == 0 ? 1 : 0;
             }
             case ABS:
                 return Math.abs(v[tape.a(r)]);
@@ -124,7 +163,7 @@ public final class Evaluator {
             }
             case SELECT: {
                 double x = v[tape.a(r)];
-                return x != x ? x : x != 0 ? v[tape.b(r)] : v[tape.c(r)];
+                return Double.isNaN(x) ? x : x != 0 ? v[tape.b(r)] : v[tape.c(r)];
             }
             case TABLE:
                 return tape.table(tape.b(r)).at(v[tape.a(r)]);
@@ -134,7 +173,7 @@ public final class Evaluator {
                 return tape.table(tape.b(r)).nextKey(v[tape.a(r)]);
             case LISTED_KEY: {
                 double x = v[tape.a(r)];
-                return x != x ? x : tape.table(tape.b(r)).listed(x);
+                return Double.isNaN(x) ? x : tape.table(tape.b(r)).listed(x);
             }
             default:
                 throw new IllegalStateException(op.name());
@@ -156,7 +195,7 @@ public final class Evaluator {
     }
 
     private static double compare(Op op, double x, double y) {
-        if (x != x || y != y) {
+        if (Double.isNaN(x) || Double.isNaN(y)) {
             return Double.NaN;
         }
         boolean is;
@@ -197,14 +236,14 @@ public final class Evaluator {
     }
 
     private double residual(int i, int end, double x, double load, double @Nullable [] inputs) {
-        value[tape.at(i)] = x;
+        value[order[i]] = x;
         span(i + 1, end, load, inputs);
-        return value[tape.b(tape.at(end))];
+        return value[tape.b(order[end])];
     }
 
     /** Bracketed root by the Illinois rule with bisection as its net; the sign change is checked before. */
     private void root(int i, int end, double load, double @Nullable [] inputs) {
-        int r = tape.at(i);
+        int r = order[i];
         double lo = value[tape.a(r)];
         double hi = value[tape.b(r)];
         double flo = residual(i, end, lo, load, inputs);
@@ -214,7 +253,7 @@ public final class Evaluator {
             x = lo;
         } else if (fhi == 0) {
             x = hi;
-        } else if (flo < 0 != fhi < 0 && flo - flo == 0 && fhi - fhi == 0) {
+        } else if (flo < 0 != fhi < 0 && Double.isFinite(flo) && Double.isFinite(fhi)) {
             x = bracketed(i, end, lo, hi, flo, fhi, load, inputs);
         }
         value[r] = x;
@@ -240,7 +279,7 @@ public final class Evaluator {
                 break;
             }
             double f = residual(i, end, x, load, inputs);
-            if (f != f) {
+            if (Double.isNaN(f)) {
                 return Double.NaN;
             }
             if (f == 0) {
@@ -267,13 +306,13 @@ public final class Evaluator {
     }
 
     private void settle(int i, int end, double load, double @Nullable [] inputs) {
-        int r = tape.at(i);
+        int r = order[i];
         double x = value[tape.a(r)];
         double tolerance = value[tape.b(r)];
         int most = (int) tape.constant(r);
         for (int k = 0; k < most; k++) {
             double next = residual(i, end, x, load, inputs);
-            if (next != next) {
+            if (Double.isNaN(next)) {
                 break;
             }
             if (Math.abs(next - x) <= tolerance) {

@@ -8,6 +8,7 @@ public final class Run {
     public final DriveGraph graph;
     private final double[] inputs;
     private final double[] value;
+    private final java.util.Map<String, double[]> others = new java.util.HashMap<>();
 
     public Run(DriveGraph graph) {
         this.graph = graph;
@@ -27,24 +28,19 @@ public final class Run {
         return new Faults(graph.tape(), value);
     }
 
-    /** The value of one register with the load multiplied by a factor. */
-    public final class Scaled {
-        private final Evaluator evaluator = new Evaluator(graph.tape());
-
-        public double[] at(double load) {
-            return evaluator.run(load, inputs);
-        }
+    /** One register as a function of the factor on the load; only what changes with the load is computed again. */
+    public java.util.function.DoubleUnaryOperator underLoad(int register) {
+        Evaluator e = new Evaluator(graph.tape(), value, register, graph.loadRegister());
+        return load -> e.run(load, inputs)[register];
     }
 
-    public Scaled scaled() {
-        return new Scaled();
-    }
-
-    /** All registers with one input replaced. */
+    /** All registers with one input replaced; asked again for the same input, the answer is kept. */
     public double[] with(int input, double v) {
-        double[] other = inputs.clone();
-        other[input] = v;
-        return new Evaluator(graph.tape()).run(1, other).clone();
+        return others.computeIfAbsent(input + "=" + v, k -> {
+            double[] other = inputs.clone();
+            other[input] = v;
+            return new Evaluator(graph.tape()).run(1, other).clone();
+        });
     }
 
     /** Whether load acts on a register at all. */

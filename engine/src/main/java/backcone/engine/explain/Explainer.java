@@ -56,7 +56,9 @@ public final class Explainer {
     public Optional<List<Explanation>> rating(String name) {
         for (DriveGraph.RateUse r : graph.rates()) {
             Element space = r.space();
-            if (space == null || !(r.id().equals(name) || (r.mesh().path().equals(name) && r.mesh().path().length() > 0))) {
+            if (space == null
+                    || !(r.id().equals(name)
+                            || (r.mesh().path().equals(name) && r.mesh().path().length() > 0))) {
                 continue;
             }
             Set<Slot> all = new LinkedHashSet<>();
@@ -67,7 +69,8 @@ public final class Explainer {
             Run run = new Run(graph);
             List<Slot> order = new ArrayList<>(all);
             // given values first, then by the order in which the tape computes them
-            order.sort(Comparator.comparingInt((Slot s) -> s.factSpan() != null ? 0 : 1).thenComparingInt(Slot::register));
+            order.sort(Comparator.comparingInt((Slot s) -> s.factSpan() != null ? 0 : 1)
+                    .thenComparingInt(Slot::register));
             List<Explanation> out = new ArrayList<>();
             for (Slot s : order) {
                 out.add(flat(s, run));
@@ -134,8 +137,22 @@ public final class Explainer {
     }
 
     private static Explanation with(Explanation e, List<Explanation> from, @Nullable String remark) {
-        return new Explanation(e.name(), e.value(), e.unit(), e.text(), e.symbol(), e.meaning(), e.source(), e.trust(), e.equation(), e.numbers(), e.status(), remark,
-                e.file(), e.span(), List.copyOf(from));
+        return new Explanation(
+                e.name(),
+                e.value(),
+                e.unit(),
+                e.text(),
+                e.symbol(),
+                e.meaning(),
+                e.source(),
+                e.trust(),
+                e.equation(),
+                e.numbers(),
+                e.status(),
+                remark,
+                e.file(),
+                e.span(),
+                List.copyOf(from));
     }
 
     /** The slots named in the part of the equation that was taken, in order of their first use. */
@@ -171,20 +188,23 @@ public final class Explainer {
         } else if (v instanceof Val.Day t) {
             word = t.value();
         }
-        Status status = status(s, fact, v, value, word);
+        Status status = status(run, s, fact, v, value, word);
         String remark = null;
         if (status == Status.OPEN || status == Status.FAULT) {
             remark = v instanceof Val.Num n ? Why.open(run, n.register()) : "not given";
         }
         Texts text = new Texts(graph, run, texts, s);
-        String equation = fact != null ? text.given(fact) : s.relationText() != null ? text.of(s.relationFile(), s.relationSpan()) : d.value == null ? null : text.equation();
+        String equation = fact != null
+                ? text.given(fact)
+                : s.relationText() != null
+                        ? text.of(s.relationFile(), s.relationSpan())
+                        : d.value == null ? null : text.equation();
         String numbers = fact != null || d.value == null && s.relationText() == null ? null : text.numbers();
         if (s.relationText() != null) {
             remark = remark == null ? "solved for " + d.symbolOrName() : remark;
         } else if (fact == null && text.taken() != null) {
             remark = remark == null ? text.taken() : remark;
         }
-        boolean isFact = fact != null;
         return new Explanation(
                 s.path(),
                 unit == null || Double.isNaN(value) ? value : unit.fromBase(value),
@@ -192,14 +212,14 @@ public final class Explainer {
                 word,
                 d.symbol,
                 d.meaning,
-                isFact ? provenance(fact.notes()) : source(s),
-                isFact || (d.value == null && s.relationText() == null) || renaming(d) ? null : trust(s).word(),
+                fact != null ? provenance(fact.notes()) : source(s),
+                fact != null || (d.value == null && s.relationText() == null) || renaming(d) ? null : trust(s).word(),
                 equation,
                 numbers,
                 status,
                 remark,
-                isFact ? fact.file() : d.file,
-                isFact ? fact.span() : d.span,
+                fact != null ? fact.file() : d.file,
+                fact != null ? fact.span() : d.span,
                 List.of());
     }
 
@@ -207,9 +227,10 @@ public final class Explainer {
         return d.per == null && (d.value instanceof Expr.Path || d.role != Decl.Role.QUANTITY);
     }
 
-    private static Status status(Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
-        if (v instanceof Val.Num && Double.isNaN(value)) {
-            return s.isGiven() || s.decl.value != null || s.relationText() != null ? Status.FAULT : Status.OPEN;
+    private static Status status(
+            Run run, Slot s, Slot.@Nullable Fact fact, @Nullable Val v, double value, @Nullable String word) {
+        if (v instanceof Val.Num n && Double.isNaN(value)) {
+            return Why.isFault(run, n.register()) ? Status.FAULT : Status.OPEN;
         }
         if (!(v instanceof Val.Num) && word == null) {
             return Status.OPEN;
@@ -234,8 +255,12 @@ public final class Explainer {
     }
 
     private static @Nullable Unit authorUnit(Expr e) {
-        Expr x = e instanceof Expr.Toleranced t ? t.nominal() : e instanceof Expr.Range r ? r.low() : e instanceof Expr.Neg n ? n.operand() : e;
-        if (x instanceof Expr.Num n && n.unit() != null && Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok) {
+        Expr x = e instanceof Expr.Toleranced t
+                ? t.nominal()
+                : e instanceof Expr.Range r ? r.low() : e instanceof Expr.Neg n ? n.operand() : e;
+        if (x instanceof Expr.Num n
+                && n.unit() != null
+                && Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok) {
             return ok.unit();
         }
         return null;
@@ -246,7 +271,10 @@ public final class Explainer {
         for (Note n : notes) {
             String t = null;
             if (n instanceof Note.Per p) {
-                t = (p.text() != null ? p.text() : p.source() != null ? p.source().text() : "") + (p.on() == null ? "" : ", " + p.on().text());
+                t = (p.text() != null
+                                ? p.text()
+                                : p.source() != null ? p.source().text() : "")
+                        + (p.on() == null ? "" : ", " + p.on().text());
             } else if (n instanceof Note.Measured m) {
                 t = m.text() == null ? "measured" : "measured, " + m.text();
             } else if (n instanceof Note.Assumed a) {

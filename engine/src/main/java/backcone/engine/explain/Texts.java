@@ -32,7 +32,8 @@ final class Texts {
     }
 
     /** Which arm was taken, once {@link #numbers} has been asked. */
-    @Nullable String taken() {
+    @Nullable
+    String taken() {
         return taken;
     }
 

@@ -1,6 +1,7 @@
 package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
+import backcone.engine.model.English;
 import backcone.engine.model.FunctionDef;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.TableDef;
@@ -18,9 +19,34 @@ import org.jspecify.annotations.Nullable;
 final class Builtins {
     static final Dimension ANGLE = Dimension.base("angle");
     static final Set<String> NAMES = Set.of(
-            "sin", "cos", "tan", "asin", "acos", "atan", "atan2", "sqrt", "exp", "ln", "log", "abs", "sign", "least",
-            "greatest", "clamp", "floor", "ceil", "round", "common_divisor", "sum", "count", "nearest_in", "next_in",
-            "listed_in", "upstream", "downstream", "case_at_hand");
+            "sin",
+            "cos",
+            "tan",
+            "asin",
+            "acos",
+            "atan",
+            "atan2",
+            "sqrt",
+            "exp",
+            "ln",
+            "log",
+            "abs",
+            "sign",
+            "least",
+            "greatest",
+            "clamp",
+            "floor",
+            "ceil",
+            "round",
+            "common_divisor",
+            "sum",
+            "count",
+            "nearest_in",
+            "next_in",
+            "listed_in",
+            "upstream",
+            "downstream",
+            "case_at_hand");
     private final Compiler compiler;
 
     Builtins(Compiler compiler) {
@@ -34,7 +60,8 @@ final class Builtins {
         }
         Element[] holder = new Element[1];
         Object x = compiler.graph.scopes.path(c.callee(), ctx, holder, new int[1]);
-        TableDef table = x instanceof TableDef t ? t : x == null ? compiler.graph.shapes.library.tables.get(name) : null;
+        TableDef table =
+                x instanceof TableDef t ? t : x == null ? compiler.graph.shapes.library.tables.get(name) : null;
         if (table != null) {
             Element at = holder[0];
             Ctx scope = x instanceof TableDef && at != null ? ctx : ctx;
@@ -51,7 +78,11 @@ final class Builtins {
         List<String> all = new ArrayList<>(NAMES);
         all.addAll(compiler.graph.shapes.library.functions.keySet());
         all.addAll(compiler.graph.shapes.library.tables.keySet());
-        compiler.problem(Code.UNKNOWN_NAME, f, c.callee().span(), "There is no function or table `" + name + "`." + Suggest.sentence(name, all));
+        compiler.problem(
+                Code.UNKNOWN_NAME,
+                f,
+                c.callee().span(),
+                "There is no function or table `" + name + "`." + Suggest.sentence(name, all));
         return new Val.Bad();
     }
 
@@ -59,28 +90,44 @@ final class Builtins {
     Val expand(FunctionDef fn, List<Val> args, Expr.Call at, Frame f) {
         int wanted = fn.syntax().parameters().size();
         if (args.size() != wanted) {
-            compiler.problem(Code.WRONG_FORM, f, at.span(), "`" + fn.name() + "` takes " + wanted + " values; found " + args.size() + ".");
+            compiler.problem(
+                    Code.WRONG_FORM,
+                    f,
+                    at.span(),
+                    "`" + fn.name() + "` takes " + wanted + " values; found " + args.size() + ".");
             return new Val.Bad();
         }
         Map<String, Val> locals = new HashMap<>();
         for (int i = 0; i < wanted; i++) {
-            Val v = compiler.numeric(args.get(i), f, at.args().get(Math.min(i, at.args().size() - 1)));
+            Val v = compiler.numeric(
+                    args.get(i), f, at.args().get(Math.min(i, at.args().size() - 1)));
             ValueKind k = fn.parameters().get(i);
-            if (v instanceof Val.Num n && k instanceof ValueKind.Quantity q && n.dimension() != null
+            if (v instanceof Val.Num n
+                    && k instanceof ValueKind.Quantity q
+                    && n.dimension() != null
                     && n.dimension() != q.kind().shown().dimension()) {
-                compiler.problem(Code.DIMENSION_MISMATCH, f, at.args().get(Math.min(i, at.args().size() - 1)).span(), "`" + fn.name() + "` takes a "
-                        + q.kind().meaning() + " as its " + ordinal(i) + " value; this is of dimension " + n.dimension() + ".");
+                compiler.problem(
+                        Code.DIMENSION_MISMATCH,
+                        f,
+                        at.args().get(Math.min(i, at.args().size() - 1)).span(),
+                        "`" + fn.name() + "` takes " + English.a(q.kind().meaning()) + " as its " + ordinal(i)
+                                + " value; this is of dimension " + n.dimension() + ".");
                 v = compiler.bad(q.kind().shown().dimension());
             }
             locals.put(fn.syntax().parameters().get(i).name().text(), v);
         }
         Element top = compiler.graph.drive;
-        Val v = compiler.eval(fn.syntax().value(), new Ctx(top, List.of(), locals), new Frame(null, fn.file(), Frame.NOTHING, false));
+        Val v = compiler.eval(
+                fn.syntax().value(), new Ctx(top, List.of(), locals), new Frame(null, fn.file(), Frame.NOTHING, false));
         if (v instanceof Val.Num n && fn.kind() instanceof ValueKind.Quantity q) {
             Dimension want = q.kind().shown().dimension();
             if (n.dimension() != null && n.dimension() != want) {
-                compiler.problem(Code.DIMENSION_MISMATCH, Frame.at(fn.file(), false), fn.syntax().value().span(), "`" + fn.name()
-                        + "` is declared as " + q.kind().name() + "; its expression gives " + n.dimension() + ".");
+                compiler.problem(
+                        Code.DIMENSION_MISMATCH,
+                        Frame.at(fn.file(), false),
+                        fn.syntax().value().span(),
+                        "`" + fn.name() + "` is declared as " + q.kind().name() + "; its expression gives "
+                                + n.dimension() + ".");
                 return compiler.bad(want);
             }
             return new Val.Num(n.register(), want, n.constant());
@@ -99,7 +146,9 @@ final class Builtins {
                 return collection(name, c, ctx, f);
             case "least":
             case "greatest":
-                return c.args().size() == 1 && c.args().get(0) instanceof Expr.Each ? collection(name, c, ctx, f) : extremes(name, c, ctx, f);
+                return c.args().size() == 1 && c.args().get(0) instanceof Expr.Each
+                        ? collection(name, c, ctx, f)
+                        : extremes(name, c, ctx, f);
             case "upstream":
             case "downstream":
                 return shaft(name, c, ctx, f);
@@ -120,12 +169,17 @@ final class Builtins {
     private Val.@Nullable Num arg(Expr.Call c, int i, int count, Ctx ctx, Frame f) {
         if (c.args().size() != count) {
             if (i == 0) {
-                compiler.problem(Code.WRONG_FORM, f, c.span(), "`" + c.callee().text() + "` takes " + count + (count == 1 ? " value" : " values")
-                        + "; found " + c.args().size() + ".");
+                compiler.problem(
+                        Code.WRONG_FORM,
+                        f,
+                        c.span(),
+                        "`" + c.callee().text() + "` takes " + count + (count == 1 ? " value" : " values") + "; found "
+                                + c.args().size() + ".");
             }
             return null;
         }
-        Val v = compiler.numeric(compiler.eval(c.args().get(i), ctx, f), f, c.args().get(i));
+        Val v = compiler.numeric(
+                compiler.eval(c.args().get(i), ctx, f), f, c.args().get(i));
         return v instanceof Val.Num n ? n : null;
     }
 
@@ -147,12 +201,18 @@ final class Builtins {
             case "cos":
             case "tan":
                 wants(x, ANGLE, "`" + name + "` takes an angle, with a unit such as deg or rad.", at, f);
-                return new Val.Num(compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()), Dimension.NONE, Double.NaN);
+                return new Val.Num(
+                        compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()),
+                        Dimension.NONE,
+                        Double.NaN);
             case "asin":
             case "acos":
             case "atan":
                 wants(x, Dimension.NONE, "`" + name + "` takes a pure number.", at, f);
-                return new Val.Num(compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()), ANGLE, Double.NaN);
+                return new Val.Num(
+                        compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()),
+                        ANGLE,
+                        Double.NaN);
             case "atan2":
             case "common_divisor": {
                 Val.Num y = arg(c, 1, 2, ctx, f);
@@ -161,23 +221,39 @@ final class Builtins {
                 }
                 Dimension d = compiler.same(x.dimension(), y.dimension(), c, f, "used together here");
                 boolean angle = name.equals("atan2");
-                return new Val.Num(compiler.op(angle ? Op.ATAN2 : Op.COMMON_DIVISOR, x.register(), y.register()), angle ? ANGLE : d, Double.NaN);
+                return new Val.Num(
+                        compiler.op(angle ? Op.ATAN2 : Op.COMMON_DIVISOR, x.register(), y.register()),
+                        angle ? ANGLE : d,
+                        Double.NaN);
             }
             case "sqrt":
-                return new Val.Num(compiler.op(Op.SQRT, x.register()), x.dimension() == null ? null : x.dimension().power(1, 2),
+                return new Val.Num(
+                        compiler.op(Op.SQRT, x.register()),
+                        x.dimension() == null ? null : x.dimension().power(1, 2),
                         x.isConstant() ? Math.sqrt(x.constant()) : Double.NaN);
             case "exp":
             case "ln":
             case "log":
                 wants(x, Dimension.NONE, "`" + name + "` takes a pure number.", at, f);
-                return new Val.Num(compiler.op(name.equals("exp") ? Op.EXP : name.equals("ln") ? Op.LN : Op.LOG10, x.register()), Dimension.NONE, Double.NaN);
+                return new Val.Num(
+                        compiler.op(name.equals("exp") ? Op.EXP : name.equals("ln") ? Op.LN : Op.LOG10, x.register()),
+                        Dimension.NONE,
+                        Double.NaN);
             case "sign":
                 return new Val.Num(compiler.op(Op.SIGN, x.register()), Dimension.NONE, Double.NaN);
             case "abs":
                 return new Val.Num(compiler.op(Op.ABS, x.register()), x.dimension(), Math.abs(x.constant()));
             default:
-                wants(x, Dimension.NONE, "`" + name + "` takes a pure number; take a quantity in a unit first (`x in mm`).", at, f);
-                return new Val.Num(compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()), x.dimension(), Double.NaN);
+                wants(
+                        x,
+                        Dimension.NONE,
+                        "`" + name + "` takes a pure number; take a quantity in a unit first (`x in mm`).",
+                        at,
+                        f);
+                return new Val.Num(
+                        compiler.op(Op.valueOf(name.toUpperCase(java.util.Locale.ROOT)), x.register()),
+                        x.dimension(),
+                        Double.NaN);
         }
     }
 
@@ -199,7 +275,8 @@ final class Builtins {
 
     private Val.Num extreme(String name, Val.Num a, Val.Num b, Expr at, Frame f) {
         Dimension d = compiler.same(a.dimension(), b.dimension(), at, f, "compared");
-        return new Val.Num(compiler.op(name.equals("least") ? Op.MIN : Op.MAX, a.register(), b.register()), d, Double.NaN);
+        return new Val.Num(
+                compiler.op(name.equals("least") ? Op.MIN : Op.MAX, a.register(), b.register()), d, Double.NaN);
     }
 
     private Val clamp(Expr.Call c, Ctx ctx, Frame f) {
@@ -219,7 +296,11 @@ final class Builtins {
 
     private Val collection(String name, Expr.Call c, Ctx ctx, Frame f) {
         if (c.args().size() != 1 || !(c.args().get(0) instanceof Expr.Each each)) {
-            compiler.problem(Code.WRONG_FORM, f, c.span(), "`" + name + "` runs over a collection: `" + name + "(each bin : x)`.");
+            compiler.problem(
+                    Code.WRONG_FORM,
+                    f,
+                    c.span(),
+                    "`" + name + "` runs over a collection: `" + name + "(each bin : x)`.");
             return new Val.Bad();
         }
         Val.Group g = group(each, ctx, f);
@@ -234,7 +315,12 @@ final class Builtins {
         }
         Expr body = each.body();
         if (body == null) {
-            compiler.problem(Code.MISSING_VALUE, f, each.span(), "What shall be taken of each " + each.collection() + "? Write `each " + each.collection() + " : x`.");
+            compiler.problem(
+                    Code.MISSING_VALUE,
+                    f,
+                    each.span(),
+                    "What shall be taken of each " + each.collection() + "? Write `each " + each.collection()
+                            + " : x`.");
             return new Val.Bad();
         }
         if (compiler.graph.checking) {
@@ -284,7 +370,8 @@ final class Builtins {
         if (r < 0) {
             return compiler.constant(fixed, Dimension.NONE);
         }
-        return new Val.Num(fixed == 0 ? r : compiler.op(Op.ADD, r, compiler.constant(fixed)), Dimension.NONE, Double.NaN);
+        return new Val.Num(
+                fixed == 0 ? r : compiler.op(Op.ADD, r, compiler.constant(fixed)), Dimension.NONE, Double.NaN);
     }
 
     /** The scope in which what is said of each element is read. */
@@ -296,7 +383,14 @@ final class Builtins {
         Element[] holder = new Element[1];
         String name = each.collection().text();
         Object x = compiler.graph.scopes.collection(name, ctx, holder);
-        Val v = x == null ? null : compiler.found(x, holder[0], new Expr.Path(List.of(each.collection()), each.collection().span()), f);
+        Val v = x == null
+                ? null
+                : compiler.found(
+                        x,
+                        holder[0],
+                        new Expr.Path(
+                                List.of(each.collection()), each.collection().span()),
+                        f);
         if (v instanceof Val.Group g) {
             return g;
         }

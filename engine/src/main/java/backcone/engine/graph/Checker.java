@@ -1,6 +1,7 @@
 package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
+import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.model.BodyDef;
 import backcone.engine.model.ChoiceKind;
 import backcone.engine.model.Decl;
@@ -79,11 +80,33 @@ public final class Checker {
                 whole(e);
             }
         }
+        // a building block without examples of its own is read inside the methods that include it
+        Set<MethodDef> included = new HashSet<>();
+        for (List<MethodDef> ms : graph.shapes.library.methods.values()) {
+            for (MethodDef m : ms) {
+                for (Entry.Include i : m.body().includes) {
+                    i.methods().forEach(n -> {
+                        MethodDef other = graph.shapes.library.method(n.text(), m.kind());
+                        if (other != null && other != m) {
+                            included.add(other);
+                        }
+                    });
+                }
+            }
+        }
         for (List<MethodDef> ms : graph.shapes.library.methods.values()) {
             for (MethodDef m : ms) {
                 Element mesh = sample(m.kind());
-                if (mesh != null) {
-                    Element space = el.space(mesh, m, m.name(), m.body().editions.isEmpty() ? null : m.body().editions.get(0), m.file(), Span.NONE);
+                if (mesh != null && !(included.contains(m) && m.body().examples.isEmpty())) {
+                    Element space = el.space(
+                            mesh,
+                            m,
+                            m.name(),
+                            m.body().editions.isEmpty()
+                                    ? null
+                                    : m.body().editions.get(0),
+                            m.file(),
+                            Span.NONE);
                     element(space, new ArrayList<>());
                     mesh.named.remove(m.name());
                     mesh.ratings.clear();
@@ -100,7 +123,10 @@ public final class Checker {
         element(e, new ArrayList<>());
         Set<String> done = new HashSet<>();
         for (Object x : new ArrayList<>(e.named.values())) {
-            if (x instanceof Element part && part.parent == e && part.shape != Shapes.WORD && (!part.fixed || done.add(part.collection))) {
+            if (x instanceof Element part
+                    && part.parent == e
+                    && part.shape != Shapes.WORD
+                    && (!part.fixed || done.add(part.collection))) {
                 whole(part);
             }
         }
@@ -136,13 +162,22 @@ public final class Checker {
             exprs.add(f.syntax().value());
         }
         if (functions.put(f, true) == null) {
-            graph.compiler.callFunction(f, args, new Expr.Call(new Expr.Path(List.of(f.syntax().name()), f.syntax().name().span()), exprs, f.syntax().name().span()),
+            graph.compiler.callFunction(
+                    f,
+                    args,
+                    new Expr.Call(
+                            new Expr.Path(
+                                    List.of(f.syntax().name()),
+                                    f.syntax().name().span()),
+                            exprs,
+                            f.syntax().name().span()),
                     Frame.at(f.file(), false));
         }
     }
 
     /** One element of a kind, with the drive around it. */
-    @Nullable Element sample(String kind) {
+    @Nullable
+    Element sample(String kind) {
         Element known = samples.get(kind);
         if (known != null) {
             return known;
@@ -187,7 +222,14 @@ public final class Checker {
     private void element(Element e, List<Axis> axes) {
         Shape s = e.shape;
         for (Decl d : s.clashes) {
-            graph.problems.add(Code.HIDDEN_NAME, d.file, d.nameNode.span(), "`" + d.symbolOrName() + "` is declared twice for the same element.");
+            graph.problems.add(
+                    Code.HIDDEN_NAME,
+                    d.file,
+                    d.nameNode.span(),
+                    "`" + d.symbolOrName() + "` is declared twice for the same element.");
+        }
+        if (e.isSpace() || (e.space != null && e.space.isSpace())) {
+            hidden(e);
         }
         for (Decl d : s.decls) {
             Object x = e.own(d.symbolOrName());
@@ -201,6 +243,7 @@ public final class Checker {
                 graph.compiler.eval(r.syntax().when(), ctx, f);
             }
             graph.compiler.eval(r.syntax().equation(), ctx, f);
+            solvable(r, ctx);
         }
         for (BodyDef.LimitDef l : s.limits) {
             graph.compiler.eval(l.syntax().condition(), ctx, Frame.at(l.file(), false));
@@ -219,7 +262,8 @@ public final class Checker {
             if (el == null || (el.fixed && el.parent == space && axes.isEmpty())) {
                 continue;
             }
-            List<Axis> more = new ArrayList<>(e.space != null ? e.axes : e.fixed ? List.of(new Axis(e.collection, e)) : axes);
+            List<Axis> more =
+                    new ArrayList<>(e.space != null ? e.axes : e.fixed ? List.of(new Axis(e.collection, e)) : axes);
             more.add(new Axis(each.getKey(), el));
             Element at = e.fixed && e.parent != null ? e.parent : space;
             Element combo = at.combo(more, graph.nextId);
@@ -229,10 +273,98 @@ public final class Checker {
         }
     }
 
+    /** A relation must be solvable for each of its names: every one is reached by + - * / and fixed powers, once. */
+    private void solvable(BodyDef.RelationDef r, Ctx ctx) {
+        if (!(r.syntax().equation() instanceof Expr.Compare c)
+                || c.operands().size() != 2
+                || c.ops().get(0) != Expr.Cmp.EQ) {
+            graph.problems.add(
+                    Code.NOT_SOLVABLE,
+                    r.file(),
+                    r.syntax().equation().span(),
+                    "A relation says that two things are equal: `relation : a * b == c`.");
+            return;
+        }
+        for (Expr side : c.operands()) {
+            Expr stuck = stuck(side, true);
+            if (stuck != null) {
+                graph.problems.add(
+                        Code.NOT_SOLVABLE,
+                        r.file(),
+                        stuck.span(),
+                        "A relation is solved by undoing + - * / and fixed powers; a name can't be brought out of this.");
+            }
+        }
+    }
+
+    /** The part of one side that hides a name, or null. */
+    private static @Nullable Expr stuck(Expr e, boolean reachable) {
+        if (e instanceof Expr.Path) {
+            return reachable ? null : e;
+        } else if (e instanceof Expr.Binary b) {
+            boolean power = b.op() == Expr.Op.POW;
+            Expr left = stuck(b.left(), reachable);
+            return left != null ? left : stuck(b.right(), reachable && !power);
+        } else if (e instanceof Expr.Neg n) {
+            return stuck(n.operand(), reachable);
+        }
+        // what a function or a choice is made of is taken as known; sums are written out
+        return null;
+    }
+
+    private static boolean computes(Expr e) {
+        if (e instanceof Expr.Choose c) {
+            return c.arms().stream().anyMatch(a -> computes(a.value()));
+        }
+        return e instanceof Expr.Binary
+                || e instanceof Expr.Root
+                || e instanceof Expr.Settle
+                || (e instanceof Expr.Call c
+                        && !Set.of("upstream", "downstream", "case_at_hand", "count")
+                                .contains(c.callee().text()));
+    }
+
+    /** A method must not declare again what its mesh, the members or the drive have: formulas would silently take the other. */
+    private void hidden(Element e) {
+        Element space = e.isSpace() ? e : java.util.Objects.requireNonNull(e.space);
+        List<Shape> around = new ArrayList<>();
+        Element mesh = space.parent;
+        if (mesh != null) {
+            around.add(mesh.shape);
+        }
+        for (Axis a : e.axes) {
+            around.add(a.element().shape);
+        }
+        around.add(graph.drive.shape);
+        for (Decl d : e.shape.decls) {
+            for (Shape s : around) {
+                for (String n : d.symbol == null ? List.of(d.name) : List.of(d.name, d.symbol)) {
+                    if (s.names.get(n) instanceof Shape.Member m) {
+                        graph.problems.add(Diagnostic.of(
+                                        Code.HIDDEN_NAME,
+                                        d.file,
+                                        d.nameNode.span(),
+                                        "`" + n + "` is there already (" + m.decl().owner
+                                                + "); give this value a name of its own.")
+                                .withRelated(m.decl().file, m.decl().nameNode.span(), "declared here"));
+                    }
+                }
+            }
+        }
+    }
+
     private void decl(Slot s) {
         Decl d = s.decl;
         Expr e = d.value;
         Ctx ctx = Ctx.of(s.owner);
+        if (e != null && d.role == Decl.Role.QUANTITY && d.per == null && computes(e)) {
+            graph.problems.add(
+                    Code.NO_SOURCE,
+                    d.file,
+                    d.nameNode.span(),
+                    "`" + d.symbolOrName()
+                            + "` is an equation without a source; say where it comes from: `per SOURCE \"clause\", agreed`.");
+        }
         if (e != null) {
             equation(s, e, ctx);
         }
@@ -255,14 +387,23 @@ public final class Checker {
     private void equation(Slot s, Expr e, Ctx ctx) {
         Decl d = s.decl;
         Frame f = new Frame(s, d.file, d.taking, false);
-        if (d.kind instanceof ValueKind.Choice c && e instanceof Expr.Path p && p.names().size() == 1 && c.kind().has(p.text())) {
+        if (d.kind instanceof ValueKind.Choice c
+                && e instanceof Expr.Path p
+                && p.names().size() == 1
+                && c.kind().has(p.text())) {
             return;
         }
         Val v = graph.compiler.eval(e, ctx, f);
         if (d.kind instanceof ValueKind.Quantity && d.resultUnit != null) {
-            if (v instanceof Val.Num n && n.dimension() != null && !n.dimension().isNone()) {
-                graph.problems.add(Code.DIMENSION_MISMATCH, d.file, e.span(), "With `in " + d.resultUnit.text()
-                        + "` the right side must be a pure number; it has dimension " + n.dimension() + ".");
+            if (v instanceof Val.Num n
+                    && n.dimension() != null
+                    && !n.dimension().isNone()) {
+                graph.problems.add(
+                        Code.DIMENSION_MISMATCH,
+                        d.file,
+                        e.span(),
+                        "With `in " + d.resultUnit.text() + "` the right side must be a pure number; it has dimension "
+                                + n.dimension() + ".");
             }
             return;
         }
@@ -270,12 +411,25 @@ public final class Checker {
     }
 
     private void fits(Slot s, Val v, Expr e) {
-        if (s.decl.kind instanceof ValueKind.Quantity q && v instanceof Val.Num n && n.dimension() != null
+        if (s.decl.kind instanceof ValueKind.Quantity q
+                && v instanceof Val.Num n
+                && n.dimension() != null
                 && n.dimension() != q.kind().shown().dimension()) {
-            graph.problems.add(Code.DIMENSION_MISMATCH, s.decl.file, e.span(), "`" + s.decl.symbolOrName() + "` is declared as " + q.kind().name() + " ("
-                    + q.kind().shown().dimension() + "); this gives " + n.dimension() + ".");
-        } else if (s.decl.kind instanceof ValueKind.Quantity && !(v instanceof Val.Num) && !(v instanceof Val.Open) && !(v instanceof Val.Bad)) {
-            graph.problems.add(Code.WRONG_FORM, s.decl.file, e.span(), "`" + s.decl.symbolOrName() + "` is a number; this is " + Compiler.what(v) + ".");
+            graph.problems.add(
+                    Code.DIMENSION_MISMATCH,
+                    s.decl.file,
+                    e.span(),
+                    "`" + s.decl.symbolOrName() + "` is declared as " + q.kind().name() + " ("
+                            + q.kind().shown().dimension() + "); this gives " + n.dimension() + ".");
+        } else if (s.decl.kind instanceof ValueKind.Quantity
+                && !(v instanceof Val.Num)
+                && !(v instanceof Val.Open)
+                && !(v instanceof Val.Bad)) {
+            graph.problems.add(
+                    Code.WRONG_FORM,
+                    s.decl.file,
+                    e.span(),
+                    "`" + s.decl.symbolOrName() + "` is a number; this is " + Compiler.what(v) + ".");
         }
     }
 
@@ -332,7 +486,12 @@ public final class Checker {
             } else if (when instanceof Expr.Path p && p.names().size() == 1) {
                 said.add(p.text());
                 if (s instanceof Val.Picked w && w.kind() != null && !w.kind().has(p.text())) {
-                    compiler.problem(Code.UNKNOWN_CHOICE, f, p.span(), "`" + p.text() + "` is none of " + Compiler.list(w.kind().words().keySet()) + ".");
+                    compiler.problem(
+                            Code.UNKNOWN_CHOICE,
+                            f,
+                            p.span(),
+                            "`" + p.text() + "` is none of "
+                                    + Compiler.list(w.kind().words().keySet()) + ".");
                 }
             }
             Val v = arm(compiler, a.value(), ctx, f);
@@ -343,7 +502,10 @@ public final class Checker {
                 result = new Val.Num(0, d, Double.NaN);
             }
         }
-        if (s instanceof Val.Picked w && w.kind() != null && !otherwise && said.size() < w.kind().words().size()) {
+        if (s instanceof Val.Picked w
+                && w.kind() != null
+                && !otherwise
+                && said.size() < w.kind().words().size()) {
             missing(compiler, w.kind(), said, c, f);
         }
         return result == null ? new Val.Bad() : result;
@@ -352,12 +514,20 @@ public final class Checker {
     private static void missing(Compiler compiler, ChoiceKind kind, Set<String> said, Expr.Choose c, Frame f) {
         List<String> left = new ArrayList<>(kind.words().keySet());
         left.removeAll(said);
-        compiler.problem(Code.INCOMPLETE_CHOICE, f, c.span(), "This choice says nothing for " + Compiler.list(left) + "; name every word or add `else`.");
+        compiler.problem(
+                Code.INCOMPLETE_CHOICE,
+                f,
+                c.span(),
+                "This choice says nothing for " + Compiler.list(left) + "; name every word or add `else`.");
     }
 
     private Val arm(Compiler compiler, Expr e, Ctx ctx, Frame f) {
         Slot s = f.slot;
-        if (s != null && s.decl.kind instanceof ValueKind.Choice k && e instanceof Expr.Path p && p.names().size() == 1 && k.kind().has(p.text())) {
+        if (s != null
+                && s.decl.kind instanceof ValueKind.Choice k
+                && e instanceof Expr.Path p
+                && p.names().size() == 1
+                && k.kind().has(p.text())) {
             return new Val.Word(p.text(), k.kind());
         }
         return compiler.eval(e, ctx, f);

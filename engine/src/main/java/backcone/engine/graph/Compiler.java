@@ -3,6 +3,7 @@ package backcone.engine.graph;
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.model.ChoiceKind;
+import backcone.engine.model.English;
 import backcone.engine.model.FunctionDef;
 import backcone.engine.model.QuantityKind;
 import backcone.engine.model.Suggest;
@@ -63,7 +64,11 @@ final class Compiler {
             return BAD;
         }
         if (depth > DEEPEST) {
-            problems.add(Code.TOO_DEEP, s.decl.file, s.decl.span, "The values behind `" + s.path() + "` are nested too deep.");
+            problems.add(
+                    Code.TOO_DEEP,
+                    s.decl.file,
+                    s.decl.span,
+                    "The values behind `" + s.path() + "` are nested too deep.");
             return BAD;
         }
         s.compiling = true;
@@ -170,7 +175,9 @@ final class Compiler {
 
     /** A bare word where a choice is declared is a word of that choice. */
     private Val words(Slot s, Expr e, Ctx ctx, Frame f) {
-        if (s.decl.kind instanceof ValueKind.Choice c && e instanceof Expr.Path p && p.names().size() == 1
+        if (s.decl.kind instanceof ValueKind.Choice c
+                && e instanceof Expr.Path p
+                && p.names().size() == 1
                 && c.kind().has(p.text())) {
             return new Val.Word(p.text(), c.kind());
         }
@@ -183,13 +190,28 @@ final class Compiler {
     }
 
     private Val factValue(Slot s, Expr e, Ctx ctx, Frame f) {
+        if (s.decl.kind instanceof ValueKind.Text
+                && (e instanceof Expr.Path || e instanceof Expr.Num || e instanceof Expr.Binary)) {
+            problem(
+                    Code.WRONG_FORM,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"" + textOf(e, f)
+                            + "\"`.");
+            return BAD;
+        }
         if (e instanceof Expr.Path p && p.names().size() == 1) {
             if (s.decl.kind instanceof ValueKind.Choice c) {
                 if (c.kind().has(p.text())) {
                     return new Val.Word(p.text(), c.kind());
                 }
-                problem(Code.UNKNOWN_CHOICE, f, p.span(), "`" + p.text() + "` is no " + lower(c.kind().meaning(), s.decl.name)
-                        + "; it is one of " + list(c.kind().words().keySet()) + "." + Suggest.sentence(p.text(), c.kind().words().keySet()));
+                problem(
+                        Code.UNKNOWN_CHOICE,
+                        f,
+                        p.span(),
+                        "`" + p.text() + "` is no " + lower(c.kind().meaning(), s.decl.name) + "; it is one of "
+                                + list(c.kind().words().keySet()) + "."
+                                + Suggest.sentence(p.text(), c.kind().words().keySet()));
                 return BAD;
             }
         }
@@ -197,14 +219,17 @@ final class Compiler {
     }
 
     private static String lower(@Nullable String meaning, String name) {
-        return meaning == null ? "value of `" + name + "`" : meaning;
+        return meaning == null ? "value of `" + name + "`" : meaning.split(";")[0];
     }
 
     static String list(java.util.Collection<String> words) {
         StringBuilder b = new StringBuilder();
         int i = 0;
         for (String w : words) {
-            b.append(i == 0 ? "" : i == words.size() - 1 ? " or " : ", ").append('`').append(w).append('`');
+            b.append(i == 0 ? "" : i == words.size() - 1 ? " or " : ", ")
+                    .append('`')
+                    .append(w)
+                    .append('`');
             i++;
         }
         return b.toString();
@@ -215,7 +240,7 @@ final class Compiler {
         ValueKind kind = s.decl.kind;
         Slot.Fact fact = s.fact();
         boolean given = fact != null;
-        Frame f = new Frame(s, given ? fact.file() : s.decl.file, Frame.NOTHING, given);
+        Frame f = new Frame(s, fact != null ? fact.file() : s.decl.file, Frame.NOTHING, given);
         if (v instanceof Val.Bad) {
             return kind instanceof ValueKind.Quantity q ? bad(q.kind().shown().dimension()) : v;
         }
@@ -229,8 +254,11 @@ final class Compiler {
             if (v instanceof Val.Picked || v instanceof Val.Open) {
                 return v;
             }
-            problem(Code.UNKNOWN_CHOICE, f, e.span(), "`" + s.decl.name + "` is one of " + list(c.kind().words().keySet()) + "; found "
-                    + what(v) + ".");
+            problem(
+                    Code.UNKNOWN_CHOICE,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` is one of " + list(c.kind().words().keySet()) + "; found " + what(v) + ".");
             return BAD;
         }
         if (kind instanceof ValueKind.Reference r) {
@@ -238,18 +266,33 @@ final class Compiler {
                 if (graph.shapes.library.isKind(ref.element().kind(), r.kind())) {
                     return v;
                 }
-                problem(Code.NOT_A_BLOCK, f, e.span(), "`" + s.decl.name + "` refers to a " + r.kind() + "; `" + ref.element().name
-                        + "` is a " + (ref.element().kind().isEmpty() ? "word" : ref.element().kind()) + ".");
+                problem(
+                        Code.NOT_A_BLOCK,
+                        f,
+                        e.span(),
+                        "`" + s.decl.name + "` refers to " + English.a(r.kind()) + "; `" + ref.element().name
+                                + "` is a "
+                                + (ref.element().kind().isEmpty()
+                                        ? "word"
+                                        : ref.element().kind()) + ".");
                 return BAD;
             }
             if (v instanceof Val.Open || v instanceof Val.Picked) {
                 return v;
             }
-            problem(Code.NOT_A_BLOCK, f, e.span(), "`" + s.decl.name + "` refers to a " + r.kind() + " by name; found " + what(v) + ".");
+            problem(
+                    Code.NOT_A_BLOCK,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` refers to " + English.a(r.kind()) + " by name; found " + what(v) + ".");
             return BAD;
         }
         if (kind instanceof ValueKind.Text && !(v instanceof Val.Text) && !(v instanceof Val.Open)) {
-            problem(Code.WRONG_FORM, f, e.span(), "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"…\"`.");
+            problem(
+                    Code.WRONG_FORM,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` is a text; write it in quotes: `" + s.decl.name + " = \"…\"`.");
             return BAD;
         }
         if (kind instanceof ValueKind.Day && !(v instanceof Val.Day) && !(v instanceof Val.Open)) {
@@ -264,34 +307,58 @@ final class Compiler {
         Dimension want = q.shown().dimension();
         if (!(v instanceof Val.Num n)) {
             if (!(v instanceof Val.Bad)) {
-                problem(Code.WRONG_FORM, f, e.span(), "`" + s.decl.name + "` is a number, a " + q.meaning() + "; found " + what(v) + ".");
+                problem(
+                        Code.WRONG_FORM,
+                        f,
+                        e.span(),
+                        "`" + s.decl.name + "` is a number, " + English.a(q.meaning()) + "; found " + what(v) + ".");
             }
             return bad(want);
         }
         Unit result = given ? null : s.decl.resultUnit;
         if (result != null) {
             if (n.dimension() != null && !n.dimension().isNone()) {
-                problem(Code.DIMENSION_MISMATCH, f, e.span(), "With `in " + result.text() + "` the right side must be a pure number; it is a "
-                        + units.nameOf(n.dimension()) + ".");
+                problem(
+                        Code.DIMENSION_MISMATCH,
+                        f,
+                        e.span(),
+                        "With `in " + result.text() + "` the right side must be a pure number; it is "
+                                + English.a(units.nameOf(n.dimension())) + ".");
                 return bad(want);
             }
             n = scaled(n, result);
         } else if (n.dimension() != null && n.dimension() != want) {
             if (given && n.dimension().isNone()) {
-                String say = units.unitsOf(want).isEmpty() ? q.shown().text() : q.shown().text();
-                Diagnostic d = Diagnostic.of(Code.MISSING_UNIT, f.file, e.span(), "`" + s.decl.name + "` is a " + q.meaning()
-                        + " and needs its unit, for example `" + textOf(e, f) + " " + say + "`.");
-                problems.add(d.withFix("add the unit " + say, new Span(e.span().end(), e.span().end()), " " + say));
+                missingUnit(s, q, e, f);
             } else if (given) {
-                problem(Code.WRONG_UNIT, f, e.span(), "`" + s.decl.name + "` is a " + q.meaning() + "; found a "
-                        + units.nameOf(n.dimension()) + ". Write it in " + q.shown().text() + " or another unit of that kind.");
+                problem(
+                        Code.WRONG_UNIT,
+                        f,
+                        e.span(),
+                        "`" + s.decl.name + "` is " + English.a(q.meaning()) + "; found "
+                                + English.a(units.nameOf(n.dimension())) + ". Write it in "
+                                + q.shown().text() + " or another unit of that kind.");
             } else {
-                problem(Code.DIMENSION_MISMATCH, f, e.span(), "`" + s.decl.symbolOrName() + "` is declared as " + q.name() + " (" + want
-                        + "); its equation gives " + n.dimension() + ".");
+                problem(
+                        Code.DIMENSION_MISMATCH,
+                        f,
+                        e.span(),
+                        "`" + s.decl.symbolOrName() + "` is declared as " + q.name() + " (" + want
+                                + "); its equation gives " + n.dimension() + ".");
             }
             return bad(want);
         } else if (given) {
             kindOfUnit(s, q, e, f);
+            if (q.whole() && e instanceof Expr.Num literal && literal.value() != Math.rint(literal.value())) {
+                problem(
+                        Code.NOT_WHOLE,
+                        f,
+                        e.span(),
+                        "`" + s.decl.name + "` is a whole number; found " + literal.text() + ". Write "
+                                + (long) Math.floor(literal.value()) + " or " + (long) Math.ceil(literal.value())
+                                + ".");
+                return bad(want);
+            }
         }
         if (given && s.decl.load && s.override == null) {
             int r = graph.tape.emit(Op.MUL, graph.load(), n.register(), 0, 0);
@@ -308,7 +375,8 @@ final class Compiler {
             if (range != null && given) {
                 Frame df = Frame.at(s.decl.file, false);
                 Ctx dc = Ctx.of(s.owner);
-                if (eval(range.low(), dc, df) instanceof Val.Num lo && eval(range.high(), dc, df) instanceof Val.Num hi) {
+                if (eval(range.low(), dc, df) instanceof Val.Num lo
+                        && eval(range.high(), dc, df) instanceof Val.Num hi) {
                     graph.ranges.add(new DriveGraph.InRange(s, n.register(), lo.register(), hi.register()));
                 }
             }
@@ -316,14 +384,51 @@ final class Compiler {
         return n;
     }
 
+    /** Where one spoken name stands for several scales, all of them are offered. */
+    private void missingUnit(Slot s, QuantityKind q, Expr e, Frame f) {
+        List<String> scales = new ArrayList<>();
+        if (s.owner.shape.names.get(s.decl.name) instanceof Shape.Spoken sp) {
+            for (Shape.Member m : sp.members()) {
+                if (m.decl().kind instanceof ValueKind.Quantity k) {
+                    scales.add(textOf(e, f) + " " + k.kind().shown().text());
+                }
+            }
+        }
+        String say = q.shown().text();
+        Span end = new Span(e.span().end(), e.span().end());
+        if (scales.size() > 1) {
+            problem(
+                    Code.MISSING_UNIT,
+                    f,
+                    e.span(),
+                    "`" + s.decl.name + "` says nothing without its scale or system; write " + list(scales) + ".");
+        } else {
+            problems.add(Diagnostic.of(
+                            Code.MISSING_UNIT,
+                            f.file,
+                            e.span(),
+                            "`" + s.decl.name + "` is " + English.a(q.meaning()) + " and needs its unit, for example `"
+                                    + textOf(e, f) + " " + say + "`.")
+                    .withFix("add the unit " + say, end, " " + say));
+        }
+    }
+
     /** A unit of the right dimension may still belong to another kind: a torque is no energy. */
     private void kindOfUnit(Slot s, QuantityKind q, Expr e, Frame f) {
         if (e instanceof Expr.Num n && n.unit() != null && units.parse(n.unit().text()) instanceof Units.Parse.Ok ok) {
             String k = ok.unit().kind();
             QuantityKind other = k == null ? null : graph.shapes.library.quantities.get(k);
-            if (k != null && !k.equals(q.name()) && (q.unlike().contains(k) || (other != null && other.unlike().contains(q.name())))) {
-                problem(Code.WRONG_KIND, f, n.unit().span(), "`" + n.unit().text() + "` is a unit of " + (other == null ? k : other.meaning())
-                        + "; `" + s.decl.name + "` is a " + q.meaning() + ". Write it in " + q.shown().text() + ".");
+            if (k != null
+                    && !k.equals(q.name())
+                    && (q.unlike().contains(k)
+                            || (other != null && other.unlike().contains(q.name())))) {
+                problem(
+                        Code.WRONG_KIND,
+                        f,
+                        n.unit().span(),
+                        "`" + n.unit().text() + "` is a unit of " + (other == null ? k : other.meaning()) + "; `"
+                                + s.decl.name + "` is " + English.a(q.meaning()) + ". Write it in "
+                                + q.shown().text() + ".");
             }
         } else if (e instanceof Expr.Range r) {
             kindOfUnit(s, q, r.low(), f);
@@ -369,7 +474,8 @@ final class Compiler {
         } else if (v instanceof Val.Word w) {
             return "the word `" + w.text() + "`";
         } else if (v instanceof Val.Ref r) {
-            return "the " + (r.element().kind().isEmpty() ? "element" : r.element().kind()) + " `" + r.element().name + "`";
+            return "the "
+                    + (r.element().kind().isEmpty() ? "element" : r.element().kind()) + " `" + r.element().name + "`";
         } else if (v instanceof Val.Text) {
             return "a text";
         } else if (v instanceof Val.Day) {
@@ -496,9 +602,7 @@ final class Compiler {
             return b.op() == Expr.Op.AND || b.op() == Expr.Op.OR ? logic(b, ctx, f) : arithmetic(b, ctx, f);
         } else if (e instanceof Expr.Neg n) {
             Val v = numeric(eval(n.operand(), ctx, f), f, n.operand());
-            return v instanceof Val.Num x
-                    ? new Val.Num(op(Op.NEG, x.register()), x.dimension(), -x.constant())
-                    : v;
+            return v instanceof Val.Num x ? new Val.Num(op(Op.NEG, x.register()), x.dimension(), -x.constant()) : v;
         } else if (e instanceof Expr.Not n) {
             Val v = eval(n.operand(), ctx, f);
             if (v instanceof Val.Fixed x) {
@@ -549,7 +653,11 @@ final class Compiler {
         Slot s = f.slot;
         String worst = s == null ? null : s.decl.worst;
         if (worst == null && s != null) {
-            problem(Code.WRONG_FORM, f, r.span(), "`" + s.decl.name + "` is rated at one value and takes no range; write the value that counts.");
+            problem(
+                    Code.WRONG_FORM,
+                    f,
+                    r.span(),
+                    "`" + s.decl.name + "` is rated at one value and takes no range; write the value that counts.");
             return BAD;
         }
         return "high".equals(worst) ? hi : lo;
@@ -577,7 +685,8 @@ final class Compiler {
         return new Val.Num(constant(v), d, v);
     }
 
-    @Nullable Unit unit(Name u, Frame f) {
+    @Nullable
+    Unit unit(Name u, Frame f) {
         Units.Parse p = units.parse(u.text());
         if (p instanceof Units.Parse.Ok ok) {
             return ok.unit();
@@ -604,8 +713,12 @@ final class Compiler {
                     Val m = numeric(v, f, p);
                     if (m instanceof Val.Num n) {
                         if (n.dimension() != null && n.dimension() != u.dimension()) {
-                            problem(Code.DIMENSION_MISMATCH, f, t.span(), "`" + t.path().text() + "` is a " + units.nameOf(n.dimension())
-                                    + " and cannot be taken in " + u.text() + ".");
+                            problem(
+                                    Code.DIMENSION_MISMATCH,
+                                    f,
+                                    t.span(),
+                                    "`" + t.path().text() + "` is " + English.a(units.nameOf(n.dimension()))
+                                            + " and cannot be taken in " + u.text() + ".");
                             return bad(Dimension.NONE);
                         }
                         return bare(n, u);
@@ -637,8 +750,12 @@ final class Compiler {
         } else if (x instanceof Shape.Spoken sp && holder != null) {
             Slot s = spoken(sp, holder);
             if (s == null) {
-                problem(Code.AMBIGUOUS_NAME, f, p.span(), "`" + p.text() + "` stands for several scales and none or several are given; write "
-                        + list(symbols(sp)) + ".");
+                problem(
+                        Code.AMBIGUOUS_NAME,
+                        f,
+                        p.span(),
+                        "`" + p.text() + "` stands for several scales and none or several are given; write "
+                                + list(symbols(sp)) + ".");
                 return BAD;
             }
             return found(s, holder, p, f);
@@ -649,7 +766,11 @@ final class Compiler {
         } else if (x instanceof Scopes.RowColumn rc) {
             return tables.column(rc.row(), rc.column(), f);
         } else if (x instanceof TableDef t) {
-            problem(Code.WRONG_PLACE, f, p.span(), "`" + t.name() + "` is a table; look up a row with `" + t.name() + "(…)`.");
+            problem(
+                    Code.WRONG_PLACE,
+                    f,
+                    p.span(),
+                    "`" + t.name() + "` is a table; look up a row with `" + t.name() + "(…)`.");
             return BAD;
         }
         return BAD;
@@ -664,7 +785,8 @@ final class Compiler {
     }
 
     /** The one of several scales that is given. */
-    @Nullable Slot spoken(Shape.Spoken sp, Element holder) {
+    @Nullable
+    Slot spoken(Shape.Spoken sp, Element holder) {
         Slot one = null;
         for (Shape.Member m : sp.members()) {
             Slot s = holder.slot(m);
@@ -701,14 +823,21 @@ final class Compiler {
         }
         Name at = p.names().get(failedAt);
         if (failedAt == 0) {
-            Diagnostic d = Diagnostic.of(Code.UNKNOWN_NAME, f.file, at.span(), "Nothing here is called `" + at + "`."
-                    + Suggest.sentence(at.text(), graph.scopes.visible(ctx)));
+            Diagnostic d = Diagnostic.of(
+                    Code.UNKNOWN_NAME,
+                    f.file,
+                    at.span(),
+                    "Nothing here is called `" + at + "`." + Suggest.sentence(at.text(), graph.scopes.visible(ctx)));
             String near = Suggest.nearest(at.text(), graph.scopes.visible(ctx));
             problems.add(near == null ? d : d.withFix("write " + near, at.span(), near));
         } else {
             String before = p.names().get(failedAt - 1).text();
-            problem(Code.UNKNOWN_NAME, f, at.span(), "`" + before + "` has nothing called `" + at + "`."
-                    + Suggest.sentence(at.text(), graph.namesBehind(p, failedAt, ctx)));
+            problem(
+                    Code.UNKNOWN_NAME,
+                    f,
+                    at.span(),
+                    "`" + before + "` has nothing called `" + at + "`."
+                            + Suggest.sentence(at.text(), graph.namesBehind(p, failedAt, ctx)));
         }
         return BAD;
     }
@@ -727,7 +856,8 @@ final class Compiler {
         if (known instanceof Val v) {
             return v;
         }
-        Val v = eval(r.value(), Ctx.of(holder), Frame.at(holder.shape.homes.getOrDefault(r, graph.fileOf(holder)), false));
+        Val v = eval(
+                r.value(), Ctx.of(holder), Frame.at(holder.shape.homes.getOrDefault(r, graph.fileOf(holder)), false));
         holder.named.put("role " + r.name().text(), v);
         return v;
     }
@@ -769,7 +899,11 @@ final class Compiler {
             return new Val.Fixed(false);
         }
         if (x == null) {
-            problem(Code.UNKNOWN_NAME, f, g.span(), "Nothing here is called `" + g.path().text() + "`.");
+            problem(
+                    Code.UNKNOWN_NAME,
+                    f,
+                    g.span(),
+                    "Nothing here is called `" + g.path().text() + "`.");
         }
         return new Val.Fixed(x instanceof Element);
     }
@@ -781,7 +915,11 @@ final class Compiler {
             return BAD;
         }
         if (n.dimension() != null && n.dimension() != u.dimension()) {
-            problem(Code.DIMENSION_MISMATCH, f, i.span(), "This is a " + units.nameOf(n.dimension()) + " and cannot be taken in " + u.text() + ".");
+            problem(
+                    Code.DIMENSION_MISMATCH,
+                    f,
+                    i.span(),
+                    "This is " + English.a(units.nameOf(n.dimension())) + " and cannot be taken in " + u.text() + ".");
             return bad(Dimension.NONE);
         }
         return bare(n, u);
@@ -801,15 +939,21 @@ final class Compiler {
             case ADD:
             case SUB: {
                 Dimension d = same(l.dimension(), r.dimension(), at, f, o == Expr.Op.ADD ? "added" : "subtracted");
-                double v = !fold ? Double.NaN : o == Expr.Op.ADD ? l.constant() + r.constant() : l.constant() - r.constant();
+                double v = !fold
+                        ? Double.NaN
+                        : o == Expr.Op.ADD ? l.constant() + r.constant() : l.constant() - r.constant();
                 return result(o == Expr.Op.ADD ? Op.ADD : Op.SUB, l, r, d, v);
             }
             case MUL: {
-                Dimension d = l.dimension() == null || r.dimension() == null ? null : l.dimension().times(r.dimension());
+                Dimension d = l.dimension() == null || r.dimension() == null
+                        ? null
+                        : l.dimension().times(r.dimension());
                 return result(Op.MUL, l, r, d, fold ? l.constant() * r.constant() : Double.NaN);
             }
             case DIV: {
-                Dimension d = l.dimension() == null || r.dimension() == null ? null : l.dimension().over(r.dimension());
+                Dimension d = l.dimension() == null || r.dimension() == null
+                        ? null
+                        : l.dimension().over(r.dimension());
                 return result(Op.DIV, l, r, d, fold && r.constant() != 0 ? l.constant() / r.constant() : Double.NaN);
             }
             default:
@@ -824,12 +968,18 @@ final class Compiler {
         return new Val.Num(op(o, l.register(), r.register()), d, Double.NaN);
     }
 
-    @Nullable Dimension same(@Nullable Dimension a, @Nullable Dimension b, Expr at, Frame f, String done) {
+    @Nullable
+    Dimension same(@Nullable Dimension a, @Nullable Dimension b, Expr at, Frame f, String done) {
         if (a == null) {
             return b;
         }
         if (b != null && a != b) {
-            problem(Code.DIMENSION_MISMATCH, f, at.span(), "A " + units.nameOf(a) + " and a " + units.nameOf(b) + " can't be " + done + ".");
+            problem(
+                    Code.DIMENSION_MISMATCH,
+                    f,
+                    at.span(),
+                    English.capital(English.a(units.nameOf(a))) + " and " + English.a(units.nameOf(b)) + " can't be "
+                            + done + ".");
             return null;
         }
         return a;
@@ -837,7 +987,11 @@ final class Compiler {
 
     private Val.Num power(Val.Num l, Val.Num r, Expr at, Frame f) {
         if (r.dimension() != null && !r.dimension().isNone()) {
-            problem(Code.DIMENSION_MISMATCH, f, at.span(), "An exponent is a pure number; this one is a " + units.nameOf(r.dimension()) + ".");
+            problem(
+                    Code.DIMENSION_MISMATCH,
+                    f,
+                    at.span(),
+                    "An exponent is a pure number; this one is " + English.a(units.nameOf(r.dimension())) + ".");
             return bad(null);
         }
         Dimension d = l.dimension();
@@ -845,12 +999,18 @@ final class Compiler {
             double x = r.constant();
             int[] fraction = fraction(x);
             if (fraction == null) {
-                problem(Code.DIMENSION_MISMATCH, f, at.span(), "A " + units.nameOf(d) + " can only be raised to a fixed simple power.");
+                problem(
+                        Code.DIMENSION_MISMATCH,
+                        f,
+                        at.span(),
+                        English.capital(English.a(units.nameOf(d))) + " can only be raised to a fixed simple power.");
                 return bad(null);
             }
             d = d.power(fraction[0], fraction[1]);
         }
-        return new Val.Num(op(Op.POW, l.register(), r.register()), d,
+        return new Val.Num(
+                op(Op.POW, l.register(), r.register()),
+                d,
                 l.isConstant() && r.isConstant() ? Math.pow(l.constant(), r.constant()) : Double.NaN);
     }
 
@@ -924,10 +1084,15 @@ final class Compiler {
             if (beside instanceof Val.Word w && w.kind() != null && w.kind().has(p.text())) {
                 return new Val.Word(p.text(), w.kind());
             }
-            if (beside instanceof Val.Picked w && (w.words().contains(p.text()) || (w.kind() != null && w.kind().has(p.text())))) {
+            if (beside instanceof Val.Picked w
+                    && (w.words().contains(p.text())
+                            || (w.kind() != null && w.kind().has(p.text())))) {
                 return new Val.Word(p.text(), w.kind());
             }
-            if (beside instanceof Val.Open o && o.slot() != null && o.slot().decl.kind instanceof ValueKind.Choice k && k.kind().has(p.text())) {
+            if (beside instanceof Val.Open o
+                    && o.slot() != null
+                    && o.slot().decl.kind instanceof ValueKind.Choice k
+                    && k.kind().has(p.text())) {
                 return new Val.Word(p.text(), k.kind());
             }
             if (beside instanceof Val.Ref r && r.element().name.equals(p.text()) && r.element().parent != null) {
@@ -970,6 +1135,10 @@ final class Compiler {
                 return new Val.Fixed(x.element().name.equals(w.text()) == yes);
             }
         }
+        if (l instanceof Val.Open x && r instanceof Val.Open y && eq && isReference(x) && isReference(y)) {
+            // two members whose shafts are not given: the same open shaft is the same shaft
+            return new Val.Fixed((x.slot() == y.slot()) == yes);
+        }
         if (l instanceof Val.Word x && r instanceof Val.Word y && eq) {
             return new Val.Fixed(x.text().equals(y.text()) == yes);
         }
@@ -983,7 +1152,13 @@ final class Compiler {
             int any = constant(0);
             for (String w : x.words()) {
                 if (y.words().contains(w)) {
-                    any = op(Op.OR, any, op(Op.AND, op(Op.EQ, x.register(), constant(x.words().indexOf(w))), op(Op.EQ, y.register(), constant(y.words().indexOf(w)))));
+                    any = op(
+                            Op.OR,
+                            any,
+                            op(
+                                    Op.AND,
+                                    op(Op.EQ, x.register(), constant(x.words().indexOf(w))),
+                                    op(Op.EQ, y.register(), constant(y.words().indexOf(w)))));
                 }
             }
             return new Val.Truth(yes ? any : op(Op.NOT, any));
@@ -1011,6 +1186,10 @@ final class Compiler {
         }
         problem(Code.WRONG_FORM, f, at.span(), "This compares " + what(l) + " with " + what(r) + ".");
         return BAD;
+    }
+
+    private static boolean isReference(Val.Open o) {
+        return o.slot() != null && o.slot().decl.kind instanceof ValueKind.Reference;
     }
 
     private static String plain(double v) {
@@ -1131,9 +1310,7 @@ final class Compiler {
             }
         }
         int last = values.size() - 1;
-        Val result = arms.get(last).condition() instanceof Val.Fixed
-                ? values.get(last)
-                : null;
+        Val result = arms.get(last).condition() instanceof Val.Fixed ? values.get(last) : null;
         int from = last;
         if (result == null) {
             Slot s = f.slot;
@@ -1180,7 +1357,13 @@ final class Compiler {
                 }
                 index = constant(words.indexOf(w));
             }
-            result = result < 0 ? index : op(Op.SELECT, truth(arms.get(i).condition(), arms.get(i).arm().value(), f), index, result);
+            result = result < 0
+                    ? index
+                    : op(
+                            Op.SELECT,
+                            truth(arms.get(i).condition(), arms.get(i).arm().value(), f),
+                            index,
+                            result);
         }
         return new Val.Picked(result, List.copyOf(words), kind);
     }
@@ -1247,7 +1430,8 @@ final class Compiler {
             return new Val.Num(0, start.dimension(), Double.NaN);
         }
         int position = graph.tape.position();
-        int x = graph.tape.emit(Op.SETTLE, start.register(), tolerance.register(), 0, most.isConstant() ? most.constant() : 60);
+        int x = graph.tape.emit(
+                Op.SETTLE, start.register(), tolerance.register(), 0, most.isConstant() ? most.constant() : 60);
         Val.Num unknown = new Val.Num(x, start.dimension(), Double.NaN);
         List<Slot> saved = enter(s, unknown);
         Val.Num v = number(e.value(), ctx, f);

@@ -39,7 +39,9 @@ public final class DriveBuilder {
             for (Entry e : l.body()) {
                 if (e instanceof Entry.Block b) {
                     String head = b.head().text();
-                    String name = head.equals("duty") ? "rated" : b.name() == null ? null : b.name().text();
+                    String name = head.equals("duty")
+                            ? "rated"
+                            : b.name() == null ? null : b.name().text();
                     if ((head.equals("duty") || head.equals("case") || head.equals("spectrum")) && name != null) {
                         if (name.equals("rated")) {
                             return name;
@@ -55,7 +57,12 @@ public final class DriveBuilder {
     }
 
     public static DriveGraph build(
-            Shapes shapes, DriveGraph.Top top, DriveSource source, @Nullable String caseName, Problems problems, boolean traced) {
+            Shapes shapes,
+            DriveGraph.Top top,
+            DriveSource source,
+            @Nullable String caseName,
+            Problems problems,
+            boolean traced) {
         DriveGraph g = new DriveGraph(shapes, top, problems, traced);
         Element drive = new Element(0, source.name(), shapes.of("drive"), null, "");
         drive.file = source.file();
@@ -78,7 +85,9 @@ public final class DriveBuilder {
             el.queue(drive, l.body(), l.file());
             first = false;
         }
-        if (caseName != null && drive.named.get(caseName) instanceof Element k && shapes.library.isKind(k.kind(), "case")) {
+        if (caseName != null
+                && drive.named.get(caseName) instanceof Element k
+                && shapes.library.isKind(k.kind(), "case")) {
             g.activeCase = k;
         }
         el.drain();
@@ -96,12 +105,20 @@ public final class DriveBuilder {
                 if (!(e instanceof Entry.Rate r)) {
                     continue;
                 }
-                String under = r.under() == null || r.under().isHole() ? standard : r.under().text();
-                if (under != null && !(g.drive.named.get(under) instanceof Element k && g.shapes.library.isKind(k.kind(), "case"))) {
+                String under = r.under() == null || r.under().isHole()
+                        ? standard
+                        : r.under().text();
+                if (under != null
+                        && !(g.drive.named.get(under) instanceof Element k
+                                && g.shapes.library.isKind(k.kind(), "case"))) {
                     if (java.util.Objects.equals(caseName, standard) && r.under() != null) {
                         List<String> cases = new ArrayList<>();
                         g.allOfKind("case").forEach(c -> cases.add(c.name));
-                        g.problems.add(Code.UNKNOWN_NAME, l.file(), r.under().span(), "There is no case `" + under + "`." + Suggest.sentence(under, cases));
+                        g.problems.add(
+                                Code.UNKNOWN_NAME,
+                                l.file(),
+                                r.under().span(),
+                                "There is no case `" + under + "`." + Suggest.sentence(under, cases));
                     }
                     continue;
                 }
@@ -145,12 +162,30 @@ public final class DriveBuilder {
                     nestedLimits(g, e, e.shape, List.of());
                 }
             }
+            for (RelationUse r : g.relations) {
+                if (r.solved != null && r.solved.isWhole()) {
+                    g.compiler.value(r.solved);
+                }
+            }
             agreements(g);
             if (requirements != null) {
                 requirements.compile(ofDrive);
             }
         }
+        unusedLets(g);
         g.tape.finish();
+    }
+
+    /** A name of the drive that nothing speaks of. */
+    private static void unusedLets(DriveGraph g) {
+        for (Object x : g.drive.named.values()) {
+            if (x instanceof Slot s
+                    && s.decl.role == backcone.engine.model.Decl.Role.LET
+                    && !g.usedDecls.contains(s.decl)) {
+                g.problems.add(
+                        Code.UNUSED_NAME, s.decl.file, s.decl.nameNode.span(), "Nothing uses `" + s.decl.name + "`.");
+            }
+        }
     }
 
     /** The checks of a rating, the pair's first, then each member's. */
@@ -162,7 +197,9 @@ public final class DriveBuilder {
 
     private static void checks(DriveGraph g, Element space, Element at, Shape s, List<Axis> axes, List<Slot> out) {
         for (backcone.engine.model.Decl d : s.decls) {
-            if (d.role == backcone.engine.model.Decl.Role.CHECK && at.own(d.name) instanceof Slot slot && slot.decl == d) {
+            if (d.role == backcone.engine.model.Decl.Role.CHECK
+                    && at.own(d.name) instanceof Slot slot
+                    && slot.decl == d) {
                 out.add(slot);
             }
         }
@@ -170,7 +207,8 @@ public final class DriveBuilder {
             if (Checks.of(each.getValue()).isEmpty()) {
                 continue;
             }
-            if (g.scopes.collection(each.getKey(), new Ctx(space, axes, null), new Element[1]) instanceof Val.Group group) {
+            if (g.scopes.collection(each.getKey(), new Ctx(space, axes, null), new Element[1])
+                    instanceof Val.Group group) {
                 for (Element el : group.elements()) {
                     List<Axis> more = new ArrayList<>(axes);
                     more.add(new Axis(each.getKey(), el));
@@ -184,7 +222,9 @@ public final class DriveBuilder {
     }
 
     private static boolean limited(Shape s) {
-        return !s.limits.isEmpty() || !s.applies.isEmpty() || s.each.values().stream().anyMatch(DriveBuilder::limited);
+        return !s.limits.isEmpty()
+                || !s.applies.isEmpty()
+                || s.each.values().stream().anyMatch(DriveBuilder::limited);
     }
 
     private static void nestedLimits(DriveGraph g, Element space, Shape shape, List<Axis> axes) {
@@ -192,7 +232,8 @@ public final class DriveBuilder {
             if (!limited(each.getValue())) {
                 continue;
             }
-            if (!(g.scopes.collection(each.getKey(), new Ctx(space, axes, null), new Element[1]) instanceof Val.Group group)) {
+            if (!(g.scopes.collection(each.getKey(), new Ctx(space, axes, null), new Element[1])
+                    instanceof Val.Group group)) {
                 continue;
             }
             for (Element el : group.elements()) {
@@ -221,7 +262,9 @@ public final class DriveBuilder {
             int right = -1;
             Expr.Compare compare = null;
             backcone.engine.units.Unit unit = null;
-            if (register >= 0 && condition instanceof Expr.Compare c && c.operands().size() == 2) {
+            if (register >= 0
+                    && condition instanceof Expr.Compare c
+                    && c.operands().size() == 2) {
                 Val a = g.compiler.eval(c.operands().get(0), ctx, f);
                 Val b = g.compiler.eval(c.operands().get(1), ctx, f);
                 if (a instanceof Val.Num x && b instanceof Val.Num y) {
@@ -243,7 +286,11 @@ public final class DriveBuilder {
         }
         for (Shape.Applies a : shape.applies) {
             Val v = g.compiler.eval(a.syntax().condition(), ctx, Frame.at(a.body().file, false));
-            g.applies.add(new DriveGraph.AppliesUse(a.syntax(), a.body().file, at, v instanceof Val.Truth t ? t.register() : -1,
+            g.applies.add(new DriveGraph.AppliesUse(
+                    a.syntax(),
+                    a.body().file,
+                    at,
+                    v instanceof Val.Truth t ? t.register() : -1,
                     !(v instanceof Val.Fixed x) || x.is()));
         }
     }
@@ -251,7 +298,10 @@ public final class DriveBuilder {
     private static void agreements(DriveGraph g) {
         Relations known = new Relations(g);
         for (RelationUse r : g.relations) {
-            if (!r.active || r.solved != null || !(r.def.syntax().equation() instanceof Expr.Compare c) || c.operands().size() != 2) {
+            if (!r.active
+                    || r.solved != null
+                    || !(r.def.syntax().equation() instanceof Expr.Compare c)
+                    || c.operands().size() != 2) {
                 continue;
             }
             if (!r.slots.stream().allMatch(known::available)) {
@@ -263,17 +313,21 @@ public final class DriveBuilder {
             if (a instanceof Val.Num x && b instanceof Val.Num y) {
                 double within = 0.001;
                 for (Note n : r.def.syntax().notes()) {
-                    if (n instanceof Note.Within w && g.compiler.eval(w.amount(), r.ctx, f) instanceof Val.Num t && t.isConstant()) {
+                    if (n instanceof Note.Within w
+                            && g.compiler.eval(w.amount(), r.ctx, f) instanceof Val.Num t
+                            && t.isConstant()) {
                         within = t.constant();
                     }
                 }
-                g.agreements.add(new DriveGraph.Agreement(r.def, r.ctx.self(), x.register(), y.register(), within, r.slots));
+                g.agreements.add(
+                        new DriveGraph.Agreement(r.def, r.ctx.self(), x.register(), y.register(), within, r.slots));
             }
         }
     }
 
     /** A file's own top-level blocks, so that a library of materials is checked without a drive. */
-    public static DriveGraph library(Shapes shapes, DriveGraph.Top top, FileId file, List<String> names, Problems problems) {
+    public static DriveGraph library(
+            Shapes shapes, DriveGraph.Top top, FileId file, List<String> names, Problems problems) {
         DriveGraph g = new DriveGraph(shapes, top, problems, false);
         Element drive = new Element(0, "", shapes.of("drive"), null, "");
         drive.file = file;

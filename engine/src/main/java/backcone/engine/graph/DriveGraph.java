@@ -36,7 +36,10 @@ public final class DriveGraph {
     final Compiler compiler;
     final List<Element> elements = new ArrayList<>();
     Element drive;
-    @Nullable Element activeCase;
+
+    @Nullable
+    Element activeCase;
+
     private @Nullable Train train;
     private @Nullable Checker checker;
     private int load = -1;
@@ -55,6 +58,7 @@ public final class DriveGraph {
     final List<RelationUse> relations = new ArrayList<>();
     final List<Agreement> agreements = new ArrayList<>();
     final List<RequirementUse> requirements = new ArrayList<>();
+    final Set<Entry.Accept> ambiguous = new HashSet<>();
     final List<Uncovered> uncovered = new ArrayList<>();
     final Map<String, Element> topElements = new LinkedHashMap<>();
     final Set<Decl> usedDecls = new HashSet<>();
@@ -65,7 +69,8 @@ public final class DriveGraph {
     /** The texts around a drive. */
     public interface Top {
         /** What a top-level name of this file or of the files it uses means. */
-        @Nullable TopEntry find(String name);
+        @Nullable
+        TopEntry find(String name);
 
         Collection<String> names();
 
@@ -76,7 +81,10 @@ public final class DriveGraph {
     /** A top-level entry; a namespace of a {@code use … as} has several. */
     public record TopEntry(FileId file, Entry entry, Map<String, TopEntry> inside) {}
 
-    public record Input(double value, Expr.@Nullable Num literal, @Nullable Unit unit) {}
+    public record Input(
+            double value,
+            Expr.@Nullable Num literal,
+            @Nullable Unit unit) {}
 
     /** Another reading of an equation, switched by an input. */
     public record OpenPoint(Slot slot, String reading, int input) {}
@@ -92,7 +100,13 @@ public final class DriveGraph {
 
     /** A rating of a mesh; {@code space} is null where the method is not known. */
     public record RateUse(
-            Entry.Rate syntax, FileId file, Element mesh, @Nullable Element space, @Nullable MethodDef method, String name) {
+            Entry.Rate syntax,
+            FileId file,
+            Element mesh,
+            @Nullable Element space,
+            @Nullable MethodDef method,
+            String name,
+            String why) {
         public String id() {
             return mesh.path() + "." + name;
         }
@@ -100,8 +114,15 @@ public final class DriveGraph {
 
     /** A limit at an element. {@code condition} is a register, or −1 where settled ({@code holds}). */
     public record LimitUse(
-            BodyDef.LimitDef def, Element at, int condition, boolean holds, List<Slot> targets, int left, int right,
-            Expr.@Nullable Compare compare, @Nullable Unit unit) {
+            BodyDef.LimitDef def,
+            Element at,
+            int condition,
+            boolean holds,
+            List<Slot> targets,
+            int left,
+            int right,
+            Expr.@Nullable Compare compare,
+            @Nullable Unit unit) {
         public String path() {
             String p = at.path();
             return (p.isEmpty() ? "" : p + ".") + "limit." + def.syntax().name().text();
@@ -111,7 +132,8 @@ public final class DriveGraph {
     public record AppliesUse(Entry.Applies syntax, FileId file, Element at, int condition, boolean holds) {}
 
     /** A relation whose names are all known: both sides must agree. */
-    public record Agreement(BodyDef.RelationDef def, Element at, int left, int right, double within, List<Slot> slots) {}
+    public record Agreement(
+            BodyDef.RelationDef def, Element at, int left, int right, double within, List<Slot> slots) {}
 
     public DriveGraph(Shapes shapes, Top top, Problems problems, boolean traced) {
         this.shapes = shapes;
@@ -192,7 +214,8 @@ public final class DriveGraph {
     }
 
     /** A top-level name: an element for a block, a slot for a {@code let}, made when first asked for. */
-    @Nullable Object top(String name) {
+    @Nullable
+    Object top(String name) {
         Element known = topElements.get(name);
         if (known != null) {
             return known;
@@ -310,6 +333,11 @@ public final class DriveGraph {
 
     public List<RequirementUse> requirements() {
         return requirements;
+    }
+
+    /** Acceptances that could mean several ratings; the finding is made. */
+    public Set<Entry.Accept> ambiguous() {
+        return ambiguous;
     }
 
     public List<Uncovered> uncovered() {
@@ -434,10 +462,13 @@ public final class DriveGraph {
             if (!all.add(x)) {
                 continue;
             }
+            if (x.fact() != null) {
+                return List.of(); // it is written, and what is wrong with it is said there
+            }
             for (RelationUse r : x.relations) {
                 if (r.active && r.solved == null) {
                     for (Slot y : r.slots) {
-                        if (y.decl.value == null && !known.available(y)) {
+                        if ((y.decl.value == null || y.fact() != null) && !known.available(y)) {
                             todo.add(y);
                         }
                     }

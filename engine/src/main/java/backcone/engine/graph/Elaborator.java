@@ -3,6 +3,7 @@ package backcone.engine.graph;
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.model.Decl;
+import backcone.engine.model.English;
 import backcone.engine.model.MethodDef;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.ValueKind;
@@ -33,7 +34,8 @@ final class Elaborator {
     private boolean example;
 
     /** The space of the method whose example this is. */
-    @Nullable Element exampleSpace;
+    @Nullable
+    Element exampleSpace;
 
     private record Pending(Element element, List<Entry> body, FileId file, boolean overlay) {}
 
@@ -77,13 +79,18 @@ final class Elaborator {
                     e.named.put(n.text(), x);
                     all.add(x);
                 }
-                e.named.put("group " + collection, new Val.Group(all, collection, p.kind().text()));
+                e.named.put(
+                        "group " + collection,
+                        new Val.Group(all, collection, p.kind().text()));
             } else {
-                e.named.put("group " + collection, new Val.Group(new ArrayList<>(), collection, p.kind().text()));
+                e.named.put(
+                        "group " + collection,
+                        new Val.Group(new ArrayList<>(), collection, p.kind().text()));
             }
         }
         for (Entry.Part p : e.shape.part) {
-            Element x = new Element(graph.nextId[0]++, p.name().text(), graph.shapes.of(p.kind().text()), e, "");
+            Element x = new Element(
+                    graph.nextId[0]++, p.name().text(), graph.shapes.of(p.kind().text()), e, "");
             x.span = e.span;
             furnish(x);
             graph.elements.add(x);
@@ -96,7 +103,8 @@ final class Elaborator {
         for (Entry.Cases c : e.shape.cases) {
             List<Element> all = new ArrayList<>();
             for (Name w : c.words()) {
-                Element x = new Element(graph.nextId[0]++, w.text(), Shapes.WORD, e, c.name().text());
+                Element x = new Element(
+                        graph.nextId[0]++, w.text(), Shapes.WORD, e, c.name().text());
                 e.named.put(w.text(), x);
                 all.add(x);
             }
@@ -104,7 +112,8 @@ final class Elaborator {
         }
     }
 
-    @Nullable Object topLevel(String name, DriveGraph.TopEntry t) {
+    @Nullable
+    Object topLevel(String name, DriveGraph.TopEntry t) {
         if (!t.inside().isEmpty()) {
             Element space = new Element(graph.nextId[0]++, name, Shapes.WORD, null, "");
             graph.topElements.put(name, space);
@@ -121,7 +130,8 @@ final class Elaborator {
             if (!graph.shapes.library.kinds.containsKey(kind)) {
                 return null;
             }
-            Element e = create(b.name() == null ? kind : b.name().text(), graph.shapes.of(kind), null, "", t.file(), b.span());
+            Element e = create(
+                    b.name() == null ? kind : b.name().text(), graph.shapes.of(kind), null, "", t.file(), b.span());
             e.title = b.title();
             e.headSpan = head(b);
             graph.topElements.put(name, e);
@@ -144,8 +154,19 @@ final class Elaborator {
     }
 
     private Slot let(Element at, Entry.Let l, FileId file) {
-        Decl d = new Decl(l.name(), null, null, new ValueKind.Inferred(), null, Entry.Given.EQUALS, l.value(), Decl.Role.LET, l.notes(), file,
-                l.span(), "let");
+        Decl d = new Decl(
+                l.name(),
+                null,
+                null,
+                new ValueKind.Inferred(),
+                null,
+                Entry.Given.EQUALS,
+                l.value(),
+                Decl.Role.LET,
+                l.notes(),
+                file,
+                l.span(),
+                "let");
         return new Slot(at, d);
     }
 
@@ -197,7 +218,13 @@ final class Elaborator {
         }
         Object slot = e.own(head);
         if (slot instanceof Slot s && s.decl.kind instanceof ValueKind.Reference r && b.name() == null) {
-            Element inline = create(e.path().isEmpty() ? head : e.path() + "." + head, graph.shapes.of(r.kind()), null, "", file, b.span());
+            Element inline = create(
+                    e.path().isEmpty() ? head : e.path() + "." + head,
+                    graph.shapes.of(r.kind()),
+                    null,
+                    "",
+                    file,
+                    b.span());
             s.inline = inline;
             queue(inline, b.body(), file);
             return;
@@ -223,11 +250,17 @@ final class Elaborator {
         }
         e.shape.part.forEach(p -> may.add(p.name().text()));
         if (graph.shapes.library.kinds.containsKey(head)) {
-            graph.problems.add(Code.WRONG_PLACE, file, b.head().span(), "A block `" + head + "` does not belong in " + where(e) + "; it holds "
-                    + Compiler.list(may) + ".");
+            graph.problems.add(
+                    Code.WRONG_PLACE,
+                    file,
+                    b.head().span(),
+                    "A block `" + head + "` does not belong in " + where(e) + "; it holds " + Compiler.list(may) + ".");
         } else {
-            graph.problems.add(Code.UNKNOWN_KIND, file, b.head().span(), "There is no block `" + head + "` in " + where(e) + "."
-                    + Suggest.sentence(head, may));
+            graph.problems.add(
+                    Code.UNKNOWN_KIND,
+                    file,
+                    b.head().span(),
+                    "There is no block `" + head + "` in " + where(e) + "." + Suggest.sentence(head, may));
         }
     }
 
@@ -245,7 +278,8 @@ final class Elaborator {
                 continue;
             }
             if (p.names().get(0).text().equals(head)
-                    || (graph.shapes.library.kinds.containsKey(head) && graph.shapes.library.isKind(head, p.kind().text()))) {
+                    || (graph.shapes.library.kinds.containsKey(head)
+                            && graph.shapes.library.isKind(head, p.kind().text()))) {
                 return p;
             }
         }
@@ -256,7 +290,8 @@ final class Elaborator {
     }
 
     private void added(Element e, Entry.Block b, String head, Entry.Parts p, FileId file) {
-        String kind = graph.shapes.library.kinds.containsKey(head) ? head : p.kind().text();
+        String kind =
+                graph.shapes.library.kinds.containsKey(head) ? head : p.kind().text();
         String collection = p.names().get(0).text();
         Val.Group g = (Val.Group) java.util.Objects.requireNonNull(e.named.get("group " + collection));
         String name = b.name() != null
@@ -264,8 +299,11 @@ final class Elaborator {
                 : head.equals("duty") ? "rated" : head + "_" + (g.elements().size() + 1);
         Object old = e.named.get(name);
         if (old != null && !overlay) {
-            Diagnostic d = Diagnostic.of(Code.DUPLICATE_NAME, file, b.name() == null ? b.head().span() : b.name().span(), "`" + name
-                    + "` is there already; give one of the two another name.");
+            Diagnostic d = Diagnostic.of(
+                    Code.DUPLICATE_NAME,
+                    file,
+                    b.name() == null ? b.head().span() : b.name().span(),
+                    "`" + name + "` is there already; give one of the two another name.");
             graph.problems.add(old instanceof Element x ? d.withRelated(file, x.span, "the other `" + name + "`") : d);
             return;
         }
@@ -288,7 +326,8 @@ final class Elaborator {
             return;
         }
         if (e.own("on") instanceof Slot s) {
-            s.given = new Slot.Fact(new Expr.Path(List.of(on), on.span()), Ctx.of(graph.drive), List.of(), file, on.span(), on.span());
+            s.given = new Slot.Fact(
+                    new Expr.Path(List.of(on), on.span()), Ctx.of(graph.drive), List.of(), file, on.span(), on.span());
         } else {
             graph.problems.add(Code.WRONG_PLACE, file, on.span(), "`" + b.head() + "` sits on no shaft.");
         }
@@ -301,15 +340,30 @@ final class Elaborator {
             Slot s = let(e, l, file);
             Object old = e.named.put(l.name().text(), s);
             if (old != null && !overlay) {
-                graph.problems.add(Code.DUPLICATE_NAME, file, l.name().span(), "`" + l.name() + "` is there already; give one of the two another name.");
+                graph.problems.add(
+                        Code.DUPLICATE_NAME,
+                        file,
+                        l.name().span(),
+                        "`" + l.name() + "` is there already; give one of the two another name.");
             } else if (e.shape.names.containsKey(l.name().text())) {
-                graph.problems.add(Code.HIDDEN_NAME, file, l.name().span(), "`" + l.name() + "` is a property of " + where(e)
-                        + "; call this value something else.");
+                graph.problems.add(
+                        Code.HIDDEN_NAME,
+                        file,
+                        l.name().span(),
+                        "`" + l.name() + "` is a property of " + where(e) + "; call this value something else.");
             }
         } else if (x instanceof Entry.Override o) {
             override(e, o, file);
         } else if (x instanceof Entry.FactFor t) {
-            graph.tightLimits.put(t.target().text(), new Slot.Fact(t.value(), Ctx.of(e), t.notes(), file, t.span(), t.name().span()));
+            graph.tightLimits.put(
+                    t.target().text(),
+                    new Slot.Fact(
+                            t.value(),
+                            Ctx.of(e),
+                            t.notes(),
+                            file,
+                            t.span(),
+                            t.name().span()));
         } else if (x instanceof Entry.Each each && example) {
             if (e.named.get("group " + each.collection().text()) instanceof Val.Group g) {
                 for (Element el : g.elements()) {
@@ -326,11 +380,20 @@ final class Elaborator {
         } else if (x instanceof Entry.Requirement r) {
             boolean inRate = e.isSpace();
             if (!inRate) {
-                graph.problems.add(Code.WRONG_PLACE, file, r.span(), "A requirement of a check stands in a `rate` block; here write `require "
-                        + r.path().text() + " " + r.cmp().sign + " …`.");
+                graph.problems.add(
+                        Code.WRONG_PLACE,
+                        file,
+                        r.span(),
+                        "A requirement of a check stands in a `rate` block; here write `require "
+                                + r.path().text() + " " + r.cmp().sign + " …`.");
             }
         } else if (!allowed(e, x)) {
-            graph.problems.add(Code.WRONG_PLACE, file, firstWord(x), "This entry does not belong in " + where(e) + ".");
+            String why = backcone.engine.model.EntryNames.misplaced(x);
+            graph.problems.add(
+                    Code.WRONG_PLACE,
+                    file,
+                    firstWord(x),
+                    why != null ? why : "This entry does not belong in " + where(e) + ".");
         }
     }
 
@@ -368,15 +431,21 @@ final class Elaborator {
         }
         Slot s = (Slot) target;
         if (s.decl.how == Entry.Given.EQUALS && s.decl.role != Decl.Role.LET && !example) {
-            Diagnostic d = Diagnostic.of(Code.COMPUTED_GIVEN, file, f.span(), "`" + s.decl.name + "` is computed here; to put a value of your own in its place write `override "
-                    + f.path().text() + " = … because \"…\"`.");
+            Diagnostic d = Diagnostic.of(
+                    Code.COMPUTED_GIVEN,
+                    file,
+                    f.span(),
+                    "`" + s.decl.name + "` is computed here; to put a value of your own in its place write `override "
+                            + f.path().text() + " = … because \"…\"`.");
             graph.problems.add(d.withRelated(s.decl.file, s.decl.span, "its equation"));
             return;
         }
         Ctx scope = Ctx.of(e.isSpace() || e.shape == Shapes.WORD ? e : e);
-        Slot.Fact given = new Slot.Fact(f.value(), scope, f.notes(), file, f.span(), f.path().span());
+        Slot.Fact given = new Slot.Fact(
+                f.value(), scope, f.notes(), file, f.span(), f.path().span());
         if (s.given != null && !overlay) {
-            Diagnostic d = Diagnostic.of(Code.DUPLICATE_NAME, file, f.path().span(), "`" + f.path().text() + "` is given twice; keep one.");
+            Diagnostic d = Diagnostic.of(
+                    Code.DUPLICATE_NAME, file, f.path().span(), "`" + f.path().text() + "` is given twice; keep one.");
             graph.problems.add(d.withRelated(s.given.file(), s.given.span(), "given here"));
             return;
         }
@@ -387,7 +456,8 @@ final class Elaborator {
     private void notes(List<Note> notes, FileId file, Span span) {
         for (Note n : notes) {
             if (n instanceof Note.Assumed a && a.reason() == null) {
-                graph.problems.add(Code.NEEDS_REASON, file, n.span(), "An assumption says why: `assumed because \"…\"`.");
+                graph.problems.add(
+                        Code.NEEDS_REASON, file, n.span(), "An assumption says why: `assumed because \"…\"`.");
             }
         }
     }
@@ -403,9 +473,14 @@ final class Elaborator {
             reason |= n instanceof Note.Because;
         }
         if (!reason) {
-            graph.problems.add(Code.NEEDS_REASON, file, o.span(), "An override says why: `override " + o.path().text() + " = … because \"…\"`.");
+            graph.problems.add(
+                    Code.NEEDS_REASON,
+                    file,
+                    o.span(),
+                    "An override says why: `override " + o.path().text() + " = … because \"…\"`.");
         }
-        s.override = new Slot.Fact(o.value(), Ctx.of(e), o.notes(), file, o.span(), o.path().span());
+        s.override = new Slot.Fact(
+                o.value(), Ctx.of(e), o.notes(), file, o.span(), o.path().span());
     }
 
     /** What the left side of a fact means; only names of this block and of what it holds. */
@@ -495,8 +570,15 @@ final class Elaborator {
         }
         String near = Suggest.nearest(n.text(), may);
         String kind = holder.kind().isEmpty() ? holder.name : holder.kind();
-        Diagnostic d = Diagnostic.of(Code.UNKNOWN_PROPERTY, file, n.span(), "A " + (holder.isSpace() && holder.method != null ? "rating by " + holder.method.name() : kind)
-                + " has no property `" + n + "`." + (near == null ? " `backcone handbook " + kind + "` lists what it has." : " Did you mean `" + near + "`?"));
+        Diagnostic d = Diagnostic.of(
+                Code.UNKNOWN_PROPERTY,
+                file,
+                n.span(),
+                "A " + (holder.isSpace() && holder.method != null ? "rating by " + holder.method.name() : kind)
+                        + " has no property `" + n + "`."
+                        + (near == null
+                                ? " `backcone handbook " + kind + "` lists what it has."
+                                : " Did you mean `" + near + "`?"));
         graph.problems.add(near == null ? d : d.withFix("write " + near, n.span(), near));
     }
 
@@ -505,7 +587,8 @@ final class Elaborator {
         Dimension d = dimension(value);
         if (d != null) {
             for (Shape.Member m : sp.members()) {
-                if (m.decl().kind instanceof ValueKind.Quantity q && q.kind().shown().dimension() == d) {
+                if (m.decl().kind instanceof ValueKind.Quantity q
+                        && q.kind().shown().dimension() == d) {
                     return holder.slot(m);
                 }
             }
@@ -518,7 +601,9 @@ final class Elaborator {
             if (n.unit() == null) {
                 return null;
             }
-            return Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok ? ok.unit().dimension() : null;
+            return Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok
+                    ? ok.unit().dimension()
+                    : null;
         }
         if (e instanceof Expr.Range r) {
             Dimension d = dimension(r.low());
@@ -532,11 +617,17 @@ final class Elaborator {
 
     /** {@code pinion = gear sun}: the member takes the facts and the shaft of a shared block. */
     private void shared(Element part, Entry.Fact f, FileId file) {
-        String name = f.value() instanceof Expr.BlockRef b ? b.name().text() : f.value() instanceof Expr.Path p ? p.text() : "";
+        String name = f.value() instanceof Expr.BlockRef b
+                ? b.name().text()
+                : f.value() instanceof Expr.Path p ? p.text() : "";
         Object x = graph.drive.named.get(name);
         if (!(x instanceof Element block) || !graph.shapes.library.isKind(part.kind(), block.kind())) {
-            graph.problems.add(Code.NOT_A_BLOCK, file, f.value().span(), "`" + f.path().text() + "` is a block of its own or a shared one: `"
-                    + f.path().text() + " = gear NAME` with `gear NAME on SHAFT { … }` in the drive.");
+            graph.problems.add(
+                    Code.NOT_A_BLOCK,
+                    file,
+                    f.value().span(),
+                    "`" + f.path().text() + "` is a block of its own or a shared one: `"
+                            + f.path().text() + " = gear NAME` with `gear NAME on SHAFT { … }` in the drive.");
             return;
         }
         DriveGraph.TopEntry source = graph.sharedBlocks.get(name);
@@ -545,8 +636,14 @@ final class Elaborator {
             queue(part, b.body(), source.file());
         }
         if (part.own("shared") instanceof Slot s) {
-            s.given = new Slot.Fact(new Expr.Path(List.of(new Name(name, f.value().span())), f.value().span()), Ctx.of(graph.drive), f.notes(),
-                    file, f.span(), f.path().span());
+            s.given = new Slot.Fact(
+                    new Expr.Path(
+                            List.of(new Name(name, f.value().span())), f.value().span()),
+                    Ctx.of(graph.drive),
+                    f.notes(),
+                    file,
+                    f.span(),
+                    f.path().span());
         }
         part.span = f.span();
         part.file = file;
@@ -561,8 +658,12 @@ final class Elaborator {
             if (!r.mesh().names().get(0).isHole()) {
                 List<String> meshes = new ArrayList<>();
                 graph.allOfKind("mesh").forEach(m -> meshes.add(m.name));
-                graph.problems.add(Code.UNKNOWN_NAME, file, r.mesh().span(), "There is no mesh `" + r.mesh().text() + "` to rate."
-                        + Suggest.sentence(r.mesh().text(), meshes));
+                graph.problems.add(
+                        Code.UNKNOWN_NAME,
+                        file,
+                        r.mesh().span(),
+                        "There is no mesh `" + r.mesh().text() + "` to rate."
+                                + Suggest.sentence(r.mesh().text(), meshes));
             }
             return;
         }
@@ -574,13 +675,24 @@ final class Elaborator {
         MethodDef def = graph.shapes.library.method(method, mesh.kind());
         if (def == null) {
             noMethod(r, file, mesh, method);
-            graph.rates.add(new DriveGraph.RateUse(r, file, mesh, null, null, name));
+            graph.rates.add(new DriveGraph.RateUse(
+                    r, file, mesh, null, null, name, "the method `" + method + "` is not in this handbook"));
             return;
         }
         String edition = edition(r, file, def);
+        if (edition == null && !def.body().editions.isEmpty()) {
+            // no edition is assumed, so there is nothing to rate by
+            graph.rates.add(new DriveGraph.RateUse(
+                    r, file, mesh, null, def, name, "the edition of `" + method + "` is not written"));
+            return;
+        }
         if (mesh.named.containsKey(name) && !replace) {
-            graph.problems.add(Code.DUPLICATE_NAME, file, (r.as() == null ? r.method() : r.as()).span(), "`" + mesh.name
-                    + "` has a rating `" + name + "` already; give this one a name of its own: `rate " + mesh.name + " by " + method + " as NAME`.");
+            graph.problems.add(
+                    Code.DUPLICATE_NAME,
+                    file,
+                    (r.as() == null ? r.method() : r.as()).span(),
+                    "`" + mesh.name + "` has a rating `" + name + "` already; give this one a name of its own: `rate "
+                            + mesh.name + " by " + method + " as NAME`.");
             return;
         }
         if (replace) {
@@ -588,7 +700,7 @@ final class Elaborator {
             mesh.ratings.removeIf(m -> m.name.equals(name));
         }
         Element space = space(mesh, def, name, edition, file, r.span());
-        graph.rates.add(new DriveGraph.RateUse(r, file, mesh, space, def, name));
+        graph.rates.add(new DriveGraph.RateUse(r, file, mesh, space, def, name, ""));
         queue(space, r.body(), file);
         for (Entry e : r.body()) {
             if (e instanceof Entry.UseReading u) {
@@ -613,23 +725,38 @@ final class Elaborator {
     private void noMethod(Entry.Rate r, FileId file, Element mesh, String method) {
         List<MethodDef> other = graph.shapes.library.methods.get(method);
         if (other != null && !other.isEmpty()) {
-            graph.problems.add(Code.UNKNOWN_METHOD, file, r.method().span(), "`" + method + "` rates a " + other.get(0).kind() + "; `" + mesh.name + "` is a "
-                    + mesh.kind() + ".");
+            graph.problems.add(
+                    Code.UNKNOWN_METHOD,
+                    file,
+                    r.method().span(),
+                    "`" + method + "` rates " + English.a(other.get(0).kind()) + "; `" + mesh.name + "` is "
+                            + English.a(mesh.kind()) + ".");
             return;
         }
         List<String> fit = new ArrayList<>();
         graph.shapes.library.methods.forEach((k, v) -> {
-            if (v.stream().anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind()) && hasChecks(m))) {
+            if (v.stream()
+                    .anyMatch(m -> graph.shapes.library.isKind(mesh.kind(), m.kind())
+                            && hasChecks(m)
+                            && !graph.shapes.isBuildingBlock(m))) {
                 fit.add(k);
             }
         });
         String near = Suggest.nearest(method, fit);
         if (near != null) {
-            graph.problems.add(Diagnostic.of(Code.UNKNOWN_METHOD, file, r.method().span(), "There is no method `" + method + "`. Did you mean `" + near + "`?")
+            graph.problems.add(Diagnostic.of(
+                            Code.UNKNOWN_METHOD,
+                            file,
+                            r.method().span(),
+                            "There is no method `" + method + "`. Did you mean `" + near + "`?")
                     .withFix("write " + near, r.method().span(), near));
         } else {
-            graph.problems.add(Code.METHOD_NOT_HERE, file, r.method().span(), "The method `" + method + "` is not in this handbook; what it would rate stays open. For a "
-                    + mesh.kind() + " it holds " + Compiler.list(fit) + ".");
+            graph.problems.add(
+                    Code.METHOD_NOT_HERE,
+                    file,
+                    r.method().span(),
+                    "The method `" + method + "` is not in this handbook; what it would rate stays open. For "
+                            + English.a(mesh.kind()) + " it holds " + Compiler.list(fit) + ".");
         }
     }
 
@@ -646,19 +773,34 @@ final class Elaborator {
                 return editions.get(0);
             }
             if (editions.size() > 1) {
-                graph.problems.add(Diagnostic.of(Code.MISSING_EDITION, file, r.method().span(), "`" + def.name()
-                                + "` has several editions and none is assumed; write `" + def.name() + " edition " + editions.get(0) + "` (it knows "
-                                + Compiler.list(editions) + ").")
-                        .withFix("add edition " + editions.get(0), new Span(r.method().span().end(), r.method().span().end()), " edition " + editions.get(0)));
-                return editions.get(0);
+                graph.problems.add(Diagnostic.of(
+                                Code.MISSING_EDITION,
+                                file,
+                                r.method().span(),
+                                "`" + def.name()
+                                        + "` has several editions and none is assumed; write `" + def.name()
+                                        + " edition " + editions.get(0) + "` (it knows "
+                                        + Compiler.list(editions) + ").")
+                        .withFix(
+                                "add edition " + editions.get(0),
+                                new Span(
+                                        r.method().span().end(),
+                                        r.method().span().end()),
+                                " edition " + editions.get(0)));
+                return null;
             }
             return null;
         }
         if (!editions.contains(said.text())) {
-            graph.problems.add(Code.UNKNOWN_EDITION, file, said.span(), editions.isEmpty()
-                    ? "`" + def.name() + "` has no editions; leave `edition " + said.text() + "` out."
-                    : "`" + def.name() + "` has no edition " + said.text() + "; it knows " + Compiler.list(editions) + ".");
-            return editions.isEmpty() ? null : editions.get(0);
+            graph.problems.add(
+                    Code.UNKNOWN_EDITION,
+                    file,
+                    said.span(),
+                    editions.isEmpty()
+                            ? "`" + def.name() + "` has no editions; leave `edition " + said.text() + "` out."
+                            : "`" + def.name() + "` has no edition " + said.text() + "; it knows "
+                                    + Compiler.list(editions) + ".");
+            return null;
         }
         return said.text();
     }
@@ -677,15 +819,23 @@ final class Elaborator {
             }
         }
         if (slots.isEmpty()) {
-            graph.problems.add(Code.UNKNOWN_NAME, file, u.target().span(), "This method has no equation `" + u.target().text() + "`.");
+            graph.problems.add(
+                    Code.UNKNOWN_NAME,
+                    file,
+                    u.target().span(),
+                    "This method has no equation `" + u.target().text() + "`.");
             return;
         }
         for (Slot s : slots) {
             List<String> names = new ArrayList<>();
             s.decl.readings.forEach(r -> names.add(r.name().text()));
             if (!names.contains(u.reading().text())) {
-                graph.problems.add(Code.UNKNOWN_READING, file, u.reading().span(), "`" + s.decl.name + "` has no reading `" + u.reading() + "`"
-                        + (names.isEmpty() ? "; it has only one." : "; it has " + Compiler.list(names) + "."));
+                graph.problems.add(
+                        Code.UNKNOWN_READING,
+                        file,
+                        u.reading().span(),
+                        "`" + s.decl.name + "` has no reading `" + u.reading() + "`"
+                                + (names.isEmpty() ? "; it has only one." : "; it has " + Compiler.list(names) + "."));
                 return;
             }
             s.reading = u.reading().text();

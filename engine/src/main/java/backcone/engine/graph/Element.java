@@ -31,13 +31,24 @@ public final class Element {
     final Map<String, Object> named = new LinkedHashMap<>();
     private @Nullable Map<List<Element>, @Nullable Element> combos;
     final List<Element> ratings = new ArrayList<>();
-    @Nullable MethodDef method;
-    @Nullable String edition;
-    @Nullable FileId file;
+
+    @Nullable
+    MethodDef method;
+
+    @Nullable
+    String edition;
+
+    @Nullable
+    FileId file;
+
     Span span = Span.NONE;
     Span headSpan = Span.NONE;
-    @Nullable String title;
-    @Nullable Ctx context;
+
+    @Nullable
+    String title;
+
+    @Nullable
+    Ctx context;
 
     Element(int id, String name, Shape shape, @Nullable Element parent, String collection) {
         this(id, name, shape, parent, collection, null, List.of());
@@ -131,7 +142,8 @@ public final class Element {
     }
 
     /** Own name: a {@link Slot}, an {@link Element}, a {@link Val.Group}, a {@link Shape.Spoken}, or a shape's entry. */
-    @Nullable Object own(String n) {
+    @Nullable
+    Object own(String n) {
         Object x = named.get(n);
         if (x != null) {
             return x;
@@ -161,7 +173,8 @@ public final class Element {
     }
 
     /** What this space declares for these elements at hand (in the order of its nested {@code each}), or null. */
-    @Nullable Element combo(List<Axis> at, int[] nextId) {
+    @Nullable
+    Element combo(List<Axis> at, int[] nextId) {
         if (at.size() == 1 && isOwnPart(at.get(0))) {
             return at.get(0).element();
         }
@@ -184,7 +197,8 @@ public final class Element {
         for (List<Axis> order : orders(at)) {
             Shape s = shapeFor(order);
             if (s != null) {
-                found = new Element(nextId[0]++, order.get(order.size() - 1).element().name, s, this, "", this, List.copyOf(order));
+                found = new Element(
+                        nextId[0]++, order.get(order.size() - 1).element().name, s, this, "", this, List.copyOf(order));
                 break;
             }
         }
@@ -210,7 +224,9 @@ public final class Element {
     }
 
     private boolean isOwnPart(Axis x) {
-        return x.element().fixed && x.element().parent == this && x.element().collection.equals(x.collection());
+        return x.element().fixed
+                && x.element().parent == this
+                && x.element().collection.equals(x.collection());
     }
 
     private static List<List<Axis>> orders(List<Axis> at) {

@@ -18,8 +18,15 @@ public final class ExampleGraph {
 
     /** {@code gives path = expected within tolerance}; a word is compared as text. Registers are −1 where unused. */
     public record Expectation(
-            Entry.Gives syntax, int value, int expected, int within, boolean relative, @Nullable Dimension dimension, @Nullable String word,
-            @Nullable String wordExpected, List<String> words) {}
+            Entry.Gives syntax,
+            int value,
+            int expected,
+            int within,
+            boolean relative,
+            @Nullable Dimension dimension,
+            @Nullable String word,
+            @Nullable String wordExpected,
+            List<String> words) {}
 
     private ExampleGraph(DriveGraph graph) {
         this.graph = graph;
@@ -27,7 +34,13 @@ public final class ExampleGraph {
 
     /** {@code method} is set for the example of a method, else {@code kind} is the kind of the chapter or kind. */
     public static ExampleGraph build(
-            Shapes shapes, String kind, @Nullable MethodDef method, Entry.Example example, FileId file, Problems problems, boolean traced) {
+            Shapes shapes,
+            String kind,
+            @Nullable MethodDef method,
+            Entry.Example example,
+            FileId file,
+            Problems problems,
+            boolean traced) {
         DriveGraph g = new DriveGraph(shapes, new NoTexts(), problems, traced);
         Element drive = new Element(0, "example", shapes.of("drive"), null, "");
         drive.file = file;
@@ -44,14 +57,17 @@ public final class ExampleGraph {
                     collection = p.names().get(0).text();
                 }
             }
-            owner = el.create("it", shapes.of(kind), collection.isEmpty() ? drive : drive, collection, file, example.span());
+            owner = el.create(
+                    "it", shapes.of(kind), collection.isEmpty() ? drive : drive, collection, file, example.span());
             if (!collection.isEmpty() && drive.named.get("group " + collection) instanceof Val.Group group) {
                 group.elements().add(owner);
             }
             drive.named.put("it", owner);
         }
         if (method != null) {
-            String edition = method.body().editions.isEmpty() ? null : method.body().editions.get(0);
+            String edition = method.body().editions.isEmpty()
+                    ? null
+                    : method.body().editions.get(0);
             for (Entry e : example.body()) {
                 if (e instanceof Entry.Edition d && !d.editions().isEmpty()) {
                     edition = d.editions().get(0).text();
@@ -107,11 +123,15 @@ public final class ExampleGraph {
         Frame f = Frame.at(file, false);
         Val v = graph.compiler.eval(give.path(), ctx, f);
         if (v instanceof Val.Word || v instanceof Val.Picked || v instanceof Val.Ref || v instanceof Val.Text) {
-            String word = give.value() instanceof Expr.Path p ? p.text() : give.value() instanceof Expr.Str s ? s.value() : "";
+            String word = give.value() instanceof Expr.Path p
+                    ? p.text()
+                    : give.value() instanceof Expr.Str s ? s.value() : "";
             if (v instanceof Val.Picked p) {
                 expectations.add(new Expectation(give, p.register(), -1, -1, false, null, null, word, p.words()));
             } else {
-                String found = v instanceof Val.Word w ? w.text() : v instanceof Val.Ref r ? r.element().name : v instanceof Val.Text t ? t.value() : "";
+                String found = v instanceof Val.Word w
+                        ? w.text()
+                        : v instanceof Val.Ref r ? r.element().name : v instanceof Val.Text t ? t.value() : "";
                 expectations.add(new Expectation(give, -1, -1, -1, false, null, found, word, List.of()));
             }
             return;
@@ -125,17 +145,32 @@ public final class ExampleGraph {
             return;
         }
         if (value.dimension() != null && expected.dimension() != null && value.dimension() != expected.dimension()) {
-            graph.problems.add(backcone.engine.diagnostics.Code.WRONG_UNIT, file, give.value().span(), "`" + give.path().text() + "` is of dimension "
-                    + value.dimension() + "; this is of dimension " + expected.dimension() + ".");
+            graph.problems.add(
+                    backcone.engine.diagnostics.Code.WRONG_UNIT,
+                    file,
+                    give.value().span(),
+                    "`" + give.path().text() + "` is of dimension " + value.dimension() + "; this is of dimension "
+                            + expected.dimension() + ".");
         }
         int within = -1;
         boolean relative = false;
         Expr w = give.within();
         if (w != null && graph.compiler.eval(w, ctx, f) instanceof Val.Num t) {
             within = t.register();
-            relative = w instanceof Expr.Num num && num.unit() != null && num.unit().text().equals("%");
+            relative = w instanceof Expr.Num num
+                    && num.unit() != null
+                    && num.unit().text().equals("%");
         }
-        expectations.add(new Expectation(give, value.register(), expected.register(), within, relative, value.dimension(), null, null, List.of()));
+        expectations.add(new Expectation(
+                give,
+                value.register(),
+                expected.register(),
+                within,
+                relative,
+                value.dimension(),
+                null,
+                null,
+                List.of()));
     }
 
     /** Examples stand alone. */

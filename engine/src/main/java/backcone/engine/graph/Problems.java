@@ -15,7 +15,8 @@ public final class Problems {
     private final Set<String> seen = new HashSet<>();
 
     public void add(Diagnostic d) {
-        if (seen.add(d.code().id() + "@" + d.file().path() + ":" + d.span().start() + ":" + d.span().end())) {
+        if (seen.add(d.code().id() + "@" + d.file().path() + ":" + d.span().start() + ":"
+                + d.span().end())) {
             all.add(d);
         }
     }

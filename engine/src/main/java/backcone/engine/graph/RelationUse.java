@@ -10,7 +10,10 @@ final class RelationUse {
     final BodyDef.RelationDef def;
     final Ctx ctx;
     final List<Slot> slots = new ArrayList<>();
-    @Nullable Slot solved;
+
+    @Nullable
+    Slot solved;
+
     boolean active = true;
 
     /** Registers of both sides where it is only checked; -1 otherwise. */

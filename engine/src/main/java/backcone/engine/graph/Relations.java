@@ -87,7 +87,11 @@ final class Relations {
                 Val v = graph.compiler.eval(when, ctx, Frame.at(def.file(), false));
                 use.active = v instanceof Val.Fixed x && x.is();
                 if (v instanceof Val.Truth) {
-                    graph.problems.add(Code.NOT_SOLVABLE, def.file(), when.span(), "The condition of a relation speaks of words, references and what is given, not of numbers.");
+                    graph.problems.add(
+                            Code.NOT_SOLVABLE,
+                            def.file(),
+                            when.span(),
+                            "The condition of a relation speaks of words, references and what is given, not of numbers.");
                 }
             }
             if (!use.active) {
@@ -184,7 +188,11 @@ final class Relations {
     }
 
     private boolean has(Expr e, Ctx ctx, Slot s, @Nullable Decl decl) {
-        if (e instanceof Expr.Num || e instanceof Expr.Str || e instanceof Expr.Day || e instanceof Expr.Given || e instanceof Expr.Dated
+        if (e instanceof Expr.Num
+                || e instanceof Expr.Str
+                || e instanceof Expr.Day
+                || e instanceof Expr.Given
+                || e instanceof Expr.Dated
                 || e instanceof Expr.BlockRef) {
             return true;
         } else if (e instanceof Expr.Path p) {
@@ -206,7 +214,10 @@ final class Relations {
         } else if (e instanceof Expr.Toleranced t) {
             return has(t.nominal(), ctx, s, decl);
         } else if (e instanceof Expr.Root r) {
-            return has(r.low(), ctx, s, decl) && has(r.high(), ctx, s, decl) && hasWithUnknown(r.left(), ctx, s, decl) && hasWithUnknown(r.right(), ctx, s, decl);
+            return has(r.low(), ctx, s, decl)
+                    && has(r.high(), ctx, s, decl)
+                    && hasWithUnknown(r.left(), ctx, s, decl)
+                    && hasWithUnknown(r.right(), ctx, s, decl);
         } else if (e instanceof Expr.Settle x) {
             return has(x.start(), ctx, s, decl) && hasWithUnknown(x.value(), ctx, s, decl);
         } else if (e instanceof Expr.Call c) {
@@ -270,7 +281,9 @@ final class Relations {
                         return false;
                     }
                 }
-            } else if (!(a instanceof Expr.Path p && p.names().size() == 1 && graph.shapes.library.tables.containsKey(p.text()))
+            } else if (!(a instanceof Expr.Path p
+                            && p.names().size() == 1
+                            && graph.shapes.library.tables.containsKey(p.text()))
                     && !has(a, ctx, s, decl)) {
                 return false;
             }
@@ -333,10 +346,16 @@ final class Relations {
             if (x instanceof Slot s) {
                 return !(s.decl.kind instanceof ValueKind.Quantity) && !(s.decl.kind instanceof ValueKind.Inferred);
             }
-            return x == null || x instanceof Element || x instanceof Entry.Role || x instanceof Val.Ref || x instanceof Val.Word
+            return x == null
+                    || x instanceof Element
+                    || x instanceof Entry.Role
+                    || x instanceof Val.Ref
+                    || x instanceof Val.Word
                     || x instanceof Val.Text;
         } else if (e instanceof Expr.Binary b) {
-            return (b.op() == Expr.Op.AND || b.op() == Expr.Op.OR) && structural(b.left(), ctx) && structural(b.right(), ctx);
+            return (b.op() == Expr.Op.AND || b.op() == Expr.Op.OR)
+                    && structural(b.left(), ctx)
+                    && structural(b.right(), ctx);
         } else if (e instanceof Expr.Not n) {
             return structural(n.operand(), ctx);
         } else if (e instanceof Expr.Compare c) {

@@ -2,6 +2,7 @@ package backcone.engine.graph;
 
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.model.English;
 import backcone.engine.model.Suggest;
 import backcone.engine.model.ValueKind;
 import backcone.engine.syntax.Entry;
@@ -36,19 +37,23 @@ final class Requirements {
             rate(r);
         }
         if (ofDrive) {
-            Map<String, RequirementUse> byId = new LinkedHashMap<>();
+            List<RequirementUse> below = new ArrayList<>();
             for (DriveSource.Layer l : source.layers()) {
+                List<RequirementUse> here = new ArrayList<>();
                 for (Entry e : l.body()) {
                     RequirementUse u = e instanceof Entry.Require r
                             ? require(r, l.file())
                             : e instanceof Entry.Assert a ? asserted(a, l.file()) : null;
                     if (u != null) {
-                        // a variant's line for the same fact replaces that of its base
-                        byId.put(u.file.equals(source.layers().get(0).file()) && l == source.layers().get(0) ? u.id + "#" + unnamed : u.id + "#", u);
-                        graph.requirements.add(u);
+                        here.add(u);
                     }
                 }
+                // a variant's line for a fact replaces that of its base
+                below.removeIf(old -> here.stream()
+                        .anyMatch(u -> u.id.equals(old.id) && u.asserted == old.asserted && u.slot != null));
+                below.addAll(here);
             }
+            graph.requirements.addAll(below);
         }
         for (RequirementUse u : graph.requirements) {
             tight(u);
@@ -69,7 +74,11 @@ final class Requirements {
                 boolean member = q.path().names().size() > 1;
                 RequirementUse old = found.get(u.id);
                 if (old != null && java.util.Objects.equals(isMember.get(u.id), member)) {
-                    graph.problems.add(Diagnostic.of(Code.DUPLICATE_REQUIREMENT, r.file(), q.span(), "`" + q.path().text() + "` is required twice; keep one line.")
+                    graph.problems.add(Diagnostic.of(
+                                    Code.DUPLICATE_REQUIREMENT,
+                                    r.file(),
+                                    q.span(),
+                                    "`" + q.path().text() + "` is required twice; keep one line.")
                             .withRelated(r.file(), old.span(), "required here"));
                     continue;
                 }
@@ -96,8 +105,12 @@ final class Requirements {
             Set<String> all = new LinkedHashSet<>(Checks.of(space.shape).keySet());
             String near = Suggest.nearest(last, all);
             Name n = names.get(names.size() - 1);
-            Diagnostic d = Diagnostic.of(Code.UNKNOWN_CHECK, r.file(), n.span(), "`" + r.syntax().method() + "` has no check `" + last + "`; it has "
-                    + Compiler.list(all) + "." + (near == null ? "" : " Did you mean `" + near + "`?"));
+            Diagnostic d = Diagnostic.of(
+                    Code.UNKNOWN_CHECK,
+                    r.file(),
+                    n.span(),
+                    "`" + r.syntax().method() + "` has no check `" + last + "`; it has " + Compiler.list(all) + "."
+                            + (near == null ? "" : " Did you mean `" + near + "`?"));
             graph.problems.add(near == null ? d : d.withFix("write " + near, n.span(), near));
             return out;
         }
@@ -111,7 +124,11 @@ final class Requirements {
             if (x instanceof Element e) {
                 chosen.add(e);
             } else {
-                graph.problems.add(Code.UNKNOWN_NAME, r.file(), names.get(i).span(), "There is no `" + n + "` in `" + r.mesh().name + "`.");
+                graph.problems.add(
+                        Code.UNKNOWN_NAME,
+                        r.file(),
+                        names.get(i).span(),
+                        "There is no `" + n + "` in `" + r.mesh().name + "`.");
                 return out;
             }
         }
@@ -133,12 +150,22 @@ final class Requirements {
     }
 
     private RequirementUse use(Entry.Requirement q, DriveGraph.RateUse r, String check, @Nullable Slot s) {
-        RequirementUse u = new RequirementUse(q, r.file(), r.id() + "." + check,
-                q.cmp() == Expr.Cmp.LE || q.cmp() == Expr.Cmp.LT ? RequirementUse.Form.AT_MOST : RequirementUse.Form.AT_LEAST, false);
+        RequirementUse u = new RequirementUse(
+                q,
+                r.file(),
+                r.id() + "." + check,
+                q.cmp() == Expr.Cmp.LE || q.cmp() == Expr.Cmp.LT
+                        ? RequirementUse.Form.AT_MOST
+                        : RequirementUse.Form.AT_LEAST,
+                false);
         u.rate = r;
         u.slot = s;
         if (q.cmp() == Expr.Cmp.EQ || q.cmp() == Expr.Cmp.NE) {
-            graph.problems.add(Code.WRONG_FORM, r.file(), q.span(), "A check is required to be at least (`>=`) or at most (`<=`) something.");
+            graph.problems.add(
+                    Code.WRONG_FORM,
+                    r.file(),
+                    q.span(),
+                    "A check is required to be at least (`>=`) or at most (`<=`) something.");
         }
         Frame f = Frame.at(r.file(), true);
         Val bound = graph.compiler.eval(q.bound(), Ctx.of(graph.drive), f);
@@ -165,10 +192,18 @@ final class Requirements {
         Dimension has = u.dimension;
         if (want != null && has != null && want != has) {
             if (has.isNone()) {
-                graph.problems.add(Code.MISSING_UNIT, f.file, bound.span(), "`" + name + "` is a " + Units.standard().nameOf(want) + "; its limit needs a unit.");
+                graph.problems.add(
+                        Code.MISSING_UNIT,
+                        f.file,
+                        bound.span(),
+                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; its limit needs a unit.");
             } else {
-                graph.problems.add(Code.WRONG_UNIT, f.file, bound.span(), "`" + name + "` is a " + Units.standard().nameOf(want) + "; this limit is a "
-                        + Units.standard().nameOf(has) + ".");
+                graph.problems.add(
+                        Code.WRONG_UNIT,
+                        f.file,
+                        bound.span(),
+                        "`" + name + "` is " + English.a(Units.standard().nameOf(want)) + "; this limit is "
+                                + English.a(Units.standard().nameOf(has)) + ".");
             }
             u.value = graph.compiler.openRegister(new Val.Bad());
         }
@@ -178,7 +213,9 @@ final class Requirements {
     }
 
     private @Nullable Unit unitOf(Expr e) {
-        if (e instanceof Expr.Num n && n.unit() != null && Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok) {
+        if (e instanceof Expr.Num n
+                && n.unit() != null
+                && Units.standard().parse(n.unit().text()) instanceof Units.Parse.Ok ok) {
             return ok.unit();
         }
         if (e instanceof Expr.Neg n) {
@@ -201,8 +238,12 @@ final class Requirements {
                 Val.Num half = tol.dimension() != null && tol.dimension().isNone()
                         ? graph.compiler.arithmetic(Expr.Op.MUL, mid, tol, r.tolerance(), f)
                         : tol;
-                u.required = graph.compiler.arithmetic(Expr.Op.SUB, mid, half, r.middle(), f).register();
-                u.upper = graph.compiler.arithmetic(Expr.Op.ADD, mid, half, r.middle(), f).register();
+                u.required = graph.compiler
+                        .arithmetic(Expr.Op.SUB, mid, half, r.middle(), f)
+                        .register();
+                u.upper = graph.compiler
+                        .arithmetic(Expr.Op.ADD, mid, half, r.middle(), f)
+                        .register();
                 u.dimension = mid.dimension();
                 u.unit = unitOf(r.middle());
             }
@@ -232,13 +273,17 @@ final class Requirements {
     }
 
     private RequirementUse condition(Entry e, Expr condition, FileId file, boolean asserted, Ctx ctx, Frame f) {
-        if (condition instanceof Expr.Compare c && c.ops().size() == 1 && c.ops().get(0) != Expr.Cmp.NE) {
+        if (condition instanceof Expr.Compare c
+                && c.ops().size() == 1
+                && c.ops().get(0) != Expr.Cmp.NE) {
             Expr.Cmp o = c.ops().get(0);
             Val left = graph.compiler.eval(c.operands().get(0), ctx, f);
             if (left instanceof Val.Num v) {
                 RequirementUse.Form form = o == Expr.Cmp.EQ
                         ? RequirementUse.Form.EQUAL
-                        : o == Expr.Cmp.LE || o == Expr.Cmp.LT ? RequirementUse.Form.AT_MOST : RequirementUse.Form.AT_LEAST;
+                        : o == Expr.Cmp.LE || o == Expr.Cmp.LT
+                                ? RequirementUse.Form.AT_MOST
+                                : RequirementUse.Form.AT_LEAST;
                 RequirementUse u = named(e, c.operands().get(0), file, form, asserted);
                 Expr bound = c.operands().get(1);
                 Val b = graph.compiler.eval(bound, ctx, f);
@@ -327,6 +372,19 @@ final class Requirements {
             graph.uncovered.add(new DriveGraph.Uncovered(a, file));
             return;
         }
+        Set<String> ratings = new LinkedHashSet<>();
+        for (RequirementUse u : covered) {
+            ratings.add(u.rate == null ? "" : u.rate.id());
+        }
+        if (ratings.size() > 1) {
+            graph.ambiguous.add(a);
+            graph.problems.add(
+                    Code.AMBIGUOUS_NAME,
+                    file,
+                    a.path().span(),
+                    "`" + path + "` is required by several ratings; say which: " + Compiler.list(ratings) + ".");
+            return;
+        }
         Frame f = Frame.at(file, true);
         if (graph.compiler.eval(a.bound(), Ctx.of(graph.drive), f) instanceof Val.Num n) {
             for (RequirementUse u : covered) {
@@ -348,7 +406,9 @@ final class Requirements {
         String full = u.id.substring(mesh.length());
         String inRating = full.substring(u.rate.name().length() + 1);
         String check = inRating.substring(inRating.lastIndexOf('.') + 1);
-        String said = rest.startsWith(u.rate.name() + ".") ? rest.substring(u.rate.name().length() + 1) : rest;
+        String said = rest.startsWith(u.rate.name() + ".")
+                ? rest.substring(u.rate.name().length() + 1)
+                : rest;
         return said.equals(inRating) || said.equals(check);
     }
 

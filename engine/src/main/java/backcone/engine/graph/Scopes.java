@@ -28,7 +28,8 @@ final class Scopes {
      * A bare name: a {@link Slot}, {@link Element}, {@link Val}, {@link Shape.Spoken}, {@link TableDef}, role or collect;
      * null if nothing declares it. {@code holder} receives the element that owns a role or collect.
      */
-    @Nullable Object bare(String name, Ctx ctx, Element[] holder) {
+    @Nullable
+    Object bare(String name, Ctx ctx, Element[] holder) {
         if (ctx.locals != null && ctx.locals.containsKey(name)) {
             return ctx.locals.get(name);
         }
@@ -99,7 +100,8 @@ final class Scopes {
     }
 
     /** A dotted name. Null if something on the way does not exist; {@link Val.Open} where a reference is not given. */
-    @Nullable Object path(Expr.Path path, Ctx ctx, Element[] holder, int[] failedAt) {
+    @Nullable
+    Object path(Expr.Path path, Ctx ctx, Element[] holder, int[] failedAt) {
         List<Name> names = path.names();
         Object x = first(names.get(0).text(), ctx, holder);
         failedAt[0] = 0;
@@ -137,7 +139,8 @@ final class Scopes {
     record RowColumn(Val row, Name column) {}
 
     /** A collection by name: a group of a space around, a collect, or of an element at hand. */
-    @Nullable Object collection(String name, Ctx ctx, Element[] holder) {
+    @Nullable
+    Object collection(String name, Ctx ctx, Element[] holder) {
         for (int i = ctx.axes.size() - 1; i >= 0; i--) {
             Element e = ctx.axes.get(i).element();
             Object x = group(e, name);
@@ -192,8 +195,12 @@ final class Scopes {
         for (int i = ctx.axes.size() - 1; i >= 0; i--) {
             Element e = ctx.axes.get(i).element();
             Element p = e.parent;
-            if (p != null && group(p, e.collection) instanceof Val.Group g && g.elements().size() == 2) {
-                return g.elements().get(0) == e ? g.elements().get(1) : g.elements().get(0);
+            if (p != null
+                    && group(p, e.collection) instanceof Val.Group g
+                    && g.elements().size() == 2) {
+                return g.elements().get(0) == e
+                        ? g.elements().get(1)
+                        : g.elements().get(0);
             }
         }
         return null;

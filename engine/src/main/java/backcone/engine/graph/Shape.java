@@ -78,7 +78,8 @@ final class Shape {
             homes.put(c, body.file);
             names.put(c.name().text(), c);
         }
-        body.each.forEach((k, v) -> eachBodies.computeIfAbsent(k, x -> new ArrayList<>()).addAll(v));
+        body.each.forEach(
+                (k, v) -> eachBodies.computeIfAbsent(k, x -> new ArrayList<>()).addAll(v));
     }
 
     void finish() {
@@ -103,7 +104,10 @@ final class Shape {
 
     private void put(String name, Member m, boolean hasSymbol) {
         Object old = names.get(name);
-        if (old instanceof Member other && hasSymbol && other.decl().symbol != null && other.decl().name.equals(name)) {
+        if (old instanceof Member other
+                && hasSymbol
+                && other.decl().symbol != null
+                && other.decl().name.equals(name)) {
             List<Member> both = new ArrayList<>(List.of(other, m));
             names.put(name, new Spoken(both));
         } else if (old instanceof Spoken s && hasSymbol) {

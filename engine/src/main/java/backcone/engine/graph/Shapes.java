@@ -83,6 +83,22 @@ public final class Shapes {
         return s;
     }
 
+    /** A method that others take in; it is not rated by itself. */
+    boolean isBuildingBlock(MethodDef m) {
+        for (java.util.List<MethodDef> all : library.methods.values()) {
+            for (MethodDef other : all) {
+                for (Entry.Include i : other.body().includes) {
+                    for (Name n : i.methods()) {
+                        if (library.method(n.text(), other.kind()) == m) {
+                            return true;
+                        }
+                    }
+                }
+            }
+        }
+        return false;
+    }
+
     private void include(MethodDef m, Set<MethodDef> all) {
         if (all.contains(m) || all.size() > 100) {
             return;

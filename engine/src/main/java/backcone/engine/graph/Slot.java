@@ -15,18 +15,28 @@ import org.jspecify.annotations.Nullable;
 public final class Slot {
     public final Element owner;
     public final Decl decl;
-    @Nullable Fact given;
-    @Nullable Fact override;
-    @Nullable String reading;
-    @Nullable Element inline;
+
+    @Nullable
+    Fact given;
+
+    @Nullable
+    Fact override;
+
+    @Nullable
+    String reading;
+
+    @Nullable
+    Element inline;
 
     /** The relation that is solved for this name. */
-    @Nullable RelationUse solvedBy;
+    @Nullable
+    RelationUse solvedBy;
 
     List<RelationUse> relations = new ArrayList<>();
 
     /** Compiled value; null until asked for. */
-    @Nullable Val value;
+    @Nullable
+    Val value;
 
     boolean compiling;
 
@@ -37,7 +47,8 @@ public final class Slot {
     boolean probing;
 
     /** Values of sub-expressions, for explanations; only when traced. */
-    @Nullable Map<Expr, Val> trace;
+    @Nullable
+    Map<Expr, Val> trace;
 
     List<Reach> reached = List.of();
 
@@ -64,6 +75,16 @@ public final class Slot {
 
     public @Nullable Val value() {
         return value;
+    }
+
+    /** Whether relations could give it. */
+    public boolean hasRelations() {
+        return !relations.isEmpty();
+    }
+
+    boolean isWhole() {
+        return decl.kind instanceof backcone.engine.model.ValueKind.Quantity q
+                && q.kind().whole();
     }
 
     public boolean isOverridden() {

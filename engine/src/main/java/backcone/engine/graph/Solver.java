@@ -17,7 +17,8 @@ final class Solver {
 
     Val solve(Slot unknown, RelationUse use) {
         Frame f = new Frame(unknown, use.def.file(), Frame.NOTHING, false);
-        if (!(use.def.syntax().equation() instanceof Expr.Compare c) || c.operands().size() != 2) {
+        if (!(use.def.syntax().equation() instanceof Expr.Compare c)
+                || c.operands().size() != 2) {
             return compiler.open(unknown);
         }
         Expr l = c.operands().get(0);
@@ -29,14 +30,22 @@ final class Solver {
         }
         Val.Num v = undo(left ? l : r, use.ctx, unknown, target, f);
         if (v == null) {
-            compiler.problem(Code.NOT_SOLVABLE, f, use.def.syntax().span(), "This relation can't be solved for `" + unknown.path() + "`.");
+            compiler.problem(
+                    Code.NOT_SOLVABLE,
+                    f,
+                    use.def.syntax().span(),
+                    "This relation can't be solved for `" + unknown.path() + "`.");
             return compiler.open(unknown);
         }
         if (unknown.decl.kind instanceof backcone.engine.model.ValueKind.Quantity q) {
             Dimension want = q.kind().shown().dimension();
             if (v.dimension() != null && v.dimension() != want) {
-                compiler.problem(Code.DIMENSION_MISMATCH, f, use.def.syntax().span(), "Solved for `" + unknown.decl.name + "` this relation gives "
-                        + v.dimension() + ", not " + q.kind().name() + ".");
+                compiler.problem(
+                        Code.DIMENSION_MISMATCH,
+                        f,
+                        use.def.syntax().span(),
+                        "Solved for `" + unknown.decl.name + "` this relation gives " + v.dimension() + ", not "
+                                + q.kind().name() + ".");
             }
             if (q.kind().whole()) {
                 compiler.graph.wholes.add(new DriveGraph.Whole(unknown, v.register()));
@@ -57,12 +66,19 @@ final class Solver {
         if (e instanceof Expr.Binary b) {
             return binary(b, ctx, unknown, target, f);
         }
-        if (e instanceof Expr.Call c && c.callee().text().equals("sqrt") && c.args().size() == 1) {
-            Val.Num t = new Val.Num(compiler.op(Op.MUL, target.register(), target.register()),
-                    target.dimension() == null ? null : target.dimension().power(2, 1), Double.NaN);
+        if (e instanceof Expr.Call c
+                && c.callee().text().equals("sqrt")
+                && c.args().size() == 1) {
+            Val.Num t = new Val.Num(
+                    compiler.op(Op.MUL, target.register(), target.register()),
+                    target.dimension() == null ? null : target.dimension().power(2, 1),
+                    Double.NaN);
             return undo(c.args().get(0), ctx, unknown, t, f);
         }
-        if (e instanceof Expr.Call c && c.callee().text().equals("sum") && c.args().size() == 1 && c.args().get(0) instanceof Expr.Each x) {
+        if (e instanceof Expr.Call c
+                && c.callee().text().equals("sum")
+                && c.args().size() == 1
+                && c.args().get(0) instanceof Expr.Each x) {
             Expr body = x.body();
             Val.Group g = new Builtins(compiler).group(x, ctx, f);
             if (g == null || body == null) {
@@ -96,13 +112,17 @@ final class Solver {
                 t = compiler.arithmetic(Expr.Op.SUB, target, k, b, f);
                 break;
             case SUB:
-                t = left ? compiler.arithmetic(Expr.Op.ADD, target, k, b, f) : compiler.arithmetic(Expr.Op.SUB, k, target, b, f);
+                t = left
+                        ? compiler.arithmetic(Expr.Op.ADD, target, k, b, f)
+                        : compiler.arithmetic(Expr.Op.SUB, k, target, b, f);
                 break;
             case MUL:
                 t = compiler.arithmetic(Expr.Op.DIV, target, k, b, f);
                 break;
             case DIV:
-                t = left ? compiler.arithmetic(Expr.Op.MUL, target, k, b, f) : compiler.arithmetic(Expr.Op.DIV, k, target, b, f);
+                t = left
+                        ? compiler.arithmetic(Expr.Op.MUL, target, k, b, f)
+                        : compiler.arithmetic(Expr.Op.DIV, k, target, b, f);
                 break;
             case POW:
                 if (!left || !k.isConstant() || k.constant() == 0) {

@@ -28,8 +28,12 @@ final class Tables {
     Val lookup(TableDef t, Expr.Call c, Ctx ctx, Ctx scope, Frame f) {
         int keys = t.syntax.keys().size();
         if (c.args().size() != keys) {
-            compiler.problem(Code.WRONG_FORM, f, c.span(), "`" + t.name() + "` is looked up by " + keys + (keys == 1 ? " key" : " keys") + "; found "
-                    + c.args().size() + ".");
+            compiler.problem(
+                    Code.WRONG_FORM,
+                    f,
+                    c.span(),
+                    "`" + t.name() + "` is looked up by " + keys + (keys == 1 ? " key" : " keys") + "; found "
+                            + c.args().size() + ".");
             return new Val.Bad();
         }
         if (t.rows.isEmpty()) {
@@ -59,7 +63,9 @@ final class Tables {
         for (int i = 0; i < t.keyColumns; i++) {
             Val v = values.get(i);
             if (v instanceof Val.Word || v instanceof Val.Ref || v instanceof Val.Text) {
-                String w = v instanceof Val.Word x ? x.text() : v instanceof Val.Ref x ? x.element().name : v instanceof Val.Text x ? x.value() : "";
+                String w = v instanceof Val.Word x
+                        ? x.text()
+                        : v instanceof Val.Ref x ? x.element().name : v instanceof Val.Text x ? x.value() : "";
                 int column = i;
                 rows.removeIf(r -> !lists(t.rows.get(r).get(column), w));
             } else if (v instanceof Val.Num) {
@@ -69,7 +75,11 @@ final class Tables {
             }
         }
         if (rows.isEmpty()) {
-            compiler.problem(Code.BEYOND_TABLE, f, c.span(), "The table `" + t.name() + "` has no row for " + said(values) + ".");
+            compiler.problem(
+                    Code.BEYOND_TABLE,
+                    f,
+                    c.span(),
+                    "The table `" + t.name() + "` has no row for " + said(values) + ".");
             return new Val.Bad();
         }
         Val row;
@@ -125,7 +135,11 @@ final class Tables {
             List<Expr> args = new ArrayList<>(c.args());
             String local = "key " + i;
             locals.put(local, new Val.Word(p.words().get(w), p.kind()));
-            args.set(i, new Expr.Path(List.of(new Name(local, c.args().get(i).span())), c.args().get(i).span()));
+            args.set(
+                    i,
+                    new Expr.Path(
+                            List.of(new Name(local, c.args().get(i).span())),
+                            c.args().get(i).span()));
             Ctx inner = ctx.withLocals(locals);
             Val v = lookup(t, new Expr.Call(c.callee(), args, c.span()), inner, scope, f);
             int cond = compiler.op(Op.EQ, p.register(), compiler.constant(w));
@@ -150,7 +164,10 @@ final class Tables {
         StringBuilder b = new StringBuilder();
         for (Val v : values) {
             if (v instanceof Val.Word w) {
-                b.append(b.length() == 0 ? "" : ", ").append('`').append(w.text()).append('`');
+                b.append(b.length() == 0 ? "" : ", ")
+                        .append('`')
+                        .append(w.text())
+                        .append('`');
             }
         }
         return b.length() == 0 ? "this key" : b.toString();
@@ -176,7 +193,11 @@ final class Tables {
         if (key instanceof Val.Word w) {
             Integer col = t.columnIndex.get(w.text());
             if (col == null) {
-                compiler.problem(Code.BEYOND_TABLE, f, c.span(), "The table `" + t.name() + "` has no column `" + w.text() + "`.");
+                compiler.problem(
+                        Code.BEYOND_TABLE,
+                        f,
+                        c.span(),
+                        "The table `" + t.name() + "` has no column `" + w.text() + "`.");
                 return new Val.Bad();
             }
             return cell(row, col, f);
@@ -185,7 +206,9 @@ final class Tables {
             Val result = null;
             for (int i = p.words().size() - 1; i >= 0; i--) {
                 Val v = byColumn(t, row, new Val.Word(p.words().get(i), p.kind()), c, f);
-                result = result == null ? v : compiler.select(compiler.op(Op.EQ, p.register(), compiler.constant(i)), v, result, c, f);
+                result = result == null
+                        ? v
+                        : compiler.select(compiler.op(Op.EQ, p.register(), compiler.constant(i)), v, result, c, f);
             }
             return result == null ? new Val.Bad() : result;
         }
@@ -207,13 +230,20 @@ final class Tables {
             if (!(a instanceof Val.Num p) || !(b instanceof Val.Num q)) {
                 return new Val.Bad();
             }
-            int share = compiler.op(Op.DIV, compiler.op(Op.SUB, key.register(), compiler.constant(x0)), compiler.constant(x1 - x0));
+            int share = compiler.op(
+                    Op.DIV, compiler.op(Op.SUB, key.register(), compiler.constant(x0)), compiler.constant(x1 - x0));
             share = compiler.op(Op.MIN, compiler.op(Op.MAX, share, compiler.constant(0)), compiler.constant(1));
-            int v = compiler.op(Op.ADD, p.register(), compiler.op(Op.MUL, share, compiler.op(Op.SUB, q.register(), p.register())));
+            int v = compiler.op(
+                    Op.ADD, p.register(), compiler.op(Op.MUL, share, compiler.op(Op.SUB, q.register(), p.register())));
             Val.Num here = new Val.Num(v, p.dimension(), Double.NaN);
             result = result == null
                     ? here
-                    : compiler.select(compiler.op(Op.GE, key.register(), compiler.constant(x1)), result, here, t.syntax.rows().get(0).cells().get(col).values().get(0), f);
+                    : compiler.select(
+                            compiler.op(Op.GE, key.register(), compiler.constant(x1)),
+                            result,
+                            here,
+                            t.syntax.rows().get(0).cells().get(col).values().get(0),
+                            f);
         }
         return result == null ? new Val.Bad() : result;
     }
@@ -230,19 +260,33 @@ final class Tables {
         if (row instanceof Val.Row r) {
             Integer col = r.table().columnIndex.get(name.text());
             if (col == null) {
-                compiler.problem(Code.UNKNOWN_NAME, f, name.span(), "The table `" + r.table().name() + "` has no column `" + name + "`."
-                        + Suggest.sentence(name.text(), r.table().columnIndex.keySet()));
+                compiler.problem(
+                        Code.UNKNOWN_NAME,
+                        f,
+                        name.span(),
+                        "The table `" + r.table().name() + "` has no column `" + name + "`."
+                                + Suggest.sentence(
+                                        name.text(), r.table().columnIndex.keySet()));
                 return new Val.Bad();
             }
             return cell(row, col, f);
         }
-        compiler.problem(Code.WRONG_FORM, f, name.span(), "Only a row of a table or a block has something behind a dot; this is " + Compiler.what(row) + ".");
+        compiler.problem(
+                Code.WRONG_FORM,
+                f,
+                name.span(),
+                "Only a row of a table or a block has something behind a dot; this is " + Compiler.what(row) + ".");
         return new Val.Bad();
     }
 
     private Val cell(Val row, int col, Frame f) {
         if (row instanceof Val.RowOf r) {
-            return compiler.select(r.condition(), cell(r.yes(), col, f), cell(r.no(), col, f), new Expr.Hole(backcone.engine.text.Span.NONE), f);
+            return compiler.select(
+                    r.condition(),
+                    cell(r.yes(), col, f),
+                    cell(r.no(), col, f),
+                    new Expr.Hole(backcone.engine.text.Span.NONE),
+                    f);
         }
         if (!(row instanceof Val.Row r)) {
             return new Val.Bad();
@@ -274,7 +318,10 @@ final class Tables {
         if (u == null && col >= t.keyColumns && t.syntax.unit() != null) {
             u = compiler.unit(t.syntax.unit(), f);
         }
-        if (v instanceof Val.Num n && u != null && n.dimension() != null && n.dimension().isNone()) {
+        if (v instanceof Val.Num n
+                && u != null
+                && n.dimension() != null
+                && n.dimension().isNone()) {
             if (n.isConstant()) {
                 return compiler.constant(u.toBase(n.constant()), u.dimension());
             }
@@ -318,19 +365,30 @@ final class Tables {
             Double k = number(t.cell(i, 0));
             Double v = number(t.cell(i, col));
             if (k == null || v == null) {
-                compiler.problem(Code.BAD_TABLE, Frame.at(t.file, false), t.rows.get(i).get(k == null ? 0 : col).span(),
+                compiler.problem(
+                        Code.BAD_TABLE,
+                        Frame.at(t.file, false),
+                        t.rows.get(i).get(k == null ? 0 : col).span(),
                         "A table read at a number holds plain numbers.");
                 return false;
             }
             if (i > 0 && k <= keys[i - 1]) {
-                compiler.problem(Code.BAD_TABLE, Frame.at(t.file, false), t.rows.get(i).get(0).span(), "The keys of `" + t.name() + "` must rise.");
+                compiler.problem(
+                        Code.BAD_TABLE,
+                        Frame.at(t.file, false),
+                        t.rows.get(i).get(0).span(),
+                        "The keys of `" + t.name() + "` must rise.");
                 return false;
             }
             keys[i] = k;
             values[i] = v;
         }
-        Interpolation in = new Interpolation(keys, values, Interpolation.Between.valueOf(t.between.name()),
-                Interpolation.Beyond.valueOf(t.below.name()), Interpolation.Beyond.valueOf(t.above.name()));
+        Interpolation in = new Interpolation(
+                keys,
+                values,
+                Interpolation.Between.valueOf(t.between.name()),
+                Interpolation.Beyond.valueOf(t.below.name()),
+                Interpolation.Beyond.valueOf(t.above.name()));
         index[0] = compiler.graph.tape.addTable(in);
         columns.put(col, index[0]);
         return true;
@@ -350,7 +408,11 @@ final class Tables {
     /** nearest_in, next_in, listed_in: questions about the numeric key column of a table. */
     Val keyed(String name, Expr.Call c, Ctx ctx, Frame f) {
         if (c.args().size() != 2 || !(c.args().get(0) instanceof Expr.Path p)) {
-            compiler.problem(Code.WRONG_FORM, f, c.span(), "`" + name + "` takes a table and a value: `" + name + "(module_series, m)`.");
+            compiler.problem(
+                    Code.WRONG_FORM,
+                    f,
+                    c.span(),
+                    "`" + name + "` takes a table and a value: `" + name + "(module_series, m)`.");
             return new Val.Bad();
         }
         Element[] holder = new Element[1];
@@ -360,7 +422,8 @@ final class Tables {
             compiler.problem(Code.UNKNOWN_NAME, f, p.span(), "There is no table `" + p.text() + "`.");
             return new Val.Bad();
         }
-        Val v = compiler.numeric(compiler.eval(c.args().get(1), ctx, f), f, c.args().get(1));
+        Val v = compiler.numeric(
+                compiler.eval(c.args().get(1), ctx, f), f, c.args().get(1));
         if (!(v instanceof Val.Num n)) {
             return v;
         }
@@ -399,8 +462,13 @@ final class Tables {
             if (keys.get(i) instanceof Val.Num n && n.dimension() != null) {
                 Dimension d = u == null ? Dimension.NONE : u.dimension();
                 if (n.dimension() != d && number(t.cell(0, i)) != null) {
-                    compiler.problem(Code.DIMENSION_MISMATCH, f, c.args().get(i).span(), "The key `" + t.columns.get(i) + "` of `" + t.name()
-                            + "` is taken " + (u == null ? "as a pure number" : "in " + u.text()) + "; this is of dimension " + n.dimension() + ".");
+                    compiler.problem(
+                            Code.DIMENSION_MISMATCH,
+                            f,
+                            c.args().get(i).span(),
+                            "The key `" + t.columns.get(i) + "` of `" + t.name() + "` is taken "
+                                    + (u == null ? "as a pure number" : "in " + u.text()) + "; this is of dimension "
+                                    + n.dimension() + ".");
                 }
             }
         }
@@ -410,9 +478,16 @@ final class Tables {
         }
         Val v = settled(t, 0, t.columnKey() ? t.keyColumns : t.keyColumns, scope);
         ValueKind k = kind(t);
-        if (v instanceof Val.Num n && k instanceof ValueKind.Quantity q && n.dimension() != null && n.dimension() != q.kind().shown().dimension()) {
-            compiler.problem(Code.DIMENSION_MISMATCH, Frame.at(t.file, false), t.syntax.span(), "The table `" + t.name() + "` is declared as "
-                    + q.kind().name() + "; its cells are of dimension " + n.dimension() + ".");
+        if (v instanceof Val.Num n
+                && k instanceof ValueKind.Quantity q
+                && n.dimension() != null
+                && n.dimension() != q.kind().shown().dimension()) {
+            compiler.problem(
+                    Code.DIMENSION_MISMATCH,
+                    Frame.at(t.file, false),
+                    t.syntax.span(),
+                    "The table `" + t.name() + "` is declared as " + q.kind().name() + "; its cells are of dimension "
+                            + n.dimension() + ".");
         }
         return v instanceof Val.Num n ? new Val.Num(0, n.dimension(), Double.NaN) : v;
     }

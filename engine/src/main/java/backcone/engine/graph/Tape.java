@@ -203,10 +203,50 @@ public final class Tape {
         return reasons.get(index);
     }
 
+    /** The registers on the ways from {@code cause} to {@code r}, with the ends of the regions among them. */
+    public boolean[] between(int r, int cause) {
+        boolean[] above = new boolean[size];
+        int[] stack = new int[size * 3 + 3];
+        int n = 0;
+        stack[n++] = r;
+        while (n > 0) {
+            int x = stack[--n];
+            if (above[x]) {
+                continue;
+            }
+            above[x] = true;
+            int count = operands(x);
+            boolean unknown = op(x) == Op.ROOT || op(x) == Op.SETTLE;
+            if (count > 0) {
+                stack[n++] = a[x];
+            }
+            if (count > 1) {
+                stack[n++] = b[x];
+            }
+            if (count > 2 || unknown) {
+                stack[n++] = c[x];
+            }
+        }
+        boolean[] keep = new boolean[size];
+        for (int i = 0; i < ordered; i++) {
+            int x = order[i];
+            if (op(x) == Op.END) {
+                keep[x] = keep[a[x]];
+                continue;
+            }
+            if (!above[x]) {
+                continue;
+            }
+            boolean unknown = op(x) == Op.ROOT || op(x) == Op.SETTLE;
+            keep[x] = x == cause || uses(x, keep) || (unknown && depends(c[x], cause));
+        }
+        return keep;
+    }
+
     /** Whether {@code r} depends on {@code on}, whatever the numbers are. */
     public boolean depends(int r, int on) {
         boolean[] seen = new boolean[size];
-        int[] stack = new int[size + 3];
+        int[] stack = new int[size * 3 + 3];
         int n = 0;
         stack[n++] = r;
         while (n > 0) {
@@ -220,10 +260,8 @@ public final class Tape {
             seen[x] = true;
             int count = operands(x);
             if (op(x) == Op.ROOT || op(x) == Op.SETTLE) {
-                stack = Arrays.copyOf(stack, Math.max(stack.length, n + 4));
                 stack[n++] = c[x];
             }
-            stack = Arrays.copyOf(stack, Math.max(stack.length, n + 4));
             if (count > 0) {
                 stack[n++] = a[x];
             }

@@ -16,7 +16,7 @@ final class Train {
 
     Train(DriveGraph graph) {
         Map<Element, List<Element>> next = new HashMap<>();
-        Set<List<Element>> edges = new HashSet<>();
+        Set<Set<Element>> edges = new HashSet<>();
         for (Element mesh : graph.allOfKind("mesh")) {
             Element a = shaftOf(graph, mesh, "pinion");
             Element b = shaftOf(graph, mesh, "wheel");
@@ -24,13 +24,24 @@ final class Train {
                 continue;
             }
             if (a == b) {
-                graph.problems.add(Code.SPLIT_TRAIN, graph.fileOf(mesh), mesh.span, "Both members of `" + mesh.name + "` sit on the shaft `" + a.name
-                        + "`; put one of them on another shaft.");
+                graph.problems.add(
+                        Code.SPLIT_TRAIN,
+                        graph.fileOf(mesh),
+                        mesh.headSpan(),
+                        "Both members of `" + mesh.name + "` sit on the shaft `" + a.name
+                                + "`; put one of them on another shaft.");
                 continue;
             }
             next.computeIfAbsent(a, k -> new ArrayList<>()).add(b);
             next.computeIfAbsent(b, k -> new ArrayList<>()).add(a);
-            edges.add(List.of(a, b));
+            if (!edges.add(Set.of(a, b))) {
+                graph.problems.add(
+                        Code.SPLIT_TRAIN,
+                        graph.fileOf(mesh),
+                        mesh.headSpan(),
+                        "`" + mesh.name + "` joins `" + a.name + "` and `" + b.name
+                                + "`, which are in mesh already; a train of shafts is a tree, split power paths are not covered.");
+            }
         }
         Element source = source(graph);
         if (source == null) {
@@ -48,15 +59,21 @@ final class Train {
                     cameFrom.put(t, s);
                     queue.add(t);
                 } else if (t != cameFrom.get(s) && cameFrom.get(t) != s) {
-                    graph.problems.add(Code.SPLIT_TRAIN, graph.fileOf(t), t.span, "The shaft `" + t.name
-                            + "` is reached by two ways from `" + source.name + "`; a train of shafts is a tree, split power paths are not covered.");
+                    graph.problems.add(
+                            Code.SPLIT_TRAIN,
+                            graph.fileOf(t),
+                            t.headSpan(),
+                            "The shaft `" + t.name + "` is reached by two ways from `" + source.name
+                                    + "`; a train of shafts is a tree, split power paths are not covered.");
                 }
             }
         }
     }
 
     private static @Nullable Element source(DriveGraph graph) {
-        if (graph.drive.own("power_from") instanceof Slot s && s.isGiven() && graph.compiler.value(s) instanceof Val.Ref r) {
+        if (graph.drive.own("power_from") instanceof Slot s
+                && s.isGiven()
+                && graph.compiler.value(s) instanceof Val.Ref r) {
             return r.element();
         }
         Element k = graph.activeCase;
@@ -67,7 +84,9 @@ final class Train {
     }
 
     static @Nullable Element shaftOf(DriveGraph graph, Element mesh, String member) {
-        if (mesh.own(member) instanceof Element gear && gear.own("on") instanceof Slot s && s.isGiven()
+        if (mesh.own(member) instanceof Element gear
+                && gear.own("on") instanceof Slot s
+                && s.isGiven()
                 && graph.compiler.value(s) instanceof Val.Ref r) {
             return r.element();
         }

@@ -26,7 +26,8 @@ public sealed interface Val {
     record Word(String text, @Nullable ChoiceKind kind) implements Val {}
 
     /** A word (or element) picked by numbers: the register holds its index. */
-    record Picked(int register, List<String> words, @Nullable ChoiceKind kind) implements Val {}
+    record Picked(
+            int register, List<String> words, @Nullable ChoiceKind kind) implements Val {}
 
     record Ref(Element element) implements Val {}
 

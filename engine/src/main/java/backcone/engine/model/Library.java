@@ -22,7 +22,8 @@ public final class Library {
     private final Map<Dimension, String> kindOfDimension = new HashMap<>();
 
     /** A named source of equations. */
-    public record SourceDef(String name, String text, backcone.engine.text.FileId file, backcone.engine.text.Span span) {}
+    public record SourceDef(
+            String name, String text, backcone.engine.text.FileId file, backcone.engine.text.Span span) {}
 
     /** Whether a block of kind {@code kind} may stand where {@code wanted} is asked for. */
     public boolean isKind(@Nullable String kind, String wanted) {

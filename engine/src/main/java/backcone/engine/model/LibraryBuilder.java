@@ -60,16 +60,26 @@ public final class LibraryBuilder {
             for (Entry.Word w : c.words()) {
                 words.put(w.name().text(), w.meaning());
             }
-            duplicate(library.choices.put(c.name().text(), new ChoiceKind(c.name().text(), c.meaning(), words, file, c)), c.name(), file);
+            duplicate(
+                    library.choices.put(c.name().text(), new ChoiceKind(c.name().text(), c.meaning(), words, file, c)),
+                    c.name(),
+                    file);
         } else if (e instanceof Entry.Source s) {
             // several files may cite the same source under one name
-            library.sources.putIfAbsent(s.name().text(), new Library.SourceDef(s.name().text(), s.text(), file, s.name().span()));
+            library.sources.putIfAbsent(
+                    s.name().text(),
+                    new Library.SourceDef(
+                            s.name().text(), s.text(), file, s.name().span()));
         }
     }
 
     private void duplicate(@Nullable Object before, Name name, FileId file) {
         if (before != null) {
-            problem(Code.DUPLICATE_NAME, file, name.span(), "`" + name + "` is declared twice; give one of the two another name.");
+            problem(
+                    Code.DUPLICATE_NAME,
+                    file,
+                    name.span(),
+                    "`" + name + "` is declared twice; give one of the two another name.");
         }
     }
 
@@ -171,8 +181,12 @@ public final class LibraryBuilder {
 
     private void checkKind(Name kind, FileId file) {
         if (!library.kinds.containsKey(kind.text())) {
-            problem(Code.UNKNOWN_KIND, file, kind.span(), "There is no kind of block `" + kind + "`."
-                    + Suggest.sentence(kind.text(), library.kinds.keySet()));
+            problem(
+                    Code.UNKNOWN_KIND,
+                    file,
+                    kind.span(),
+                    "There is no kind of block `" + kind + "`."
+                            + Suggest.sentence(kind.text(), library.kinds.keySet()));
         }
     }
 
@@ -182,22 +196,68 @@ public final class LibraryBuilder {
                 ValueKind kind = valueKind(d.kind(), body.file);
                 Unit unit = d.unit() == null ? null : unit(body.file, d.unit());
                 if (d.how() == Entry.Given.RELATION) {
-                    body.decls.add(new Decl(d.name(), d.symbol(), d.meaning(), kind, unit, Entry.Given.INPUT, null,
-                            Decl.Role.QUANTITY, d.notes(), body.file, d.span(), body.owner));
+                    body.decls.add(new Decl(
+                            d.name(),
+                            d.symbol(),
+                            d.meaning(),
+                            kind,
+                            unit,
+                            Entry.Given.INPUT,
+                            null,
+                            Decl.Role.QUANTITY,
+                            d.notes(),
+                            body.file,
+                            d.span(),
+                            body.owner));
                     Expr equation = d.value() == null ? new Expr.Hole(d.span()) : d.value();
                     body.relations.add(new BodyDef.RelationDef(
-                            new Entry.Relation(d.meaning(), null, equation, d.notes(), d.span()), body.file, body.owner));
+                            new Entry.Relation(d.meaning(), null, equation, d.notes(), d.span()),
+                            body.file,
+                            body.owner));
                 } else {
-                    body.decls.add(new Decl(d.name(), d.symbol(), d.meaning(), kind, unit, d.how(), d.value(),
-                            Decl.Role.QUANTITY, d.notes(), body.file, d.span(), body.owner));
+                    body.decls.add(new Decl(
+                            d.name(),
+                            d.symbol(),
+                            d.meaning(),
+                            kind,
+                            unit,
+                            d.how(),
+                            d.value(),
+                            Decl.Role.QUANTITY,
+                            d.notes(),
+                            body.file,
+                            d.span(),
+                            body.owner));
                 }
             } else if (e instanceof Entry.Let l) {
-                body.decls.add(new Decl(l.name(), null, null, new ValueKind.Inferred(), null, Entry.Given.EQUALS,
-                        l.value(), Decl.Role.LET, l.notes(), body.file, l.span(), body.owner));
+                body.decls.add(new Decl(
+                        l.name(),
+                        null,
+                        null,
+                        new ValueKind.Inferred(),
+                        null,
+                        Entry.Given.EQUALS,
+                        l.value(),
+                        Decl.Role.LET,
+                        l.notes(),
+                        body.file,
+                        l.span(),
+                        body.owner));
             } else if (e instanceof Entry.Check c) {
                 ValueKind kind = c.kind() == null ? ratio() : valueKind(c.kind(), body.file);
-                body.decls.add(new Decl(c.name(), null, c.meaning(), kind, null, Entry.Given.EQUALS, c.value(),
-                        Decl.Role.CHECK, c.notes(), body.file, c.span(), body.owner));
+                body.decls.add(new Decl(
+                        c.name(),
+                        null,
+                        c.meaning(),
+                        kind,
+                        null,
+                        Entry.Given.EQUALS,
+                        c.value(),
+                        Decl.Role.CHECK,
+                        c.notes(),
+                        body.file,
+                        c.span(),
+                        body.owner));
             } else if (e instanceof Entry.Relation r) {
                 body.relations.add(new BodyDef.RelationDef(r, body.file, body.owner));
             } else if (e instanceof Entry.Limit l) {
@@ -221,7 +281,9 @@ public final class LibraryBuilder {
             } else if (e instanceof Entry.Each x) {
                 BodyDef inner = new BodyDef(body.owner, body.file);
                 fill(inner, x.body(), ofMethod);
-                body.each.computeIfAbsent(x.collection().text(), k -> new ArrayList<>()).add(inner);
+                body.each
+                        .computeIfAbsent(x.collection().text(), k -> new ArrayList<>())
+                        .add(inner);
             } else if (e instanceof Entry.Example x) {
                 body.examples.add(x);
             } else if (e instanceof Entry.Edition d) {
@@ -231,8 +293,7 @@ public final class LibraryBuilder {
             } else if (e instanceof Entry.Include i) {
                 body.includes.add(i);
             } else if (!(e instanceof Entry.Bad)) {
-                problem(Code.WRONG_PLACE, body.file, e.span(),
-                        "This entry does not belong in `" + body.owner + "`.");
+                problem(Code.WRONG_PLACE, body.file, e.span(), "This entry does not belong in `" + body.owner + "`.");
             }
         }
     }
@@ -265,7 +326,10 @@ public final class LibraryBuilder {
             List<String> all = new ArrayList<>(library.quantities.keySet());
             all.addAll(library.choices.keySet());
             all.addAll(library.kinds.keySet());
-            problem(Code.UNKNOWN_KIND, file, name.span(),
+            problem(
+                    Code.UNKNOWN_KIND,
+                    file,
+                    name.span(),
                     "There is no quantity kind, choice or block kind `" + n + "`." + Suggest.sentence(n, all));
         }
         return new ValueKind.Unknown();
@@ -286,7 +350,8 @@ public final class LibraryBuilder {
         int keys = t.keys().size();
         List<Entry.Row> rows = t.rows();
         int headerCells = rows.isEmpty() ? 0 : rows.get(0).cells().size();
-        // a value table by two keys spells the second key's values in its header; with exactly one more column than keys
+        // a value table by two keys spells the second key's values in its header; with exactly one more column than
+        // keys
         // both keys are columns
         int keyColumns = t.kind() != null && keys == 2 && headerCells != 3 ? 1 : keys;
         if (t.kind() != null && keys == 2 && headerCells == 3 && secondIsHeader(t)) {
@@ -302,8 +367,12 @@ public final class LibraryBuilder {
         }
         for (int i = 1; i < rows.size(); i++) {
             if (rows.get(i).cells().size() != headerCells) {
-                problem(Code.BAD_TABLE, file, rows.get(i).span(),
-                        "This row has " + rows.get(i).cells().size() + " cells, the header of `" + t.name() + "` has " + headerCells + ".");
+                problem(
+                        Code.BAD_TABLE,
+                        file,
+                        rows.get(i).span(),
+                        "This row has " + rows.get(i).cells().size() + " cells, the header of `" + t.name() + "` has "
+                                + headerCells + ".");
             } else {
                 def.rows.add(rows.get(i).cells());
             }
@@ -320,8 +389,11 @@ public final class LibraryBuilder {
 
     private static boolean secondIsHeader(Entry.Table t) {
         Entry.Row header = t.rows().get(0);
-        Expr second = header.cells().get(1).values().isEmpty() ? new Expr.Hole(Span.NONE) : header.cells().get(1).values().get(0);
-        return !(second instanceof Expr.Path p && p.text().equals(t.keys().get(1).text()));
+        Expr second = header.cells().get(1).values().isEmpty()
+                ? new Expr.Hole(Span.NONE)
+                : header.cells().get(1).values().get(0);
+        return !(second instanceof Expr.Path p
+                && p.text().equals(t.keys().get(1).text()));
     }
 
     private void header(TableDef def, Entry.Cell c, FileId file) {
@@ -370,8 +442,12 @@ public final class LibraryBuilder {
             }
             TableDef.Between between = between(w);
             if (between == null) {
-                problem(Code.BAD_TABLE, file, r.words().get(i).span(), "`" + w
-                        + "` is no way to read rows; write exact, linear, inverse, loglog or step, then `below` or `above` with hold, extend or refuse.");
+                problem(
+                        Code.BAD_TABLE,
+                        file,
+                        r.words().get(i).span(),
+                        "`" + w
+                                + "` is no way to read rows; write exact, linear, inverse, loglog or step, then `below` or `above` with hold, extend or refuse.");
             } else {
                 def.between = between;
             }

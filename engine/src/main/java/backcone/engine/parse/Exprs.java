@@ -31,23 +31,21 @@ final class Exprs {
     // ---- values
 
     Expr value(BackconeParser.@Nullable ValueContext c, ParserRuleContext owner) {
-        if (c instanceof BackconeParser.RefValueContext) {
-            BackconeParser.RefValueContext ref = (BackconeParser.RefValueContext) c;
-            return new Expr.BlockRef(places.name(ref.head, c), places.name(ref.id, c), places.of(c));
-        }
-        if (!(c instanceof BackconeParser.ExprValueContext)) {
+        if (c == null) {
             return hole(owner);
         }
-        BackconeParser.ExprValueContext v = (BackconeParser.ExprValueContext) c;
-        Expr e = expr(v.expr(), c);
-        if (v.TOL() != null) {
-            return new Expr.Toleranced(e, sum(v.from, c), sum(v.to, c), places.of(c));
+        if (c.REFERENCE() != null) {
+            return new Expr.BlockRef(places.name(c.head, c), places.name(c.id, c), places.of(c));
         }
-        if (v.DOTDOT() != null) {
-            return new Expr.Range(e, sum(v.high, c), places.of(c));
+        Expr e = expr(c.expr(), c);
+        if (c.TOL() != null) {
+            return new Expr.Toleranced(e, sum(c.from, c), sum(c.to, c), places.of(c));
         }
-        if (v.ON() != null && v.DATE() != null) {
-            return new Expr.Dated(e, day(v.DATE().getSymbol()), places.of(c));
+        if (c.DOTDOT() != null) {
+            return new Expr.Range(e, sum(c.high, c), places.of(c));
+        }
+        if (c.ON() != null && c.DATE() != null) {
+            return new Expr.Dated(e, day(c.DATE().getSymbol()), places.of(c));
         }
         return e;
     }
@@ -59,227 +57,245 @@ final class Exprs {
     // ---- operators
 
     Expr expr(BackconeParser.@Nullable ExprContext c, ParserRuleContext owner) {
-        if (c == null) {
+        if (c == null || c.children == null) {
             return hole(owner);
         }
-        if (c instanceof BackconeParser.RootExprContext) {
-            BackconeParser.RootExprContext r = (BackconeParser.RootExprContext) c;
+        if (c.ROOT() != null) {
             return new Expr.Root(
-                    sum(r.left, c),
-                    sum(r.right, c),
-                    sum(r.low, c),
-                    sum(r.high, c),
-                    textOrNull(r.text()),
-                    places.of(c));
+                    sum(c.left, c), sum(c.right, c), sum(c.low, c), sum(c.high, c), textOrNull(c.text()), places.of(c));
         }
-        if (c instanceof BackconeParser.SettleExprContext) {
-            BackconeParser.SettleExprContext s = (BackconeParser.SettleExprContext) c;
+        if (c.SETTLE() != null) {
             return new Expr.Settle(
-                    sum(s.what, c),
-                    sum(s.begin, c),
-                    sum(s.tolerance, c),
-                    sum(s.most, c),
-                    textOrNull(s.text()),
+                    sum(c.what, c),
+                    sum(c.begin, c),
+                    sum(c.tolerance, c),
+                    sum(c.most, c),
+                    textOrNull(c.text()),
                     places.of(c));
         }
-        if (!(c instanceof BackconeParser.OrExprContext)) {
-            return hole(c);
+        if (c.children.size() == 1 && c.children.get(0) instanceof BackconeParser.CompareContext) {
+            return compare((BackconeParser.CompareContext) c.children.get(0));
         }
-        List<BackconeParser.ConjContext> parts = ((BackconeParser.OrExprContext) c).conj();
-        if (parts.isEmpty()) {
-            return hole(c);
-        }
-        Expr left = conj(parts.get(0));
-        Span span = places.of(parts.get(0));
-        for (int i = 1; i < parts.size(); i++) {
-            span = span.to(places.of(parts.get(i)));
-            left = new Expr.Binary(Expr.Op.OR, left, conj(parts.get(i)), span);
-        }
-        return left;
+        return logic(c);
     }
 
-    private Expr conj(BackconeParser.ConjContext c) {
-        List<BackconeParser.NegContext> parts = c.neg();
-        if (parts.isEmpty()) {
-            return hole(c);
+    /** {@code or} binds weakest, then {@code and}, then {@code not}. */
+    private Expr logic(BackconeParser.ExprContext c) {
+        Chain or = new Chain();
+        Chain and = new Chain();
+        int nots = -1;
+        for (int i = 0; i < c.children.size(); i++) {
+            ParseTree child = c.children.get(i);
+            if (child instanceof BackconeParser.CompareContext compare) {
+                Expr e = compare(compare);
+                Span place = places.of(compare);
+                for (int k = i - 1; nots >= 0 && k >= nots; k--) {
+                    place = Places.of(((TerminalNode) c.children.get(k)).getSymbol())
+                            .to(place);
+                    e = new Expr.Not(e, place);
+                }
+                nots = -1;
+                and.add(Expr.Op.AND, e, place);
+            } else if (isType(child, BackconeParser.OR)) {
+                or.add(Expr.Op.OR, and.take(c), and.span);
+                and = new Chain();
+            } else if (isType(child, BackconeParser.NOT) && nots < 0) {
+                nots = i;
+            }
         }
-        Expr left = neg(parts.get(0));
-        Span span = places.of(parts.get(0));
-        for (int i = 1; i < parts.size(); i++) {
-            span = span.to(places.of(parts.get(i)));
-            left = new Expr.Binary(Expr.Op.AND, left, neg(parts.get(i)), span);
-        }
-        return left;
+        or.add(Expr.Op.OR, and.take(c), and.span);
+        return or.take(c);
     }
 
-    private Expr neg(BackconeParser.NegContext c) {
-        BackconeParser.CompareContext inner = c.compare();
-        Expr e = inner == null ? hole(c) : compare(inner);
-        List<TerminalNode> nots = c.NOT();
-        for (int i = nots.size() - 1; i >= 0; i--) {
-            e = new Expr.Not(e, Places.of(nots.get(i).getSymbol()).to(places.of(c)));
+    /** Operands of one rank from left to right, with the place of all so far, brackets included. */
+    private final class Chain {
+        private @Nullable Expr sofar;
+        private Span span = Span.NONE;
+
+        void add(Expr.Op op, Expr e, Span place) {
+            span = sofar == null ? place : span.to(place);
+            sofar = sofar == null ? e : new Expr.Binary(op, sofar, e, span);
         }
-        return e;
+
+        Expr take(ParserRuleContext owner) {
+            if (sofar == null) {
+                span = places.behind(owner);
+                return new Expr.Hole(span);
+            }
+            return sofar;
+        }
     }
 
     private Expr compare(BackconeParser.CompareContext c) {
-        List<BackconeParser.SumContext> parts = c.sum();
-        if (parts.isEmpty()) {
+        if (c.children == null) {
             return hole(c);
         }
-        if (parts.size() == 1 && c.cmpSign().isEmpty()) {
-            return sum(parts.get(0), c);
+        if (c.children.size() == 1 && c.children.get(0) instanceof BackconeParser.SumContext) {
+            return sum((BackconeParser.SumContext) c.children.get(0), c);
         }
-        List<Expr> operands = new ArrayList<>(parts.size());
-        for (BackconeParser.SumContext p : parts) {
-            operands.add(sum(p, c));
-        }
+        List<Expr> operands = new ArrayList<>();
         List<Expr.Cmp> signs = new ArrayList<>();
-        for (BackconeParser.CmpSignContext s : c.cmpSign()) {
-            signs.add(sign(s));
+        for (ParseTree child : c.children) {
+            if (child instanceof BackconeParser.SumContext sumContext) {
+                operands.add(sum(sumContext, c));
+            } else if (child instanceof TerminalNode terminalNode) {
+                signs.add(sign(terminalNode.getSymbol().getText()));
+            }
         }
         while (operands.size() <= signs.size()) {
             operands.add(hole(c));
         }
-        return new Expr.Compare(List.copyOf(operands), List.copyOf(signs), places.of(c));
+        return signs.isEmpty()
+                ? operands.get(0)
+                : new Expr.Compare(List.copyOf(operands), List.copyOf(signs), places.of(c));
     }
 
     static Expr.Cmp sign(BackconeParser.@Nullable CmpSignContext c) {
-        if (c != null && c.getStart() != null) {
-            String text = c.getStart().getText();
-            for (Expr.Cmp cmp : Expr.Cmp.values()) {
-                if (cmp.sign.equals(text)) {
-                    return cmp;
-                }
+        return c == null || c.getChildCount() == 0
+                ? Expr.Cmp.GE
+                : sign(c.getStart().getText());
+    }
+
+    private static Expr.Cmp sign(String text) {
+        for (Expr.Cmp cmp : Expr.Cmp.values()) {
+            if (cmp.sign.equals(text)) {
+                return cmp;
             }
         }
         return Expr.Cmp.GE;
     }
 
     Expr sum(BackconeParser.@Nullable SumContext c, ParserRuleContext owner) {
-        if (c == null) {
+        if (c == null || c.children == null) {
             return hole(owner);
         }
-        Expr left = null;
-        Span span = Span.NONE;
-        Expr.Op op = Expr.Op.ADD;
-        for (int i = 0; i < c.getChildCount(); i++) {
-            ParseTree child = c.getChild(i);
-            if (child instanceof BackconeParser.TermContext) {
-                BackconeParser.TermContext part = (BackconeParser.TermContext) child;
-                Expr e = term(part);
-                Span place = places.of(part);
-                span = left == null ? place : span.to(place);
-                left = left == null ? e : new Expr.Binary(op, left, e, span);
+        if (c.children.size() == 1 && c.children.get(0) instanceof BackconeParser.OperandContext) {
+            return operand((BackconeParser.OperandContext) c.children.get(0));
+        }
+        Chain sum = new Chain();
+        Chain term = new Chain();
+        Expr.Op sumSign = Expr.Op.ADD;
+        Expr.Op termSign = Expr.Op.MUL;
+        int i = 0;
+        while (i < c.children.size()) {
+            int end = endOfPower(c, i);
+            Power power = power(c, i, end);
+            term.add(termSign, power.value, power.span);
+            i = end;
+            if (i >= c.children.size()) {
+                break;
+            }
+            ParseTree operator = c.children.get(i);
+            i++;
+            if (isType(operator, BackconeParser.STAR) || isType(operator, BackconeParser.SLASH)) {
+                termSign = isType(operator, BackconeParser.STAR) ? Expr.Op.MUL : Expr.Op.DIV;
             } else {
-                op = isType(child, BackconeParser.MINUS) ? Expr.Op.SUB : Expr.Op.ADD;
+                sum.add(sumSign, term.take(c), term.span);
+                sumSign = isType(operator, BackconeParser.MINUS) ? Expr.Op.SUB : Expr.Op.ADD;
+                term = new Chain();
+                termSign = Expr.Op.MUL;
             }
         }
-        return left == null ? hole(c) : left;
+        sum.add(sumSign, term.take(c), term.span);
+        return sum.take(c);
     }
 
-    private Expr term(BackconeParser.TermContext c) {
-        Expr left = null;
-        Span span = Span.NONE;
-        Expr.Op op = Expr.Op.MUL;
-        for (int i = 0; i < c.getChildCount(); i++) {
-            ParseTree child = c.getChild(i);
-            if (child instanceof BackconeParser.UnaryContext) {
-                BackconeParser.UnaryContext part = (BackconeParser.UnaryContext) child;
-                Expr e = unary(part);
-                Span place = places.of(part);
-                span = left == null ? place : span.to(place);
-                left = left == null ? e : new Expr.Binary(op, left, e, span);
-            } else {
-                op = isType(child, BackconeParser.SLASH) ? Expr.Op.DIV : Expr.Op.MUL;
+    private record Power(Expr value, Span span) {}
+
+    /** The index behind {@code -a ^ -b ^ c}, which is one factor. */
+    private static int endOfPower(BackconeParser.SumContext c, int from) {
+        int i = from;
+        while (true) {
+            while (i < c.children.size() && !(c.children.get(i) instanceof BackconeParser.OperandContext)) {
+                i++;
             }
+            i = Math.min(i + 1, c.children.size());
+            if (i >= c.children.size() || !isType(c.children.get(i), BackconeParser.CARET)) {
+                return i;
+            }
+            i++;
         }
-        return left == null ? hole(c) : left;
     }
 
-    private Expr unary(BackconeParser.UnaryContext c) {
-        BackconeParser.PowerContext inner = c.power();
-        Expr e = inner == null ? hole(c) : power(inner);
-        int end = places.of(c).end();
-        for (int i = c.getChildCount() - 1; i >= 0; i--) {
-            e = signed(c.getChild(i), e, end);
-        }
-        return e;
-    }
-
-    /** A minus is kept; a plus says nothing. */
-    private static Expr signed(ParseTree sign, Expr e, int end) {
-        if (isType(sign, BackconeParser.MINUS)) {
-            int start = ((TerminalNode) sign).getSymbol().getStartIndex();
-            return new Expr.Neg(e, new Span(start, Math.max(start, end)));
-        }
-        return e;
-    }
-
-    /** {@code a ^ -b ^ c} is {@code a ^ (-(b ^ c))}. */
-    private Expr power(BackconeParser.PowerContext c) {
+    /** {@code -a ^ -b ^ c} is {@code -(a ^ (-(b ^ c)))}. A plus says nothing. */
+    private Power power(BackconeParser.SumContext c, int from, int end) {
         Expr right = null;
-        int end = places.of(c).end();
-        for (int i = c.getChildCount() - 1; i >= 0; i--) {
-            ParseTree child = c.getChild(i);
-            if (child instanceof BackconeParser.PostContext) {
-                BackconeParser.PostContext part = (BackconeParser.PostContext) child;
-                Expr e = post(part);
-                int start = places.of(part).start();
-                right = right == null ? e : new Expr.Binary(Expr.Op.POW, e, right, new Span(start, Math.max(start, end)));
-            } else if (right == null) {
-                right = hole(c);
-            } else {
-                right = signed(child, right, end);
+        Span span = Span.NONE;
+        for (int i = end - 1; i >= from; i--) {
+            ParseTree child = c.children.get(i);
+            if (child instanceof BackconeParser.OperandContext operand) {
+                Expr e = operand(operand);
+                Span place = places.of(operand);
+                span = right == null ? place : place.to(span);
+                right = right == null ? e : new Expr.Binary(Expr.Op.POW, e, right, span);
+                continue;
+            }
+            Token sign = ((TerminalNode) child).getSymbol();
+            if (right == null) {
+                span = places.behind(c);
+                right = new Expr.Hole(span);
+            }
+            if (sign.getType() == BackconeParser.MINUS) {
+                span = Places.of(sign).to(span);
+                right = new Expr.Neg(right, span);
             }
         }
-        return right == null ? hole(c) : right;
-    }
-
-    private Expr post(BackconeParser.PostContext c) {
-        BackconeParser.PrimaryContext inner = c.primary();
-        Expr e = inner == null ? hole(c) : primary(inner);
-        for (TerminalNode unit : c.UNIT()) {
-            Span span = places.of(c).to(Places.of(unit.getSymbol()));
-            e = new Expr.In(e, new Name(unit.getText(), Places.of(unit.getSymbol())), span);
-        }
-        return e;
+        return right == null ? new Power(hole(c), places.behind(c)) : new Power(right, span);
     }
 
     // ---- operands
 
-    private Expr primary(BackconeParser.PrimaryContext c) {
-        if (c instanceof BackconeParser.NumberExprContext) {
-            return number((BackconeParser.NumberExprContext) c);
+    private Expr operand(BackconeParser.OperandContext c) {
+        Expr e = bare(c);
+        for (int i = 0; i < c.getChildCount(); i++) {
+            if (isType(c.getChild(i), BackconeParser.IN)) {
+                Token unit = i + 1 < c.getChildCount() ? ((TerminalNode) c.getChild(i + 1)).getSymbol() : null;
+                Name name = places.name(unit, c);
+                e = new Expr.In(
+                        e, name, new Span(places.of(c).start(), name.span().end()));
+            }
         }
-        if (c instanceof BackconeParser.PathExprContext) {
-            return pathOrCall((BackconeParser.PathExprContext) c);
-        }
-        if (c instanceof BackconeParser.ParenExprContext) {
-            return expr(((BackconeParser.ParenExprContext) c).expr(), c);
-        }
-        if (c instanceof BackconeParser.TextExprContext) {
-            BackconeParser.TextContext text = ((BackconeParser.TextExprContext) c).text();
-            return text == null ? hole(c) : new Expr.Str(text(text), places.of(text));
-        }
-        if (c instanceof BackconeParser.DateExprContext) {
-            return day(((BackconeParser.DateExprContext) c).DATE().getSymbol());
-        }
-        if (c instanceof BackconeParser.GivenExprContext) {
-            return new Expr.Given(path(((BackconeParser.GivenExprContext) c).path(), c), places.of(c));
-        }
-        if (c instanceof BackconeParser.ChooseExprContext) {
-            return choose((BackconeParser.ChooseExprContext) c);
-        }
-        return hole(c);
+        return e;
     }
 
-    private Expr number(BackconeParser.NumberExprContext c) {
-        Token token = c.NUMBER().getSymbol();
-        if (token instanceof Tok && ((Tok) token).isUnreadable()) {
-            return new Expr.Hole(places.of(c));
+    private Expr bare(BackconeParser.OperandContext c) {
+        if (c.children == null) {
+            return hole(c);
         }
-        return num(token, c.UNIT() == null ? null : c.UNIT().getSymbol());
+        switch (c.getStart().getType()) {
+            case BackconeParser.NUMBER -> {
+                return number(c);
+            }
+            case BackconeParser.NAME -> {
+                return pathOrCall(c.path(), c.call(), c);
+            }
+            case BackconeParser.LPAREN -> {
+                return expr(c.expr(), c);
+            }
+            case BackconeParser.GIVEN -> {
+                return new Expr.Given(path(c.path(), c), places.of(c));
+            }
+            case BackconeParser.CHOOSE -> {
+                return choose(c);
+            }
+            case BackconeParser.DATE -> {
+                return day(c.DATE().getSymbol());
+            }
+            default -> {
+                BackconeParser.TextContext text = c.text();
+                return text == null ? hole(c) : new Expr.Str(text(text), places.of(text));
+            }
+        }
+    }
+
+    private Expr number(BackconeParser.OperandContext c) {
+        Token token = c.getStart();
+        ParseTree next = c.getChildCount() > 1 ? c.getChild(1) : null;
+        Token unit = next != null && isType(next, BackconeParser.UNIT) ? ((TerminalNode) next).getSymbol() : null;
+        if (token instanceof Tok tok && tok.isUnreadable()) {
+            return new Expr.Hole(Places.of(token));
+        }
+        return num(token, unit);
     }
 
     static Expr.Num num(Token number, @Nullable Token unit) {
@@ -295,22 +311,27 @@ final class Exprs {
         if (unit == null) {
             return new Expr.Num(text, value, null, span);
         }
-        return new Expr.Num(
-                text, value, new Name(unit.getText(), Places.of(unit)), span.to(Places.of(unit)));
+        Span place = Places.of(unit);
+        return new Expr.Num(text, value, new Name(unit.getText(), place), span.to(place));
     }
 
-    private Expr pathOrCall(BackconeParser.PathExprContext c) {
-        Expr.Path path = path(c.path(), c);
-        if (c.LPAREN() == null) {
+    private Expr pathOrCall(
+            BackconeParser.PathContext pathContext,
+            BackconeParser.@Nullable CallContext call,
+            ParserRuleContext owner) {
+        Expr.Path path = path(pathContext, owner);
+        if (call == null) {
             return path;
         }
         List<Expr> args = new ArrayList<>();
-        for (BackconeParser.ArgContext a : c.arg()) {
+        for (BackconeParser.ArgContext a : call.arg()) {
             args.add(argument(a));
         }
-        int end = c.RPAREN() == null ? places.of(c).end() : Places.of(c.RPAREN().getSymbol()).end();
+        int end = call.RPAREN() == null
+                ? places.of(call).end()
+                : Places.of(call.RPAREN().getSymbol()).end();
         Expr e = new Expr.Call(path, List.copyOf(args), new Span(path.span().start(), end));
-        for (TerminalNode column : c.NAME()) {
+        for (TerminalNode column : call.NAME()) {
             Span place = Places.of(column.getSymbol());
             e = new Expr.Column(e, new Name(column.getText(), place), e.span().to(place));
         }
@@ -326,7 +347,7 @@ final class Exprs {
         return new Expr.Each(places.name(name, a), body, places.of(a));
     }
 
-    private Expr choose(BackconeParser.ChooseExprContext c) {
+    private Expr choose(BackconeParser.OperandContext c) {
         Expr subject = c.sum() == null ? null : sum(c.sum(), c);
         List<Expr.Arm> arms = new ArrayList<>();
         if (c.arms() != null && c.arms().armList() != null) {
@@ -338,18 +359,24 @@ final class Exprs {
                 arms.add(new Expr.Arm(when, value, places.of(a)));
             }
         }
-        return new Expr.Choose(subject, List.copyOf(arms), places.of(c));
+        int end = c.arms() == null ? places.of(c).end() : places.of(c.arms()).end();
+        return new Expr.Choose(subject, List.copyOf(arms), new Span(places.of(c).start(), end));
     }
 
     Expr.Path path(BackconeParser.@Nullable PathContext c, ParserRuleContext owner) {
-        if (c == null || c.NAME().isEmpty()) {
+        if (c == null || c.children == null) {
             return new Expr.Path(List.of(new Name("", places.behind(owner))), places.behind(owner));
         }
-        List<Name> names = new ArrayList<>(c.NAME().size());
-        for (TerminalNode n : c.NAME()) {
-            names.add(new Name(n.getText(), Places.of(n.getSymbol())));
+        List<Name> names = new ArrayList<>((c.children.size() + 1) / 2);
+        boolean open = false;
+        for (ParseTree child : c.children) {
+            Token t = ((TerminalNode) child).getSymbol();
+            open = t.getType() == BackconeParser.DOT;
+            if (!open) {
+                names.add(new Name(t.getText(), Places.of(t)));
+            }
         }
-        if (c.DOT().size() >= names.size()) {
+        if (open) {
             names.add(new Name("", places.behind(c)));
         }
         return new Expr.Path(List.copyOf(names), places.of(c));
@@ -390,6 +417,7 @@ final class Exprs {
     }
 
     private static boolean isType(ParseTree node, int type) {
-        return node instanceof TerminalNode && ((TerminalNode) node).getSymbol().getType() == type;
+        return node instanceof TerminalNode terminalNode
+                && terminalNode.getSymbol().getType() == type;
     }
 }

@@ -28,13 +28,13 @@ final class Notes {
         List<Note> notes = new ArrayList<>(contexts.size());
         for (int i = 0; i < contexts.size(); i++) {
             BackconeParser.NoteContext c = contexts.get(i);
-            if (c instanceof BackconeParser.ReadingNoteContext) {
+            if (c instanceof BackconeParser.ReadingNoteContext readingNoteContext) {
                 // what stands behind a reading, up to the next one, belongs to it
                 int end = i + 1;
                 while (end < contexts.size() && !(contexts.get(end) instanceof BackconeParser.ReadingNoteContext)) {
                     end++;
                 }
-                notes.add(reading((BackconeParser.ReadingNoteContext) c, of(contexts.subList(i + 1, end))));
+                notes.add(reading(readingNoteContext, of(contexts.subList(i + 1, end))));
                 i = end - 1;
                 continue;
             }
@@ -57,53 +57,52 @@ final class Notes {
     /** Null for a clause so broken that nothing of it can be read; the parser has said why. */
     private @Nullable Note note(BackconeParser.NoteContext note) {
         Span span = places.of(note);
-        if (note instanceof BackconeParser.PerNoteContext) {
-            return per((BackconeParser.PerNoteContext) note, span);
+        if (note instanceof BackconeParser.PerNoteContext n) {
+            return per(n, span);
         }
-        if (note instanceof BackconeParser.MeasuredNoteContext) {
-            return new Note.Measured(Exprs.textOrNull(((BackconeParser.MeasuredNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.MeasuredNoteContext n) {
+            return new Note.Measured(Exprs.textOrNull(n.text()), span);
         }
-        if (note instanceof BackconeParser.AssumedNoteContext) {
-            return new Note.Assumed(Exprs.textOrNull(((BackconeParser.AssumedNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.AssumedNoteContext n) {
+            return new Note.Assumed(Exprs.textOrNull(n.text()), span);
         }
-        if (note instanceof BackconeParser.BecauseNoteContext) {
-            return new Note.Because(textOrEmpty(((BackconeParser.BecauseNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.BecauseNoteContext n) {
+            return new Note.Because(textOrEmpty(n.text()), span);
         }
-        if (note instanceof BackconeParser.UntilNoteContext) {
-            return new Note.Until(dayOrNull(((BackconeParser.UntilNoteContext) note).DATE()), span);
+        if (note instanceof BackconeParser.UntilNoteContext n) {
+            return new Note.Until(dayOrNull(n.DATE()), span);
         }
-        if (note instanceof BackconeParser.ByNoteContext) {
-            return new Note.By(textOrEmpty(((BackconeParser.ByNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.ByNoteContext n) {
+            return new Note.By(textOrEmpty(n.text()), span);
         }
-        if (note instanceof BackconeParser.ElseNoteContext) {
-            return new Note.Otherwise(textOrEmpty(((BackconeParser.ElseNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.ElseNoteContext n) {
+            return new Note.Otherwise(textOrEmpty(n.text()), span);
         }
-        if (note instanceof BackconeParser.TakingNoteContext) {
-            return taking((BackconeParser.TakingNoteContext) note, span);
+        if (note instanceof BackconeParser.TakingNoteContext n) {
+            return taking(n, span);
         }
-        if (note instanceof BackconeParser.RangeNoteContext) {
-            BackconeParser.RangeNoteContext r = (BackconeParser.RangeNoteContext) note;
+        if (note instanceof BackconeParser.RangeNoteContext r) {
             return new Note.InRange(exprs.sum(r.low, r), exprs.sum(r.high, r), span);
         }
-        if (note instanceof BackconeParser.RowsNoteContext) {
-            return rows((BackconeParser.RowsNoteContext) note, span);
+        if (note instanceof BackconeParser.RowsNoteContext n) {
+            return rows(n, span);
         }
-        if (note instanceof BackconeParser.WorstNoteContext) {
-            TerminalNode end = ((BackconeParser.WorstNoteContext) note).NAME();
+        if (note instanceof BackconeParser.WorstNoteContext n) {
+            TerminalNode end = n.NAME();
             return new Note.Worst(places.name(symbol(end), note), span);
         }
-        if (note instanceof BackconeParser.IsNoteContext) {
-            TerminalNode what = ((BackconeParser.IsNoteContext) note).NAME();
+        if (note instanceof BackconeParser.IsNoteContext n) {
+            TerminalNode what = n.NAME();
             return new Note.Is(places.name(symbol(what), note), span);
         }
-        if (note instanceof BackconeParser.NeededNoteContext) {
-            return new Note.Needed(Exprs.textOrNull(((BackconeParser.NeededNoteContext) note).text()), span);
+        if (note instanceof BackconeParser.NeededNoteContext n) {
+            return new Note.Needed(Exprs.textOrNull(n.text()), span);
         }
-        if (note instanceof BackconeParser.OfferNoteContext) {
-            return new Note.Offer(exprs.expr(((BackconeParser.OfferNoteContext) note).expr(), note), span);
+        if (note instanceof BackconeParser.OfferNoteContext n) {
+            return new Note.Offer(exprs.expr(n.expr(), note), span);
         }
-        if (note instanceof BackconeParser.WithinNoteContext) {
-            return new Note.Within(exprs.sum(((BackconeParser.WithinNoteContext) note).sum(), note), span);
+        if (note instanceof BackconeParser.WithinNoteContext n) {
+            return new Note.Within(exprs.sum(n.sum(), note), span);
         }
         return null;
     }

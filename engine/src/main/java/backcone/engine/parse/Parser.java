@@ -7,12 +7,11 @@ import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
 import backcone.grammar.Tok;
+import backcone.grammar.TokenList;
 import backcone.grammar.Tokens;
 import backcone.grammar.gen.BackconeParser;
 import java.util.ArrayList;
 import java.util.List;
-import org.antlr.v4.runtime.CommonTokenStream;
-import org.antlr.v4.runtime.ListTokenSource;
 import org.antlr.v4.runtime.atn.PredictionMode;
 
 /** Text to tree. Total: any text gives a tree, with findings beside it. */
@@ -38,10 +37,9 @@ public final class Parser {
         }
         Tokens tokens = Tokens.of(text);
         Recovery recovery = new Recovery();
-        BackconeParser.FileContext tree = tree(tokens, recovery);
         Problems problems = new Problems(file, text, tokens, recovery);
         TreeBuilder builder = new TreeBuilder(new Places(tokens.list()), problems);
-        List<Entry> entries = builder.entries(tree.entries());
+        List<Entry> entries = builder.entries(read(tokens, recovery, builder).entries());
         List<FileSyntax.Comment> comments = new ArrayList<>(tokens.comments().size());
         for (Tok c : tokens.comments()) {
             comments.add(new FileSyntax.Comment(c.getText(), Places.of(c)));
@@ -50,12 +48,11 @@ public final class Parser {
         return new Parsed(syntax, problems.all());
     }
 
-    private static BackconeParser.FileContext tree(Tokens tokens, Recovery recovery) {
-        CommonTokenStream stream = new CommonTokenStream(new ListTokenSource(tokens.list()));
-        stream.fill();
-        BackconeParser parser = new BackconeParser(stream);
+    private static BackconeParser.FileContext read(Tokens tokens, Recovery recovery, TreeBuilder builder) {
+        BackconeParser parser = new BackconeParser(new TokenList(tokens.list()));
         parser.removeErrorListeners();
         parser.setErrorHandler(recovery);
+        parser.setBuilder(entry -> builder.entry((BackconeParser.EntryContext) entry));
         // every choice is made on one or two tokens, so the cheap mode gives the same tree as the full one
         parser.getInterpreter().setPredictionMode(PredictionMode.SLL);
         return parser.file();

@@ -50,7 +50,8 @@ final class Places {
         return token == null ? new Name("", behind(owner)) : new Name(token.getText(), of(token));
     }
 
-    @Nullable Name nameOrNull(@Nullable Token token) {
+    @Nullable
+    Name nameOrNull(@Nullable Token token) {
         return token == null ? null : new Name(token.getText(), of(token));
     }
 }

@@ -3,7 +3,6 @@ package backcone.engine.parse;
 import backcone.grammar.Tok;
 import backcone.grammar.gen.BackconeParser;
 import java.util.IdentityHashMap;
-import java.util.Map;
 import org.antlr.v4.runtime.DefaultErrorStrategy;
 import org.antlr.v4.runtime.InputMismatchException;
 import org.antlr.v4.runtime.Parser;
@@ -23,10 +22,11 @@ final class Recovery extends DefaultErrorStrategy {
     /** The first thing that went wrong in an entry: in which rule, at which token, what could have stood there. */
     record Failure(RuleContext rule, Token found, IntervalSet expected) {}
 
-    private final Map<RuleContext, Failure> failures = new IdentityHashMap<>();
+    private final IdentityHashMap<RuleContext, Failure> failures = new IdentityHashMap<>();
 
     /** The first failure directly in this entry, row or arm, not in those it holds. */
-    @Nullable Failure in(ParserRuleContext item) {
+    @Nullable
+    Failure in(ParserRuleContext item) {
         return failures.get(item);
     }
 
@@ -73,6 +73,6 @@ final class Recovery extends DefaultErrorStrategy {
     }
 
     static boolean isFaulty(Token start) {
-        return start instanceof Tok && ((Tok) start).isFaulty();
+        return start instanceof Tok tok && tok.isFaulty();
     }
 }

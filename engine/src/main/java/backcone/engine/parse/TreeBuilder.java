@@ -34,8 +34,8 @@ final class TreeBuilder {
         }
         List<Entry> list = new ArrayList<>();
         for (ParseTree child : c.children) {
-            if (child instanceof BackconeParser.EntryContext) {
-                list.add(entry((BackconeParser.EntryContext) child));
+            if (child instanceof BackconeParser.EntryContext e) {
+                list.add(e.tree instanceof Entry ? (Entry) e.tree : entry(e));
             }
         }
         return List.copyOf(list);
@@ -49,7 +49,7 @@ final class TreeBuilder {
     /** The body, or the one that stands in the text the entry could not use, so that its entries are not lost. */
     private @Nullable List<Entry> bodyOrNull(
             BackconeParser.@Nullable BodyContext c, BackconeParser.@Nullable RestContext rest) {
-        if (c != null) {
+        if (c != null && c.LBRACE() != null) {
             return entries(c.entries());
         }
         if (rest == null || rest.entries().isEmpty()) {
@@ -62,7 +62,7 @@ final class TreeBuilder {
         return List.copyOf(list);
     }
 
-    private Entry entry(BackconeParser.EntryContext c) {
+    Entry entry(BackconeParser.EntryContext c) {
         BackconeParser.RestContext rest = c.rest();
         check.check(c, rest);
         ParseTree child = c.getChildCount() == 0 ? c : c.getChild(0);
@@ -75,19 +75,16 @@ final class TreeBuilder {
         if (handbook != null) {
             return handbook;
         }
-        // the entries of a body that has no head are kept, but by no block
         return new Entry.Bad(span);
     }
 
     // ---- blocks, facts, drives
 
     private @Nullable Entry driveEntry(ParseTree e, BackconeParser.@Nullable RestContext rest, Span span) {
-        if (e instanceof BackconeParser.FactContext) {
-            BackconeParser.FactContext f = (BackconeParser.FactContext) e;
+        if (e instanceof BackconeParser.FactContext f) {
             return new Entry.Fact(exprs.path(f.path(), f), exprs.value(f.value(), f), notes.of(f.note()), span);
         }
-        if (e instanceof BackconeParser.BlockContext) {
-            BackconeParser.BlockContext b = (BackconeParser.BlockContext) e;
+        if (e instanceof BackconeParser.BlockContext b) {
             return new Entry.Block(
                     places.name(b.head, b),
                     places.nameOrNull(b.id),
@@ -96,67 +93,46 @@ final class TreeBuilder {
                     bodyOrNull(b.body(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.RequirementContext) {
-            BackconeParser.RequirementContext r = (BackconeParser.RequirementContext) e;
+        if (e instanceof BackconeParser.RequirementContext r) {
             return new Entry.Requirement(
-                    exprs.path(r.path(), r),
-                    Exprs.sign(r.cmpSign()),
-                    exprs.sum(r.sum(), r),
-                    notes.of(r.note()),
-                    span);
+                    exprs.path(r.path(), r), Exprs.sign(r.cmpSign()), exprs.sum(r.sum(), r), notes.of(r.note()), span);
         }
-        if (e instanceof BackconeParser.DeclarationContext) {
-            return declaration((BackconeParser.DeclarationContext) e, span);
+        if (e instanceof BackconeParser.DeclarationContext c) {
+            return declaration(c, span);
         }
-        if (e instanceof BackconeParser.FactForContext) {
-            BackconeParser.FactForContext f = (BackconeParser.FactForContext) e;
+        if (e instanceof BackconeParser.FactForContext f) {
             return new Entry.FactFor(
-                    places.name(f.id, f),
-                    places.name(f.other, f),
-                    exprs.value(f.value(), f),
-                    notes.of(f.note()),
-                    span);
+                    places.name(f.id, f), places.name(f.other, f), exprs.value(f.value(), f), notes.of(f.note()), span);
         }
-        if (e instanceof BackconeParser.DriveContext) {
-            BackconeParser.DriveContext d = (BackconeParser.DriveContext) e;
+        if (e instanceof BackconeParser.DriveContext d) {
             return new Entry.Drive(places.name(d.id, d), Exprs.textOrNull(d.text()), body(d.body(), rest), span);
         }
-        if (e instanceof BackconeParser.UseContext) {
-            return use((BackconeParser.UseContext) e, span);
+        if (e instanceof BackconeParser.UseContext c) {
+            return use(c, span);
         }
-        if (e instanceof BackconeParser.LetContext) {
-            BackconeParser.LetContext l = (BackconeParser.LetContext) e;
+        if (e instanceof BackconeParser.LetContext l) {
             return new Entry.Let(places.name(l.id, l), exprs.value(l.value(), l), notes.of(l.note()), span);
         }
-        if (e instanceof BackconeParser.RateContext) {
-            return rate((BackconeParser.RateContext) e, rest, span);
+        if (e instanceof BackconeParser.RateContext c) {
+            return rate(c, rest, span);
         }
-        if (e instanceof BackconeParser.RequireContext) {
-            return require((BackconeParser.RequireContext) e, span);
+        if (e instanceof BackconeParser.RequireContext c) {
+            return require(c, span);
         }
-        if (e instanceof BackconeParser.AssertionContext) {
-            BackconeParser.AssertionContext a = (BackconeParser.AssertionContext) e;
+        if (e instanceof BackconeParser.AssertionContext a) {
             return new Entry.Assert(exprs.expr(a.expr(), a), notes.of(a.note()), span);
         }
-        if (e instanceof BackconeParser.OverrideContext) {
-            BackconeParser.OverrideContext o = (BackconeParser.OverrideContext) e;
+        if (e instanceof BackconeParser.OverrideContext o) {
             return new Entry.Override(exprs.path(o.path(), o), exprs.value(o.value(), o), notes.of(o.note()), span);
         }
-        if (e instanceof BackconeParser.AcceptContext) {
-            BackconeParser.AcceptContext a = (BackconeParser.AcceptContext) e;
+        if (e instanceof BackconeParser.AcceptContext a) {
             return new Entry.Accept(
-                    exprs.path(a.path(), a),
-                    Exprs.sign(a.cmpSign()),
-                    exprs.sum(a.sum(), a),
-                    notes.of(a.note()),
-                    span);
+                    exprs.path(a.path(), a), Exprs.sign(a.cmpSign()), exprs.sum(a.sum(), a), notes.of(a.note()), span);
         }
-        if (e instanceof BackconeParser.WaiveContext) {
-            BackconeParser.WaiveContext w = (BackconeParser.WaiveContext) e;
+        if (e instanceof BackconeParser.WaiveContext w) {
             return new Entry.Waive(exprs.path(w.path(), w), notes.of(w.note()), span);
         }
-        if (e instanceof BackconeParser.VariantContext) {
-            BackconeParser.VariantContext v = (BackconeParser.VariantContext) e;
+        if (e instanceof BackconeParser.VariantContext v) {
             return new Entry.Variant(
                     places.name(v.id, v),
                     places.name(v.base, v),
@@ -164,8 +140,7 @@ final class TreeBuilder {
                     body(v.body(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.FamilyContext) {
-            BackconeParser.FamilyContext f = (BackconeParser.FamilyContext) e;
+        if (e instanceof BackconeParser.FamilyContext f) {
             return new Entry.Family(
                     places.name(f.id, f),
                     places.name(f.base, f),
@@ -212,8 +187,7 @@ final class TreeBuilder {
         if (u.id != null || u.text() == null) {
             return new Entry.UseReading(places.name(u.id, u), exprs.path(u.path(), u), notes.of(u.note()), span);
         }
-        return new Entry.Use(
-                Exprs.text(u.text()), places.nameOrNull(u.alias), places.of(u.text()), span);
+        return new Entry.Use(Exprs.text(u.text()), places.nameOrNull(u.alias), places.of(u.text()), span);
     }
 
     private Entry rate(BackconeParser.RateContext r, BackconeParser.@Nullable RestContext rest, Span span) {
@@ -257,8 +231,7 @@ final class TreeBuilder {
     // ---- handbook
 
     private @Nullable Entry handbookEntry(ParseTree e, BackconeParser.@Nullable RestContext rest, Span span) {
-        if (e instanceof BackconeParser.QuantityContext) {
-            BackconeParser.QuantityContext q = (BackconeParser.QuantityContext) e;
+        if (e instanceof BackconeParser.QuantityContext q) {
             return new Entry.Quantity(
                     places.name(q.id, q),
                     places.name(q.UNIT() == null ? null : q.UNIT().getSymbol(), q),
@@ -267,17 +240,14 @@ final class TreeBuilder {
                     names(q.names()),
                     span);
         }
-        if (e instanceof BackconeParser.SourceContext) {
-            BackconeParser.SourceContext s = (BackconeParser.SourceContext) e;
+        if (e instanceof BackconeParser.SourceContext s) {
             String text = Exprs.textOrNull(s.text());
             return new Entry.Source(places.name(s.id, s), text == null ? "" : text, span);
         }
-        if (e instanceof BackconeParser.ChoiceContext) {
-            BackconeParser.ChoiceContext c = (BackconeParser.ChoiceContext) e;
+        if (e instanceof BackconeParser.ChoiceContext c) {
             return new Entry.Choice(places.name(c.id, c), Exprs.textOrNull(c.text()), words(c.words(), rest), span);
         }
-        if (e instanceof BackconeParser.KindContext) {
-            BackconeParser.KindContext k = (BackconeParser.KindContext) e;
+        if (e instanceof BackconeParser.KindContext k) {
             return new Entry.Kind(
                     places.name(k.id, k),
                     k.IS() == null ? null : places.name(k.base, k),
@@ -285,8 +255,7 @@ final class TreeBuilder {
                     body(k.body(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.ChapterContext) {
-            BackconeParser.ChapterContext c = (BackconeParser.ChapterContext) e;
+        if (e instanceof BackconeParser.ChapterContext c) {
             return new Entry.Chapter(
                     places.name(c.id, c),
                     places.name(c.ofKind, c),
@@ -294,8 +263,7 @@ final class TreeBuilder {
                     body(c.body(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.MethodContext) {
-            BackconeParser.MethodContext m = (BackconeParser.MethodContext) e;
+        if (e instanceof BackconeParser.MethodContext m) {
             return new Entry.Method(
                     places.name(m.id, m),
                     places.name(m.ofKind, m),
@@ -303,14 +271,13 @@ final class TreeBuilder {
                     body(m.body(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.IncludeContext) {
-            return new Entry.Include(names(((BackconeParser.IncludeContext) e).names()), span);
+        if (e instanceof BackconeParser.IncludeContext c) {
+            return new Entry.Include(names(c.names()), span);
         }
-        if (e instanceof BackconeParser.FunctionContext) {
-            return function((BackconeParser.FunctionContext) e, span);
+        if (e instanceof BackconeParser.FunctionContext c) {
+            return function(c, span);
         }
-        if (e instanceof BackconeParser.TableContext) {
-            BackconeParser.TableContext t = (BackconeParser.TableContext) e;
+        if (e instanceof BackconeParser.TableContext t) {
             return new Entry.Table(
                     places.name(t.id, t),
                     Exprs.textOrNull(t.text()),
@@ -321,35 +288,26 @@ final class TreeBuilder {
                     rows(t.rows(), rest),
                     span);
         }
-        if (e instanceof BackconeParser.PartsContext) {
-            BackconeParser.PartsContext p = (BackconeParser.PartsContext) e;
-            return new Entry.Parts(
-                    names(p.names()), places.name(p.ofKind, p), places.nameOrNull(p.alias), span);
+        if (e instanceof BackconeParser.PartsContext p) {
+            return new Entry.Parts(names(p.names()), places.name(p.ofKind, p), places.nameOrNull(p.alias), span);
         }
-        if (e instanceof BackconeParser.PartContext) {
-            BackconeParser.PartContext p = (BackconeParser.PartContext) e;
-            return new Entry.Part(
-                    places.name(p.id, p), places.name(p.ofKind, p), Exprs.textOrNull(p.text()), span);
+        if (e instanceof BackconeParser.PartContext p) {
+            return new Entry.Part(places.name(p.id, p), places.name(p.ofKind, p), Exprs.textOrNull(p.text()), span);
         }
-        if (e instanceof BackconeParser.RoleContext) {
-            BackconeParser.RoleContext r = (BackconeParser.RoleContext) e;
+        if (e instanceof BackconeParser.RoleContext r) {
             return new Entry.Role(places.name(r.id, r), exprs.expr(r.expr(), r), span);
         }
-        if (e instanceof BackconeParser.CollectContext) {
-            BackconeParser.CollectContext c = (BackconeParser.CollectContext) e;
-            return new Entry.Collect(
-                    places.name(c.id, c), places.name(c.ofKind, c), exprs.expr(c.expr(), c), span);
+        if (e instanceof BackconeParser.CollectContext c) {
+            return new Entry.Collect(places.name(c.id, c), places.name(c.ofKind, c), exprs.expr(c.expr(), c), span);
         }
-        if (e instanceof BackconeParser.CasesContext) {
-            BackconeParser.CasesContext c = (BackconeParser.CasesContext) e;
+        if (e instanceof BackconeParser.CasesContext c) {
             List<Name> list = new ArrayList<>();
             for (Entry.Word w : words(c.words(), rest)) {
                 list.add(w.name());
             }
             return new Entry.Cases(places.name(c.id, c), List.copyOf(list), span);
         }
-        if (e instanceof BackconeParser.EachBlockContext) {
-            BackconeParser.EachBlockContext x = (BackconeParser.EachBlockContext) e;
+        if (e instanceof BackconeParser.EachBlockContext x) {
             return new Entry.Each(places.name(x.id, x), body(x.body(), rest), span);
         }
         return methodEntry(e, rest, span);
@@ -357,15 +315,14 @@ final class TreeBuilder {
 
     /** What stands in the body of a kind, chapter or method. */
     private @Nullable Entry methodEntry(ParseTree e, BackconeParser.@Nullable RestContext rest, Span span) {
-        if (e instanceof BackconeParser.EditionsContext) {
+        if (e instanceof BackconeParser.EditionsContext c) {
             List<Expr.Num> list = new ArrayList<>();
-            for (TerminalNode n : ((BackconeParser.EditionsContext) e).NUMBER()) {
+            for (TerminalNode n : c.NUMBER()) {
                 list.add(Exprs.num(n.getSymbol(), null));
             }
             return new Entry.Edition(List.copyOf(list), span);
         }
-        if (e instanceof BackconeParser.RelationContext) {
-            BackconeParser.RelationContext r = (BackconeParser.RelationContext) e;
+        if (e instanceof BackconeParser.RelationContext r) {
             return new Entry.Relation(
                     Exprs.textOrNull(r.text()),
                     r.WHEN() == null ? null : exprs.expr(r.condition, r),
@@ -373,8 +330,7 @@ final class TreeBuilder {
                     notes.of(r.note()),
                     span);
         }
-        if (e instanceof BackconeParser.CheckContext) {
-            BackconeParser.CheckContext c = (BackconeParser.CheckContext) e;
+        if (e instanceof BackconeParser.CheckContext c) {
             return new Entry.Check(
                     places.name(c.id, c),
                     Exprs.textOrNull(c.text()),
@@ -383,8 +339,7 @@ final class TreeBuilder {
                     notes.of(c.note()),
                     span);
         }
-        if (e instanceof BackconeParser.LimitContext) {
-            BackconeParser.LimitContext l = (BackconeParser.LimitContext) e;
+        if (e instanceof BackconeParser.LimitContext l) {
             List<Note> list = new ArrayList<>(notes.of(l.note()));
             String otherwise = takeOtherwise(list);
             return new Entry.Limit(
@@ -397,18 +352,15 @@ final class TreeBuilder {
                     List.copyOf(list),
                     span);
         }
-        if (e instanceof BackconeParser.AppliesContext) {
-            BackconeParser.AppliesContext a = (BackconeParser.AppliesContext) e;
+        if (e instanceof BackconeParser.AppliesContext a) {
             List<Note> list = new ArrayList<>(notes.of(a.note()));
             return new Entry.Applies(exprs.expr(a.expr(), a), takeOtherwise(list), span);
         }
-        if (e instanceof BackconeParser.ExampleContext) {
-            BackconeParser.ExampleContext x = (BackconeParser.ExampleContext) e;
+        if (e instanceof BackconeParser.ExampleContext x) {
             String title = Exprs.textOrNull(x.text());
             return new Entry.Example(title == null ? "" : title, notes.of(x.note()), body(x.body(), rest), span);
         }
-        if (e instanceof BackconeParser.GivesContext) {
-            BackconeParser.GivesContext g = (BackconeParser.GivesContext) e;
+        if (e instanceof BackconeParser.GivesContext g) {
             return new Entry.Gives(
                     exprs.path(g.path(), g),
                     exprs.value(g.value(), g),
@@ -422,8 +374,7 @@ final class TreeBuilder {
         List<Entry.Parameter> parameters = new ArrayList<>();
         if (f.parameters() != null) {
             for (BackconeParser.ParameterContext p : f.parameters().parameter()) {
-                parameters.add(new Entry.Parameter(
-                        places.name(p.id, p), places.name(p.ofKind, p), places.of(p)));
+                parameters.add(new Entry.Parameter(places.name(p.id, p), places.name(p.ofKind, p), places.of(p)));
             }
         }
         return new Entry.Function(
@@ -439,9 +390,9 @@ final class TreeBuilder {
     private static @Nullable String takeOtherwise(List<Note> list) {
         for (int i = 0; i < list.size(); i++) {
             Note n = list.get(i);
-            if (n instanceof Note.Otherwise) {
+            if (n instanceof Note.Otherwise otherwise) {
                 list.remove(i);
-                return ((Note.Otherwise) n).text();
+                return otherwise.text();
             }
         }
         return null;
@@ -462,7 +413,7 @@ final class TreeBuilder {
 
     private List<Entry.Word> words(
             BackconeParser.@Nullable WordsContext own, BackconeParser.@Nullable RestContext rest) {
-        BackconeParser.WordListContext c = own == null ? null : own.wordList();
+        BackconeParser.WordListContext c = own == null || own.WORDS_OPEN() == null ? null : own.wordList();
         if (c == null && rest != null && !rest.wordList().isEmpty()) {
             c = rest.wordList(0);
         }
@@ -482,7 +433,7 @@ final class TreeBuilder {
     }
 
     private List<Entry.Row> rows(BackconeParser.@Nullable RowsContext own, BackconeParser.@Nullable RestContext rest) {
-        BackconeParser.RowListContext c = own == null ? null : own.rowList();
+        BackconeParser.RowListContext c = own == null || own.ROWS_OPEN() == null ? null : own.rowList();
         if (c == null && rest != null && !rest.rowList().isEmpty()) {
             c = rest.rowList(0);
         }

@@ -159,17 +159,11 @@ public sealed interface Entry extends Node {
 
     record Edition(List<Expr.Num> editions, Span span) implements Entry {}
 
-    record Relation(
-            @Nullable String meaning, @Nullable Expr when, Expr equation, List<Note> notes, Span span)
+    record Relation(@Nullable String meaning, @Nullable Expr when, Expr equation, List<Note> notes, Span span)
             implements Entry {}
 
     record Check(
-            Name name,
-            @Nullable String meaning,
-            @Nullable Name kind,
-            Expr value,
-            List<Note> notes,
-            Span span)
+            Name name, @Nullable String meaning, @Nullable Name kind, Expr value, List<Note> notes, Span span)
             implements Entry {}
 
     /** {@code limit NAME ["…"] [as LEVEL] [for a, b] : condition else "…"}. Levels: error, warning, hint. */

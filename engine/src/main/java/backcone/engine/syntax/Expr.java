@@ -59,11 +59,22 @@ public sealed interface Expr extends Node {
     record Arm(@Nullable Expr when, Expr value, Span span) implements Node {}
 
     /** {@code root of left == right between low and high [else "…"]}. */
-    record Root(Expr left, Expr right, Expr low, Expr high, @Nullable String otherwise, Span span) implements Expr {}
+    record Root(
+            Expr left,
+            Expr right,
+            Expr low,
+            Expr high,
+            @Nullable String otherwise,
+            Span span) implements Expr {}
 
     /** {@code settle value from start within tolerance at most count [else "…"]}. */
-    record Settle(Expr value, Expr start, Expr tolerance, Expr most, @Nullable String otherwise, Span span)
-            implements Expr {}
+    record Settle(
+            Expr value,
+            Expr start,
+            Expr tolerance,
+            Expr most,
+            @Nullable String otherwise,
+            Span span) implements Expr {}
 
     /** {@code x in m/s}: the bare number in that unit. */
     record In(Expr operand, Name unit, Span span) implements Expr {}

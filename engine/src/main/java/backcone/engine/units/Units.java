@@ -1,113 +1,300 @@
 package backcone.engine.units;
 
+import backcone.engine.units.UnitTable.Instead;
+import backcone.engine.units.UnitTable.Named;
+import backcone.engine.units.UnitText.Piece;
+import backcone.engine.units.UnitText.Unreadable;
+import java.util.ArrayDeque;
+import java.util.ArrayList;
+import java.util.Deque;
 import java.util.HashMap;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
+import java.util.concurrent.ConcurrentHashMap;
 import org.jspecify.annotations.Nullable;
 
+/** The catalogue of units, and the reading of unit texts such as {@code N/(mm*um)}. The same for every caller. */
 public final class Units {
-    private static final Units U = new Units();
-    private final Map<String, Unit> table = new HashMap<>();
+    /** Enough for every spelling in use; texts beyond are read anew. */
+    private static final int REMEMBERED = 4096;
 
+    private static final Units STANDARD = new Units(UnitTable.load());
+
+    private final UnitTable table;
+    private final Suggestions suggestions;
+    private final Map<String, Parse> known = new ConcurrentHashMap<>();
+    private volatile @Nullable Map<Dimension, Named> named;
+
+    /** What reading a unit text gives. */
     public sealed interface Parse {
         record Ok(Unit unit) implements Parse {}
 
+        /** The message names what was found and, where there is one, the nearest unit text, which can be read. */
         record Bad(String message, @Nullable String nearest) implements Parse {}
     }
 
-    private Units() {
-        Dimension L = Dimension.base("length"), M = Dimension.base("mass"), T = Dimension.base("time"), K = Dimension.base("temperature"), A = Dimension.base("angle"), N = Dimension.NONE;
-        Dimension F = M.times(L).over(T.power(2, 1)), P = F.over(L.power(2, 1)), W = F.times(L).over(T), E = F.times(L);
-        u("1", N, 1); u("%", N, 0.01); u("cycles", N, 1);
-        u("mm", L, 1); u("um", L, 1e-3); u("cm", L, 10); u("dm", L, 100); u("m", L, 1000); u("km", L, 1e6); u("in", L, 25.4); u("uin", L, 25.4e-6); u("ft", L, 304.8);
-        u("s", T, 1); u("ms", T, 1e-3); u("min", T, 60); u("h", T, 3600); u("d", T, 86400); u("yr", T, 31557600);
-        u("rad", A, 1); u("deg", A, Math.PI / 180); u("°", A, Math.PI / 180); u("arcmin", A, Math.PI / 10800); u("rev", A, 2 * Math.PI); u("rpm", A.over(T), Math.PI / 30);
-        u("Hz", N.over(T), 1); u("N", F, 1); u("kN", F, 1000); u("kgf", F, 9.80665); u("lbf", F, 4.4482216152605);
-        u("Pa", P, 1e-6); u("kPa", P, 1e-3); u("MPa", P, 1); u("GPa", P, 1000); u("psi", P, 4.4482216152605 / 645.16); u("ksi", P, 4448.2216152605 / 645.16); u("bar", P, 0.1);
-        u("W", W, 1000); u("kW", W, 1e6); u("hp", W, 745699.87158227022); u("PS", W, 735498.75);
-        k("J", E, 1000, "Energy"); k("kWh", E, 3.6e9, "Energy"); k("Nm", E, 1000, "Torque"); k("kNm", E, 1e6, "Torque");
-        u("kg", M, 1e-3); u("g", M, 1e-6); u("t", M, 1); u("lb", M, 0.45359237e-3);
-        u("cSt", L.power(2, 1).over(T), 1); u("K", K, 1); u("mPa*s", P.times(T), 1e-9);
-        table.put("degC", new Unit("degC", K, 1, 1, 273.15, null)); table.put("degF", new Unit("degF", K, 5, 9, 273.15 - 32 * 5 / 9.0, null));
-        for (String h : List.of("HBW", "HV", "HRC", "HR15N", "ISO17485", "ISO1328", "AGMA_Q", "AGMA_A")) u(h, Dimension.base(h), 1);
-        table.put("HB", table.get("HBW"));
-    }
-
-    private void u(String t, Dimension d, double s) {
-        table.put(t, new Unit(t, d, s >= 1 ? s : s < 1 && 1 / s == Math.rint(1 / s) ? 1 : s, s < 1 && 1 / s == Math.rint(1 / s) ? Math.rint(1 / s) : 1, 0, null));
-    }
-
-    private void k(String t, Dimension d, double s, String kind) {
-        table.put(t, new Unit(t, d, s, 1, 0, kind));
+    Units(UnitTable table) {
+        this.table = table;
+        this.suggestions = new Suggestions(table);
     }
 
     public static Units standard() {
-        return U;
+        return STANDARD;
     }
 
+    // ---- reading
+
+    /** Reads a unit as it stands behind a number, without blanks. Never throws. */
     public Parse parse(String text) {
-        Unit known = table.get(text);
-        if (known != null) return new Parse.Ok(known);
+        Parse p = known.get(text);
+        if (p == null) {
+            p = read(text);
+            if (known.size() < REMEMBERED && text.length() <= UnitText.LONGEST) {
+                known.put(text, p);
+            }
+        }
+        return p;
+    }
+
+    private Parse read(String text) {
+        Instead instead = table.instead(text);
+        if (instead != null) {
+            return meant(text, instead);
+        }
         try {
-            int[] i = {0};
-            Unit v = expr(text, i);
-            if (i[0] == text.length()) return new Parse.Ok(new Unit(text, v.dimension(), v.numerator(), v.denominator(), 0, kindOf(text)));
-        } catch (RuntimeException e) {
-            // temporary
+            Unit unit = UnitText.read(text, table).unit(text, kind(text));
+            return unit == null ? tooLarge(text) : new Parse.Ok(unit);
+        } catch (Unreadable e) {
+            return bad(text, e);
         }
-        return new Parse.Bad("`" + text + "` is no unit.", null);
     }
 
-    private static @Nullable String kindOf(String t) {
-        return t.matches("(N|kN|lbf|kgf)\\*.*") ? "Torque" : null;
+    /** The kind of a word stands in the table; a force times a length, in that order, is a torque. */
+    private @Nullable String kind(String text) {
+        UnitTable.Entry e = table.entry(text);
+        if (e != null) {
+            return e.kind();
+        }
+        int star = text.indexOf('*');
+        if (star < 0) {
+            return null;
+        }
+        Scale a = table.scale(text.substring(0, star));
+        Scale b = table.scale(text.substring(star + 1));
+        Scale force = table.scale("N");
+        Scale length = table.scale("mm");
+        if (a == null || b == null || force == null || length == null) {
+            return null;
+        }
+        if (a.dimension() == force.dimension() && b.dimension() == length.dimension()) {
+            return "Torque";
+        }
+        Dimension energy = force.dimension().times(length.dimension());
+        boolean turned = a.dimension() == length.dimension();
+        return !turned && a.dimension().times(b.dimension()) == energy ? "Energy" : null;
     }
 
-    private Unit expr(String t, int[] i) {
-        Unit x = t.charAt(i[0]) == '/' ? table.get("1") : factor(t, i);
-        while (i[0] < t.length() && (t.charAt(i[0]) == '*' || t.charAt(i[0]) == '/')) {
-            boolean mul = t.charAt(i[0]++) == '*';
-            Unit y = factor(t, i);
-            x = mul ? new Unit("", x.dimension().times(y.dimension()), x.numerator() * y.numerator(), x.denominator() * y.denominator(), 0, null)
-                    : new Unit("", x.dimension().over(y.dimension()), x.numerator() * y.denominator(), x.denominator() * y.numerator(), 0, null);
+    // ---- messages
+
+    private static Parse meant(String text, Instead instead) {
+        String meant = instead.meant();
+        if (meant == null) {
+            return new Parse.Bad("There is no unit `" + text + "`: " + instead.why() + ".", null);
         }
-        return x;
+        String what = instead.why().isEmpty()
+                ? "There is no unit `" + text + "`."
+                : "`" + text + "` is " + instead.why() + ".";
+        return new Parse.Bad(what + " Did you mean `" + meant + "`?", meant);
     }
 
-    private Unit factor(String t, int[] i) {
-        Unit x;
-        if (t.charAt(i[0]) == '(') {
-            i[0]++;
-            x = expr(t, i);
-            i[0]++;
-        } else {
-            int s = i[0];
-            while (i[0] < t.length() && "*/^()".indexOf(t.charAt(i[0])) < 0) i[0]++;
-            x = table.get(t.substring(s, i[0]));
-            if (x == null) throw new IllegalArgumentException();
+    private Parse bad(String text, Unreadable e) {
+        switch (e.why) {
+            case TOO_LONG:
+                return new Parse.Bad("This is too long for a unit.", null);
+            case TOO_LARGE:
+                return tooLarge(text);
+            case TEMPERATURE_IN_PRODUCT:
+                String inKelvin = differences(text);
+                boolean reads = !inKelvin.equals(text) && parse(inKelvin) instanceof Parse.Ok;
+                return new Parse.Bad(
+                        "A degree of a temperature scale stands alone, as in `20 degC`; within `" + text
+                                + "` differences of temperature are counted in `K`."
+                                + (reads ? " Did you mean `" + inKelvin + "`?" : ""),
+                        reads ? inKelvin : null);
+            case UNKNOWN_WORD:
+                if (Character.isDigit(e.word.charAt(0))) {
+                    return new Parse.Bad(
+                            "A unit holds no number besides exponents and a leading `1/`; found `" + e.word + "`.",
+                            null);
+                }
+                Instead instead = table.insteadInAnyCase(e.word);
+                if (instead != null && instead.meant() == null) {
+                    return meant(e.word, instead);
+                }
+                String near = suggestions.nearest(text);
+                return near != null
+                        ? new Parse.Bad("There is no unit `" + e.word + "`. Did you mean `" + near + "`?", near)
+                        : new Parse.Bad(
+                                "There is no unit `" + e.word + "`. `backcone handbook units` lists them.", null);
+            case FORM:
+                if (text.isBlank()) {
+                    return new Parse.Bad("A unit is missing here.", null);
+                }
+                String written = suggestions.nearest(text);
+                return new Parse.Bad(
+                        "`" + text + "` is no unit; write units like `N/mm^2` or `kg/(m*s)`, without blanks."
+                                + (written == null ? "" : " Did you mean `" + written + "`?"),
+                        written);
         }
-        if (i[0] < t.length() && t.charAt(i[0]) == '^') {
-            int s = ++i[0];
-            while (i[0] < t.length() && (Character.isDigit(t.charAt(i[0])) || t.charAt(i[0]) == '-')) i[0]++;
-            int n = Integer.parseInt(t.substring(s, i[0]));
-            x = new Unit("", x.dimension().power(n, 1), Math.pow(x.numerator(), n), Math.pow(x.denominator(), n), 0, null);
-        }
-        return x;
+        throw new AssertionError(e.why);
     }
 
+    private static Parse tooLarge(String text) {
+        return new Parse.Bad("`" + text + "` has an exponent too large for a unit.", null);
+    }
+
+    /** The text with Celsius in products replaced by kelvin. Degrees Fahrenheit differ from kelvin also in size. */
+    private static String differences(String text) {
+        StringBuilder b = new StringBuilder();
+        for (Piece p : UnitText.pieces(text)) {
+            b.append(p.isWord() && (p.text().equals("degC") || p.text().equals("°C")) ? "K" : p.text());
+        }
+        return b.toString();
+    }
+
+    // ---- words
+
+    /**
+     * What a unit means, for hover: {@code pound-force}, {@code newton per square millimetre, stress}. Empty when
+     * unknown.
+     */
     public String describe(String text) {
-        return "";
+        UnitTable.Entry word = table.entry(text);
+        if (word != null) {
+            return word.meaning();
+        }
+        if (!(parse(text) instanceof Parse.Ok ok)) {
+            return "";
+        }
+        String kind = ok.unit().kind();
+        if (kind != null) {
+            return spoken(text) + (kind.equals("Torque") ? ", torque" : ", energy");
+        }
+        for (Named n : table.dimensions()) {
+            if (n.spellings().contains(text)) {
+                return spoken(text) + ", " + n.name();
+            }
+        }
+        Named dimension = named().get(ok.unit().dimension());
+        return spoken(text) + (dimension == null ? "" : ", " + dimension.name());
     }
 
+    private String spoken(String text) {
+        StringBuilder over = new StringBuilder();
+        StringBuilder under = new StringBuilder();
+        List<Piece> pieces = UnitText.pieces(text);
+        Deque<Boolean> outer = new ArrayDeque<>();
+        boolean group = false;
+        boolean divided = false;
+        for (int i = 0; i < pieces.size(); i++) {
+            Piece p = pieces.get(i);
+            switch (p.text()) {
+                case "*" -> divided = false;
+                case "/" -> divided = true;
+                case "(" -> {
+                    outer.push(group);
+                    group ^= divided;
+                    divided = false;
+                }
+                case ")" -> group = outer.pop();
+                default -> {
+                    if (p.isWord()) {
+                        String exponent = i + 2 < pieces.size()
+                                        && pieces.get(i + 1).text().equals("^")
+                                ? pieces.get(i + 2).text()
+                                : "1";
+                        boolean negative = exponent.charAt(0) == '-';
+                        StringBuilder b = group ^ divided ^ negative ? under : over;
+                        raised(b, p.text(), negative ? exponent.substring(1) : exponent);
+                    }
+                }
+            }
+        }
+        String per = under.length() == 0 ? "" : "per " + under;
+        return over.length() == 0 ? per : per.isEmpty() ? over.toString() : over + " " + per;
+    }
+
+    private void raised(StringBuilder b, String word, String exponent) {
+        UnitTable.Entry e = table.entry(word);
+        if (e == null || word.equals("1")) {
+            return;
+        }
+        int comma = e.meaning().indexOf(',');
+        String meaning = comma < 0 ? e.meaning() : e.meaning().substring(0, comma);
+        b.append(b.length() == 0 ? "" : " ");
+        switch (exponent) {
+            case "1" -> b.append(meaning);
+            case "2" -> b.append("square ").append(meaning);
+            case "3" -> b.append("cubic ").append(meaning);
+            default -> b.append(meaning).append(" to the power ").append(exponent);
+        }
+    }
+
+    /** Spellings of a dimension that a user may be offered, commonest first. */
     public List<String> unitsOf(Dimension d) {
-        return List.of();
+        Set<String> out = new LinkedHashSet<>();
+        for (Named n : table.dimensions()) {
+            if (parse(n.spellings().get(0)) instanceof Parse.Ok ok && ok.unit().dimension() == d) {
+                out.addAll(n.spellings());
+            }
+        }
+        for (String w : table.words()) {
+            Scale s = table.scale(w);
+            if (s != null && s.dimension() == d && table.instead(w) == null) {
+                out.add(w);
+            }
+        }
+        return List.copyOf(out);
     }
 
+    /** The same for one quantity kind: without the spellings that say they belong to another one. */
+    public List<String> unitsOf(Dimension d, String kind) {
+        List<String> out = new ArrayList<>();
+        for (String u : unitsOf(d)) {
+            if (parse(u) instanceof Parse.Ok ok) {
+                String k = ok.unit().kind();
+                if (k == null || k.equals(kind)) {
+                    out.add(u);
+                }
+            }
+        }
+        return out;
+    }
+
+    /** An everyday name of a dimension, or its base form. */
     public String nameOf(Dimension d) {
-        return d.toString();
+        Named n = named().get(d);
+        return n == null ? "quantity of dimension " + d : n.name();
     }
 
+    private Map<Dimension, Named> named() {
+        Map<Dimension, Named> m = named;
+        if (m == null) {
+            m = new HashMap<>();
+            for (Named n : table.dimensions()) {
+                if (parse(n.spellings().get(0)) instanceof Parse.Ok ok) {
+                    m.putIfAbsent(ok.unit().dimension(), n);
+                }
+            }
+            named = m;
+        }
+        return m;
+    }
+
+    /** Every word that may stand in a unit text, commonest first within a dimension. */
     public Set<String> words() {
-        return table.keySet();
+        return table.words();
     }
 }

@@ -12,6 +12,8 @@ tokens {
     UNIT,
     // what an entry is: markers without text at its start
     FACT, FACT_FOR, REQUIREMENT, BLOCK, DECLARATION, STRAY, ROW, ARM, WORD,
+    // a value that is a reference to a shared block: a marker too
+    REFERENCE,
     // words that start an entry
     DRIVE, USE, LET, RATE, REQUIRE, ASSERT, OVERRIDE, ACCEPT, WAIVE, VARIANT, FAMILY,
     QUANTITY, SOURCE, CHOICE, KIND, CHAPTER, METHOD, INCLUDE, FUNCTION, TABLE, PARTS, PART, ROLE, COLLECT, CASES,

@@ -21,11 +21,12 @@ entries : (entry | end)* ;
 end : NL | SEMI ;
 
 entry
+    locals [Object tree]
     : (fact | factFor | requirement | block | declaration | stray
       | drive | use | let | rate | require | assertion | override | accept | waive | variant | family
       | quantity | source | choice | kind | chapter | method | include | function | table | parts | part | role
       | collect | cases | eachBlock | editions | relation | check | limit | applies | example | gives)
-      {loseRest();} rest?
+      {loseRest();} rest? {built($ctx);}
     ;
 
 /** What an entry could not use, up to its end. Bodies in it still hold entries. */
@@ -132,32 +133,31 @@ rowWord : NAME NAME? ;
 
 // ---- values and expressions
 
-value
-    : head=NAME id=NAME                                                  # refValue
-    | expr (DOTDOT high=sum | TOL from=sum DOTDOT to=sum | ON DATE)?          # exprValue
-    ;
+value : REFERENCE head=NAME id=NAME | expr (DOTDOT high=sum | TOL from=sum DOTDOT to=sum | ON DATE)? ;
+
+/*
+ * Two flat levels instead of one rule for each rank of operators: the tree is built with the usual ranks afterwards,
+ * and a plain number costs four rules instead of ten.
+ */
 expr
-    : conj (OR conj)*                                                                # orExpr
-    | ROOT OF left=sum EQ right=sum BETWEEN low=sum AND high=sum (ELSE text)?        # rootExpr
-    | SETTLE what=sum FROM begin=sum WITHIN tolerance=sum AT MOST most=sum (ELSE text)?    # settleExpr
+    : NOT* compare ((AND | OR) NOT* compare)*
+    | ROOT OF left=sum EQ right=sum BETWEEN low=sum AND high=sum (ELSE text)?
+    | SETTLE what=sum FROM begin=sum WITHIN tolerance=sum AT MOST most=sum (ELSE text)?
     ;
-conj : neg (AND neg)* ;
-neg : NOT* compare ;
-compare : sum (cmpSign sum)* ;
+compare : sum ((EQ | NE | LE | GE | LT | GT) sum)* ;
 cmpSign : EQ | NE | LE | GE | LT | GT ;
-sum : term ((PLUS | MINUS) term)* ;
-term : unary ((STAR | SLASH) unary)* ;
-unary : (MINUS | PLUS)* power ;
-power : post (CARET (MINUS | PLUS)* post)* ;
-post : primary (IN UNIT)* ;
-primary
-    : NUMBER UNIT?                                               # numberExpr
-    | text                                                       # textExpr
-    | DATE                                                       # dateExpr
-    | LPAREN expr RPAREN                                         # parenExpr
-    | path (LPAREN (arg (COMMA arg)*)? RPAREN (DOT NAME)*)?      # pathExpr
-    | GIVEN path                                                 # givenExpr
-    | CHOOSE sum? arms                                           # chooseExpr
+sum : (MINUS | PLUS)* operand ((PLUS | MINUS | STAR | SLASH | CARET) (MINUS | PLUS)* operand)* ;
+operand
+    : ( NUMBER UNIT?
+      | text
+      | DATE
+      | LPAREN expr RPAREN
+      | path call?
+      | GIVEN path
+      | CHOOSE sum? arms
+      )
+      (IN UNIT)*
     ;
+call : LPAREN (arg (COMMA arg)*)? RPAREN (DOT NAME)* ;
 arg : EACH NAME (COLON expr)? | expr ;
 path : NAME (DOT NAME)* ;
