@@ -42,7 +42,8 @@ public final class Main {
                 new ExplainCommand(),
                 new FormatCommand(),
                 new HandbookCommand(),
-                new StartCommand());
+                new StartCommand(),
+                new LedgerCommand());
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */

@@ -27,6 +27,8 @@ final class ReviewWords {
     final List<Named> allowables = new ArrayList<>();
     private final Map<String, Way> bars = new HashMap<>();
 
+    private final Map<String, String> us = new HashMap<>();
+
     private ReviewWords() {}
 
     static ReviewWords standard() {
@@ -36,6 +38,11 @@ final class ReviewWords {
     @Nullable
     Way bar(String name) {
         return bars.get(name);
+    }
+
+    /** The US customary unit for a shown one; the same where there is no other. */
+    String us(String unit) {
+        return us.getOrDefault(unit, unit);
     }
 
     private static ReviewWords read() {
@@ -55,6 +62,7 @@ final class ReviewWords {
                 case "fact" -> w.facts.add(new Named(word[1], word[2]));
                 case "allowable" -> w.allowables.add(new Named(word[1], word[2]));
                 case "bar" -> w.bars.put(word[1], Way.valueOf(word[2].toUpperCase(java.util.Locale.ROOT)));
+                case "us" -> w.us.put(word[1], word[2]);
                 default -> throw new IllegalStateException("review.txt: " + l);
             }
         });

@@ -5,12 +5,14 @@ import backcone.engine.eval.Run;
 import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.Element;
 import backcone.engine.graph.Slot;
+import backcone.engine.graph.Val;
 import backcone.engine.model.Decl;
 import backcone.engine.model.TableDef;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.Note;
 import backcone.engine.text.FileId;
 import backcone.engine.units.Unit;
+import backcone.engine.units.Units;
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
@@ -93,6 +95,9 @@ public final class Reviewer {
             return;
         }
         Unit u = run.graph.shownUnit(s);
+        if (u != null && isUs(run.graph)) {
+            u = Units.standard().parse(ReviewWords.standard().us(u.text())) instanceof Units.Parse.Ok ok ? ok.unit() : u;
+        }
         out.putIfAbsent(
                 path,
                 new ReviewFact(
@@ -100,6 +105,11 @@ public final class Reviewer {
                         s.decl.meaning == null ? s.decl.name : s.decl.meaning,
                         u == null ? v : u.fromBase(v),
                         u == null || u.text().equals("1") ? "" : u.text()));
+    }
+
+    private static boolean isUs(DriveGraph g) {
+        Slot s = g.find("units");
+        return s != null && s.value() instanceof Val.Word w && w.text().equals("us_customary");
     }
 
     private static String rating(DriveGraph.RateUse r) {

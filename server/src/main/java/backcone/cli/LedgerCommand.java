@@ -1,0 +1,130 @@
+package backcone.cli;
+
+import backcone.engine.Analysis;
+import java.io.IOException;
+import java.io.PrintWriter;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.nio.file.StandardCopyOption;
+import java.time.LocalDate;
+import java.util.List;
+import org.jspecify.annotations.Nullable;
+
+/** {@code backcone ledger}: writes or checks {@code NAME.margins} beside each spec. */
+final class LedgerCommand implements Command {
+    private static final Usage USAGE = new Usage(
+            "ledger",
+            "Writes NAME.margins beside each spec: every margin as text, to be committed with the spec.",
+            List.of(new Usage.Operand(
+                    "PATH",
+                    "specs, or folders with every .drive below them; this folder if none is named",
+                    false,
+                    true)),
+            List.of(
+                    Usage.Option.flag("--check", "write nothing; say which ledgers are stale or missing (exit status 1)"),
+                    Usage.Option.flag("--print", "print the ledgers instead of writing them")),
+            List.of(
+                    "A ledger holds no date: an accepted shortfall stands in it as short, accepted until its day. Numbers are"
+                            + " rounded, so that it changes only when something moved.",
+                    "Exit status: 0 all ledgers are as they should be; 1 with --check, some is stale or missing; 2 a text is"
+                            + " wrong, and its ledger is left alone; 64 wrong usage."),
+            List.of(
+                    "backcone ledger                    write the ledgers below this folder",
+                    "backcone ledger --check            in CI: fail when one is stale",
+                    "backcone ledger --print a.drive    look at one"));
+
+    /** No acceptance has ended on this day. */
+    static final LocalDate NO_DATE = LocalDate.of(1, 1, 1);
+
+    @Override
+    public Usage usage() {
+        return USAGE;
+    }
+
+    @Override
+    public int run(Arguments arguments, PrintWriter out, PrintWriter err) throws IOException, InterruptedException {
+        FileSet set = FileSet.of(arguments.operands(), false);
+        for (String u : set.unreachable()) {
+            err.println("backcone: " + u + ".");
+        }
+        if (set.files().isEmpty()) {
+            return Status.WRONG_TEXT;
+        }
+        boolean check = arguments.has("--check");
+        boolean print = arguments.has("--print");
+        int[] count = new int[4]; // as they should be, written, stale, missing
+        int status = set.unreachable().isEmpty() ? Status.FINE : Status.WRONG_TEXT;
+        EngineFactory engine = new EngineFactory(FileSet.root(set.files()), NO_DATE);
+        for (Path file : set.files()) {
+            String text = text(engine, file, err);
+            engine.forget(file);
+            if (text == null) {
+                status = Status.WRONG_TEXT;
+                continue;
+            }
+            if (text.isEmpty()) {
+                continue; // a library: no drive in it
+            }
+            if (print) {
+                out.print(text);
+                continue;
+            }
+            Path ledger = ledger(file);
+            String now = Files.isRegularFile(ledger) ? Files.readString(ledger, StandardCharsets.UTF_8) : null;
+            if (text.equals(now == null ? null : now.replace("\r\n", "\n"))) {
+                count[0]++;
+            } else if (check) {
+                count[now == null ? 3 : 2]++;
+                out.println(FileSet.shown(ledger) + (now == null ? " is missing" : " is stale"));
+            } else {
+                write(ledger, text);
+                count[1]++;
+                out.println(FileSet.shown(ledger) + (now == null ? " is new" : " is renewed"));
+            }
+        }
+        if (!print) {
+            out.println(
+                    check
+                            ? count[0] + " as they should be, " + count[2] + " stale, " + count[3] + " missing"
+                                    + (count[2] + count[3] > 0 ? "; `backcone ledger` renews them" : "")
+                            : count[1] + " written, " + count[0] + " as they should be");
+        }
+        return Math.max(status, check && count[2] + count[3] > 0 ? Status.NOT_MET : Status.FINE);
+    }
+
+    /** The ledger's text; empty for a library, null where the spec is wrong and the reason is said. */
+    static @Nullable String text(EngineFactory engine, Path file, PrintWriter err) {
+        Checked c = Checked.of(engine, file);
+        Analysis a = c.analysis();
+        if (a == null || c.status() >= Status.WRONG_TEXT) {
+            err.println("backcone: `" + c.shown() + "` has errors, so its ledger is left as it is; `backcone check "
+                    + c.shown() + "` tells them.");
+            return null;
+        }
+        return a.drives().isEmpty()
+                ? ""
+                : Ledger.of(String.valueOf(file.getFileName()), engine.review(file));
+    }
+
+    static Path ledger(Path spec) {
+        String name = String.valueOf(spec.getFileName());
+        return spec.resolveSibling(name.substring(0, name.length() - ".drive".length()) + ".margins");
+    }
+
+    /** Whole or not at all. */
+    private static void write(Path ledger, String text) throws IOException {
+        Path folder = ledger.toAbsolutePath().getParent();
+        Path part = Files.createTempFile(folder, ".margins", ".part");
+        try {
+            Files.writeString(part, text, StandardCharsets.UTF_8);
+            try {
+                Files.move(part, ledger, StandardCopyOption.REPLACE_EXISTING, StandardCopyOption.ATOMIC_MOVE);
+            } catch (java.nio.file.AtomicMoveNotSupportedException e) {
+                Files.move(part, ledger, StandardCopyOption.REPLACE_EXISTING);
+            }
+        } finally {
+            Files.deleteIfExists(part);
+        }
+    }
+}
