@@ -43,7 +43,8 @@ public final class Main {
                 new FormatCommand(),
                 new HandbookCommand(),
                 new StartCommand(),
-                new LedgerCommand());
+                new LedgerCommand(),
+                new CompareCommand());
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */

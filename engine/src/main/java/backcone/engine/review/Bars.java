@@ -150,10 +150,10 @@ public final class Bars {
         return rated ? "Rated facts of `" + drive + "` changed, and `approved` is still " + approved + "." : null;
     }
 
-    /** Whether these edits move what is asked for and nothing of the design. */
+    /** Whether these edits move what is asked for, or what is written on paper, and nothing of the design. */
     public static boolean movesBarOnly(List<Integer> ids, List<Edit> edits) {
         for (int i : ids) {
-            if (edits.get(i).kind() != Edit.Kind.REQUIREMENT) {
+            if (edits.get(i).kind() != Edit.Kind.REQUIREMENT && byName(edits.get(i)) == null) {
                 return false;
             }
         }
