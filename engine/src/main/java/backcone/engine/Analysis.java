@@ -7,6 +7,7 @@ import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import java.util.List;
 import java.util.Optional;
+import java.util.Set;
 
 /** Everything the engine knows about one text and the texts it uses. Immutable. */
 public interface Analysis {
@@ -15,6 +16,9 @@ public interface Analysis {
     String text();
 
     FileSyntax syntax();
+
+    /** The files that this one rests on, directly or through others. */
+    Set<FileId> uses();
 
     /** Findings in this file, by place. */
     List<Diagnostic> diagnostics();

@@ -430,6 +430,13 @@ final class FileAnalysis implements Analysis {
     }
 
     @Override
+    public Set<FileId> uses() {
+        Set<FileId> out = new LinkedHashSet<>(texts().keySet());
+        out.remove(main.file());
+        return out;
+    }
+
+    @Override
     public List<Diagnostic> diagnostics() {
         return diagnostics;
     }

@@ -27,7 +27,15 @@ final class CheckCommand implements Command {
                     false,
                     true)),
             List.of(
-                    Usage.Option.oneOf("--format", "FORMAT", "text or json; text unless said", "text", "json"),
+                    Usage.Option.oneOf(
+                            "--format",
+                            "FORMAT",
+                            "text, json, markdown, sarif (2.1.0) or junit; text unless said",
+                            "text",
+                            "json",
+                            "markdown",
+                            "sarif",
+                            "junit"),
                     Usage.Option.value(
                             "--on",
                             "DATE",
@@ -60,7 +68,8 @@ final class CheckCommand implements Command {
     public int run(Arguments arguments, PrintWriter out, PrintWriter err)
             throws WrongUsage, IOException, InterruptedException {
         LocalDate day = day(arguments.value("--on"));
-        boolean json = arguments.value("--format", "text").equals("json");
+        String format = arguments.value("--format", "text");
+        boolean json = !format.equals("text"); // for other programs: always a whole document
         FileSet set = FileSet.of(arguments.operands(), false);
         for (String u : set.unreachable()) {
             err.println("backcone: " + u + ".");
@@ -73,18 +82,22 @@ final class CheckCommand implements Command {
             }
             return Status.WRONG_TEXT;
         }
-        Report report = json
-                ? new JsonReport(out)
-                : new TextReport(
-                        out,
-                        Terminal.colour(),
-                        arguments.has("--quiet"),
-                        set.files().size() == 1);
+        Report report = report(format, arguments.has("--quiet"), set.files().size() == 1, out);
         if (!set.files().isEmpty()) {
             status = Math.max(status, check(set.files(), day, report, !json && Terminal.out(), err));
         }
         report.end(set.unreachable());
         return set.files().isEmpty() ? Status.WRONG_TEXT : status;
+    }
+
+    private static Report report(String format, boolean quiet, boolean alone, PrintWriter out) throws IOException {
+        return switch (format) {
+            case "json" -> new JsonReport(out);
+            case "markdown" -> new MarkdownReport(out);
+            case "sarif" -> new SarifReport(out);
+            case "junit" -> new JunitReport(out);
+            default -> new TextReport(out, Terminal.colour(), quiet, alone);
+        };
     }
 
     private static LocalDate day(@Nullable String text) throws WrongUsage {

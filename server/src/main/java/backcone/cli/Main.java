@@ -44,7 +44,9 @@ public final class Main {
                 new HandbookCommand(),
                 new StartCommand(),
                 new LedgerCommand(),
-                new CompareCommand());
+                new CompareCommand(),
+                new HistoryCommand(),
+                new RegisterCommand());
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */

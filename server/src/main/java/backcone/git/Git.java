@@ -131,6 +131,51 @@ public final class Git {
         return out;
     }
 
+    /**
+     * Commits that touched the file of {@code own} or one of the {@code also} paths, newest first; each with the name that the
+     * file had then.
+     */
+    public List<Commit> order(List<Commit> own, java.util.Set<String> also, int most)
+            throws GitException, IOException, InterruptedException {
+        List<String> arguments = new ArrayList<>(List.of(
+                "log",
+                "--no-ext-diff",
+                "--no-textconv",
+                "-z",
+                "--format=%x01%H%x02%ad%x02%an%x02%s",
+                "--date=short",
+                "--topo-order",
+                "-n",
+                Integer.toString(most),
+                "--"));
+        java.util.Set<String> paths = new java.util.LinkedHashSet<>(also);
+        own.forEach(c -> paths.add(c.path()));
+        arguments.addAll(paths);
+        Answer a = run(root, arguments);
+        if (a.status != 0) {
+            throw new GitException("git can't tell the history: " + first(a.error));
+        }
+        Map<String, Commit> mine = new LinkedHashMap<>();
+        own.forEach(c -> mine.put(c.id(), c));
+        List<Commit> out = new ArrayList<>();
+        String path = own.get(0).path();
+        for (String c : a.text().split("\u0001", -1)) {
+            String[] part = c.split("\u0002", -1);
+            if (part.length == 4) {
+                Commit known = mine.get(part[0]);
+                path = known == null ? path : known.path();
+                out.add(new Commit(part[0], part[1], part[2], part[3].replace("\0", "").strip(), path));
+            }
+        }
+        // what lies before the first commit of the file itself tells nothing about it
+        String eldest = own.get(own.size() - 1).id();
+        while (!out.isEmpty() && !out.get(out.size() - 1).id().equals(eldest) && mine.containsKey(eldest)
+                && out.stream().anyMatch(x -> x.id().equals(eldest))) {
+            out.remove(out.size() - 1);
+        }
+        return out;
+    }
+
     /** Reads texts of objects, one process for all of them. */
     public Reader reader() throws IOException {
         return new Reader(start(root, List.of("cat-file", "--batch")));
