@@ -4,6 +4,7 @@ import backcone.engine.answers.DriveAnswer;
 import backcone.engine.eval.Run;
 import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.Element;
+import backcone.engine.graph.RequirementUse;
 import backcone.engine.graph.Slot;
 import backcone.engine.graph.Val;
 import backcone.engine.model.Decl;
@@ -17,9 +18,11 @@ import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.security.NoSuchAlgorithmException;
 import java.util.ArrayList;
+import java.util.HashSet;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import java.util.TreeSet;
 import java.util.function.Function;
 import org.jspecify.annotations.Nullable;
@@ -122,7 +125,19 @@ public final class Reviewer {
     // ---- equations in use
 
     private static void used(DriveGraph g, Function<FileId, @Nullable String> texts, TreeSet<String> out) {
-        for (Decl d : g.usedDecls()) {
+        Set<Decl> decls = new HashSet<>();
+        for (int r = 0; r < g.tape().size(); r++) {
+            Slot s = g.ownerOf(r);
+            if (s != null && s.factSpan() == null) {
+                decls.add(s.decl);
+            }
+        }
+        for (RequirementUse u : g.requirements()) {
+            if (u.slot != null) {
+                decls.add(u.slot.decl);
+            }
+        }
+        for (Decl d : decls) {
             String text = texts.apply(d.file);
             if (text == null || d.value == null) {
                 continue;
