@@ -30,7 +30,8 @@ class LayersTest {
             Map.entry("eval", List.of("graph", "numeric")),
             Map.entry(
                     "answers", List.of("text", "syntax", "units", "numeric", "diagnostics", "model", "graph", "eval")),
-            Map.entry("explain", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")));
+            Map.entry("explain", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
+            Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")));
 
     @Test
     void enginePackagesSeeOnlyWhatIsListed() {

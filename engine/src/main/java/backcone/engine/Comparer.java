@@ -77,7 +77,8 @@ final class Comparer {
 
     /** What one mixture gives for a drive; {@code fault} is null where it has a meaning. */
     private record Outcome(
-            Map<String, RequirementAnswer> requirements, @Nullable String fault) {}
+            Map<String, RequirementAnswer> requirements,
+            @Nullable String fault) {}
 
     private Comparer(
             BackconeEngine before,
@@ -122,8 +123,7 @@ final class Comparer {
                 drives.add(alone(d, Fate.ADDED));
             } else {
                 followed.add(former);
-                drives.add(change(
-                        o, d, former, req(oldFacts, former), req(newFacts, d.name())));
+                drives.add(change(o, d, former, req(oldFacts, former), req(newFacts, d.name())));
             }
         }
         for (DriveAnswer o : old.values()) {
@@ -216,9 +216,11 @@ final class Comparer {
             formerNames.putAll(d.formerNames());
         }
         for (Edit e : edits) {
-            if (e.from() != null && e.to() != null && (e.kind() == Edit.Kind.VALUE
-                    || e.kind() == Edit.Kind.UNIT
-                    || e.kind() == Edit.Kind.REQUIREMENT)) {
+            if (e.from() != null
+                    && e.to() != null
+                    && (e.kind() == Edit.Kind.VALUE
+                            || e.kind() == Edit.Kind.UNIT
+                            || e.kind() == Edit.Kind.REQUIREMENT)) {
                 numeric.set(e.id());
                 literals.put(e.to(), e);
             }
@@ -255,7 +257,9 @@ final class Comparer {
         while (more) {
             more = false;
             for (Edit e : loose) {
-                String root = e.path().indexOf('.') < 0 ? e.path() : e.path().substring(0, e.path().indexOf('.'));
+                String root = e.path().indexOf('.') < 0
+                        ? e.path()
+                        : e.path().substring(0, e.path().indexOf('.'));
                 if (!taken.contains(e)
                         && (e.file().isMethodFile() || e.path().startsWith("use ") || words.contains(root))) {
                     taken.add(e);
@@ -409,7 +413,8 @@ final class Comparer {
             }
         }
         // numbers first: neighbouring mixtures then share their graphs
-        counting.sort(java.util.Comparator.comparing((Edit e) -> !numeric.get(e.id())).thenComparing(Edit::id));
+        counting.sort(
+                java.util.Comparator.comparing((Edit e) -> !numeric.get(e.id())).thenComparing(Edit::id));
         for (Edit e : counting) {
             BitSet b = new BitSet();
             b.set(e.id());
@@ -452,7 +457,16 @@ final class Comparer {
             }
             list.sort(java.util.Comparator.comparingDouble((Comparison.Share s) -> -Math.abs(s.share())));
             out.add(new Comparison.Move(
-                    id, b.meaning(), a.margin(), b.margin(), a.value(), b.value(), b.unit(), a.state(), b.state(), list));
+                    id,
+                    b.meaning(),
+                    a.margin(),
+                    b.margin(),
+                    a.value(),
+                    b.value(),
+                    b.unit(),
+                    a.state(),
+                    b.state(),
+                    list));
         }
         return out;
     }
@@ -507,8 +521,7 @@ final class Comparer {
                 return new Outcome(Map.of(), "nothing is required of `" + id + "`");
             }
             if (Double.isNaN(r.margin())) {
-                return new Outcome(
-                        Map.of(), "`" + id + "` is open" + (r.fault() == null ? "" : ": " + r.fault()));
+                return new Outcome(Map.of(), "`" + id + "` is open" + (r.fault() == null ? "" : ": " + r.fault()));
             }
             if (r.state() == State.OUTSIDE
                     && java.util.Objects.requireNonNull(w.get(id)).state() != State.OUTSIDE
@@ -556,8 +569,8 @@ final class Comparer {
 
     private Base build(BitSet made) {
         Map<FileId, SourceText> mixed = new HashMap<>();
-        diffs.forEach((f, d) ->
-                mixed.put(f, new SourceText(f, java.util.Objects.requireNonNull(combined.get(f)), d.mixed(made), List.of())));
+        diffs.forEach((f, d) -> mixed.put(
+                f, new SourceText(f, java.util.Objects.requireNonNull(combined.get(f)), d.mixed(made), List.of())));
         SourceText main = java.util.Objects.requireNonNull(mixed.get(file));
         Sources sources = new Sources(main, f -> {
             SourceText t = mixed.get(f);

@@ -179,8 +179,11 @@ final class FileAnalysis implements Analysis {
             return out;
         }
         for (DriveSource.Layer l : s.layers()) {
-            for (Entry e : java.util.Objects.requireNonNull(texts().get(l.file())).tree().entries()) {
-                List<Entry> body = e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
+            for (Entry e : java.util.Objects.requireNonNull(texts().get(l.file()))
+                    .tree()
+                    .entries()) {
+                List<Entry> body =
+                        e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
                 Name n = Sources.nameOf(e);
                 if (body == l.body() && n != null) {
                     out.add(n.text());

@@ -20,8 +20,7 @@ import org.junit.jupiter.api.Test;
 /** Two states of small drives; margins follow a rule of thumb that can be worked out by hand. */
 class CompareTest {
     /** Teeth times face width over power: 20 * 20 mm over 2000 mm is 0.2. */
-    private static final String HOUSE =
-            """
+    private static final String HOUSE = """
             source own "own"
             method house for cylindrical "a rule of thumb" {
               edition 2020
@@ -29,8 +28,7 @@ class CompareTest {
             }
             """;
 
-    private static final String DRIVE =
-            """
+    private static final String DRIVE = """
             use "house.method"
             drive d "A" {
               case rated { at = a; power = 2 kW }
@@ -57,7 +55,8 @@ class CompareTest {
     }
 
     private static Comparison compare(String before, String after) {
-        return compare(Map.of("d.drive", before, "house.method", HOUSE), Map.of("d.drive", after, "house.method", HOUSE));
+        return compare(
+                Map.of("d.drive", before, "house.method", HOUSE), Map.of("d.drive", after, "house.method", HOUSE));
     }
 
     private static Comparison compare(Map<String, String> before, Map<String, String> after) {
@@ -83,7 +82,11 @@ class CompareTest {
     private static Map<String, Double> shares(Comparison c, Move m) {
         Map<String, Double> out = new LinkedHashMap<>();
         for (Share s : m.shares()) {
-            out.put(String.join("+", s.edits().stream().map(i -> c.edits().get(i).path()).toList()), s.share());
+            out.put(
+                    String.join(
+                            "+",
+                            s.edits().stream().map(i -> c.edits().get(i).path()).toList()),
+                    s.share());
         }
         return out;
     }
@@ -137,8 +140,12 @@ class CompareTest {
     @Test
     void aRecordMovesNothing() {
         Comparison c = compare(
-                DRIVE.replace("drive d \"A\" {", "drive d \"A\" {\n  revision = \"A\"\n  approved = \"B. Ost\" on 2026-01-05"),
-                DRIVE.replace("drive d \"A\" {", "drive d \"A\" {\n  revision = \"B\"\n  approved = \"B. Ost\" on 2026-01-05"));
+                DRIVE.replace(
+                        "drive d \"A\" {",
+                        "drive d \"A\" {\n  revision = \"A\"\n  approved = \"B. Ost\" on 2026-01-05"),
+                DRIVE.replace(
+                        "drive d \"A\" {",
+                        "drive d \"A\" {\n  revision = \"B\"\n  approved = \"B. Ost\" on 2026-01-05"));
         assertThat(c.edits()).extracting(Edit::kind).containsExactly(Edit.Kind.RECORD);
         assertThat(only(c).moved()).isEmpty();
         assertThat(only(c).remarks()).isEmpty();
@@ -177,7 +184,8 @@ class CompareTest {
 
     @Test
     void aRenamedDriveIsFollowed() {
-        DriveChange d = only(compare(DRIVE, DRIVE.replace("drive d ", "drive e ").replace("20 mm", "30 mm")));
+        DriveChange d =
+                only(compare(DRIVE, DRIVE.replace("drive d ", "drive e ").replace("20 mm", "30 mm")));
         assertThat(d.formerName()).isEqualTo("d");
         assertThat(d.moved()).hasSize(1);
     }
@@ -196,7 +204,8 @@ class CompareTest {
                 Map.of("d.drive", DRIVE, "house.method", HOUSE.replace("pinion.z * b", "2 * pinion.z * b")));
         Move m = move(only(c), "c.house.grip");
         assertThat(m.after()).isCloseTo(3, within(1e-9));
-        assertThat(c.edits().get(m.shares().get(0).edits().get(0)).file().path()).isEqualTo("house.method");
+        assertThat(c.edits().get(m.shares().get(0).edits().get(0)).file().path())
+                .isEqualTo("house.method");
     }
 
     @Test
@@ -232,11 +241,10 @@ class CompareTest {
     @Test
     void whatBecameShortIsAStateChange() {
         DriveChange d = only(compare(DRIVE, DRIVE.replace("2 kW", "8 kW")));
-        assertThat(d.states())
-                .anySatisfy(s -> {
-                    assertThat(s.before()).isEqualTo(State.CLEAR);
-                    assertThat(s.after()).isEqualTo(State.SHORT);
-                });
+        assertThat(d.states()).anySatisfy(s -> {
+            assertThat(s.before()).isEqualTo(State.CLEAR);
+            assertThat(s.after()).isEqualTo(State.SHORT);
+        });
         assertThat(d.facts()).extracting(f -> f.path()).contains("a.torque");
     }
 
@@ -261,7 +269,9 @@ class CompareTest {
     @Test
     void ledgersDoNotKnowTheDate() {
         String accepted = DRIVE.replace("grip >= 0.1", "grip >= 1")
-                .replace("require z", "accept c.house.grip >= 0.1 until 2027-06-30 by \"B. Ost\" because \"trial\"\n  require z");
+                .replace(
+                        "require z",
+                        "accept c.house.grip >= 0.1 until 2027-06-30 by \"B. Ost\" because \"trial\"\n  require z");
         var drives = engine(Map.of("d.drive", accepted, "house.method", HOUSE)).review(new FileId("d.drive"));
         assertThat(drives).hasSize(1);
         assertThat(drives.get(0).facts()).extracting(f -> f.path()).contains("c.ratio", "a.torque");

@@ -32,7 +32,12 @@ final class CompareCommand implements Command {
                     new Usage.Operand("PATH", "only these specs or folders", false, true)),
             List.of(
                     Usage.Option.oneOf(
-                            "--format", "FORMAT", "text, markdown or json; text unless said", "text", "markdown", "json"),
+                            "--format",
+                            "FORMAT",
+                            "text, markdown or json; text unless said",
+                            "text",
+                            "markdown",
+                            "json"),
                     Usage.Option.oneOf(
                             "--fail-on",
                             "WHAT",
@@ -48,10 +53,10 @@ final class CompareCommand implements Command {
                     "Nothing of the repository is run and nothing in it is changed.",
                     "Exit status: 0 compared; 1 with --fail-on, it is so; 2 something can't be read; 64 wrong usage."),
             List.of(
-                    "backcone compare main..HEAD                        what this branch does to the margins",
-                    "backcone compare HEAD                              what is not committed yet",
-                    "backcone compare old.drive new.drive               two files",
-                    "backcone compare --format markdown main...HEAD     for a review page"));
+                    "backcone compare main..HEAD                      what a branch does to margins",
+                    "backcone compare HEAD                            what is not committed yet",
+                    "backcone compare old.drive new.drive             two files",
+                    "backcone compare --format markdown main...HEAD   for a review page"));
 
     @Override
     public Usage usage() {
@@ -117,9 +122,8 @@ final class CompareCommand implements Command {
                 }
             }
             Snapshot before = Snapshot.revision(git, from, old);
-            Snapshot after = to == null
-                    ? Snapshot.folder(git.root(), "the files as they are")
-                    : Snapshot.revision(git, to, now);
+            Snapshot after =
+                    to == null ? Snapshot.folder(git.root(), "the files as they are") : Snapshot.revision(git, to, now);
             return Compared.of(before, after, wanted(git.root(), words.subList(1, words.size())), day);
         }
     }
@@ -156,14 +160,15 @@ final class CompareCommand implements Command {
     static boolean fails(Compared c, String what) {
         for (Comparison s : c.specs) {
             for (DriveChange d : s.drives()) {
-                boolean yes =
-                        switch (what) {
-                            case "short" -> d.fate() != Fate.REMOVED
-                                    && d.states().stream().anyMatch(x -> unmet(x.after()) && !unmet(x.before()));
-                            case "worse" -> d.moved().stream().anyMatch(m -> m.after() < m.before() - 1e-9)
-                                    || d.states().stream().anyMatch(x -> unmet(x.after()) && !unmet(x.before()));
-                            default -> !d.lowered().isEmpty();
-                        };
+                boolean yes = switch (what) {
+                    case "short" ->
+                        d.fate() != Fate.REMOVED
+                                && d.states().stream().anyMatch(x -> unmet(x.after()) && !unmet(x.before()));
+                    case "worse" ->
+                        d.moved().stream().anyMatch(m -> m.after() < m.before() - 1e-9)
+                                || d.states().stream().anyMatch(x -> unmet(x.after()) && !unmet(x.before()));
+                    default -> !d.lowered().isEmpty();
+                };
                 if (yes) {
                     return true;
                 }

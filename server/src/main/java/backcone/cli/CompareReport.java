@@ -25,6 +25,10 @@ import org.jspecify.annotations.Nullable;
  */
 final class CompareReport {
     private static final int WIDTH = 110;
+
+    /** Between the parts of a cell that may stand on lines of their own. */
+    private static final String LINES = "\n";
+
     private final Compared compared;
     private final PrintWriter out;
     private final boolean markdown;
@@ -115,13 +119,22 @@ final class CompareReport {
             b.append("nothing fell short, outside or open");
         }
         if (better > 0) {
-            b.append("; ").append(count(better, "requirement")).append(better == 1 ? " is" : " are").append(" met now");
+            b.append("; ")
+                    .append(count(better, "requirement"))
+                    .append(better == 1 ? " is" : " are")
+                    .append(" met now");
         }
         if (bars > 0) {
-            b.append("; ").append(count(bars, "bar")).append(bars == 1 ? " was" : " were").append(" lowered or may be");
+            b.append("; ")
+                    .append(count(bars, "bar"))
+                    .append(bars == 1 ? " was" : " were")
+                    .append(" lowered or may be");
         }
         if (worse > 0 && shorter == 0) {
-            b.append("; ").append(count(worse, "margin")).append(worse == 1 ? " is" : " are").append(" smaller");
+            b.append("; ")
+                    .append(count(worse, "margin"))
+                    .append(worse == 1 ? " is" : " are")
+                    .append(" smaller");
         }
         return strong(b.append('.').toString());
     }
@@ -136,17 +149,19 @@ final class CompareReport {
         List<List<String>> rows = new ArrayList<>();
         for (Of o : drives) {
             for (Comparison.Lowered l : o.drive.lowered()) {
-                rows.add(List.of(o.name(), l.what(), l.path(), dash(l.before()), dash(l.after())));
+                rows.add(List.of(o.name(), l.what(), l.path(), step(l)));
             }
             for (String r : o.drive.remarks()) {
-                rows.add(List.of(o.name(), "signature", "approved", "", r));
+                rows.add(List.of(o.name(), "signature", "approved", r));
             }
         }
-        table("Lowered bars", List.of("drive", "what", "where", "before", "after"), rows);
+        table("Lowered bars", List.of("drive", "what", "where", "how"), rows);
     }
 
-    private static String dash(String s) {
-        return s.isEmpty() ? "–" : s;
+    private static String step(Comparison.Lowered l) {
+        return l.before().isEmpty()
+                ? l.after()
+                : l.before() + " → " + (l.after().isEmpty() ? "nothing" : l.after());
     }
 
     // ---- (3) states
@@ -192,18 +207,14 @@ final class CompareReport {
         for (Of o : drives) {
             for (Comparison.FactChange f : o.drive.facts()) {
                 rows.add(List.of(
-                        o.name(),
-                        f.path(),
-                        figure(f.before(), f.unit()),
-                        figure(f.after(), f.unit()),
-                        difference(f)));
+                        o.name(), f.path(), figure(f.before(), f.unit()), figure(f.after(), f.unit()), difference(f)));
             }
         }
         table("Facts that others depend on", List.of("drive", "fact", "before", "after", "change"), rows);
     }
 
     private static String figure(double v, String unit) {
-        return Double.isNaN(v) ? "–" : Figures.withUnit(Figures.fixed(v, 5), unit);
+        return Double.isNaN(v) ? "–" : Figures.withUnit(Figures.fixed(v, 5).replace('-', '−'), unit);
     }
 
     private static String difference(Comparison.FactChange f) {
@@ -238,8 +249,8 @@ final class CompareReport {
             for (Comparison.Together t : o.drive.together()) {
                 List<String> names = new ArrayList<>();
                 t.edits().forEach(e -> names.add(o.spec.edits().get(e).path()));
-                paragraph("Made together in " + code(o.name()) + ": " + String.join(", ", names) + " (apart, " + lower(t.why())
-                        + ")");
+                paragraph("Made together in " + code(o.name()) + ": " + String.join(", ", names) + " (apart, "
+                        + lower(t.why()) + ")");
             }
         }
         if (!sampled.isEmpty()) {
@@ -275,8 +286,9 @@ final class CompareReport {
                 design += shown[i];
             }
             if (shown[i] != 0) {
-                by.add(signed(shown[i]) + (s.error() > 0 ? " ± " + tenths(Math.max(1, Math.round(s.error() * 1000))) : "")
-                        + " " + text(o, s));
+                by.add(signed(shown[i])
+                        + (s.error() > 0 ? " ± " + tenths(Math.max(1, Math.round(s.error() * 1000))) : "") + " "
+                        + text(o, s));
             }
         }
         return List.of(
@@ -286,7 +298,7 @@ final class CompareReport {
                 percent(after) + " " + m.is().word(),
                 design == 0 ? "" : signed(design),
                 bar == 0 ? "" : signed(bar),
-                by.isEmpty() ? "less than the digits shown" : String.join("; ", by));
+                by.isEmpty() ? "less than the digits shown" : String.join(LINES, by));
     }
 
     private static String text(Of o, Share s) {
@@ -413,7 +425,8 @@ final class CompareReport {
             out.println("|" + " --- |".repeat(head.size()));
             for (List<String> r : rows) {
                 List<String> cells = new ArrayList<>();
-                r.forEach(c -> cells.add(c.replace("|", "\\|").replace("\n", " ").replace("<", "&lt;")));
+                r.forEach(c ->
+                        cells.add(c.replace("|", "\\|").replace(LINES, "; ").replace("<", "&lt;")));
                 out.println("| " + String.join(" | ", cells) + " |");
             }
             out.println();
@@ -439,7 +452,7 @@ final class CompareReport {
             out.println(line.get(0));
             for (int i = 0; i < rows.size(); i++) {
                 out.println(line.get(i + 1));
-                for (String part : rows.get(i).get(last).split("; ", -1)) {
+                for (String part : rows.get(i).get(last).split(LINES, -1)) {
                     Usage.wrap(part, 6, 8, WIDTH, out);
                 }
             }

@@ -100,7 +100,8 @@ final class Compared {
     /** Two files, each with what it uses beside it. */
     static Compared pair(java.nio.file.Path a, java.nio.file.Path b, String oldName, String newName, LocalDate today) {
         DiskLoader left = new DiskLoader(FileSet.root(List.of(a.toAbsolutePath().normalize())));
-        DiskLoader right = new DiskLoader(FileSet.root(List.of(b.toAbsolutePath().normalize())));
+        DiskLoader right =
+                new DiskLoader(FileSet.root(List.of(b.toAbsolutePath().normalize())));
         Comparison c = BackconeEngine.create(right, today)
                 .compare(BackconeEngine.create(left, today), left.id(a), right.id(b));
         return new Compared(oldName, newName, List.of(c), List.of());
@@ -153,7 +154,11 @@ final class Compared {
     }
 
     private static List<String> lines(Snapshot s, String file) {
-        return text(s, file).lines().map(String::strip).filter(l -> !l.isEmpty()).toList();
+        return text(s, file)
+                .lines()
+                .map(String::strip)
+                .filter(l -> !l.isEmpty())
+                .toList();
     }
 
     private static String text(Snapshot s, String file) {

@@ -24,9 +24,11 @@ final class HistoryCommand implements Command {
             "Tells one margin over the commits that touched its spec, and which commit moved it most.",
             List.of(
                     new Usage.Operand("FILE", "a spec in a git repository", true, false),
-                    new Usage.Operand("REQUIREMENT", "as `backcone check` prints it, such as head.main.pitting", true, false)),
+                    new Usage.Operand(
+                            "REQUIREMENT", "as `backcone check` prints it, such as head.main.pitting", true, false)),
             List.of(
-                    Usage.Option.oneOf("--format", "FORMAT", "text, csv or svg; text unless said", "text", "csv", "svg"),
+                    Usage.Option.oneOf(
+                            "--format", "FORMAT", "text, csv or svg; text unless said", "text", "csv", "svg"),
                     Usage.Option.value("--most", "COUNT", "so many commits at most; 100 unless said")),
             List.of(
                     "Commits that touched a library or method file which the spec uses today count, too. The spec is followed"
@@ -37,8 +39,7 @@ final class HistoryCommand implements Command {
                     "backcone history --format svg washer.drive head.main.pitting > pitting.svg"));
 
     /** One commit; the answer is null where the requirement was not there or the text did not parse. */
-    private record Point(
-            Git.Commit commit, @Nullable RequirementAnswer answer) {}
+    private record Point(Git.Commit commit, @Nullable RequirementAnswer answer) {}
 
     @Override
     public Usage usage() {
@@ -80,8 +81,8 @@ final class HistoryCommand implements Command {
     }
 
     private static String near(Path file, String name) {
-        EngineFactory e = new EngineFactory(
-                FileSet.root(List.of(file.toAbsolutePath().normalize())), LedgerCommand.NO_DATE);
+        EngineFactory e =
+                new EngineFactory(FileSet.root(List.of(file.toAbsolutePath().normalize())), LedgerCommand.NO_DATE);
         Set<String> ids = new LinkedHashSet<>();
         e.analyse(file.toAbsolutePath().normalize())
                 .drives()
@@ -94,7 +95,9 @@ final class HistoryCommand implements Command {
             throws GitException, IOException, InterruptedException {
         Git git = Git.at(file);
         Path top = git.root().toRealPath();
-        Path whole = file.getParent() == null ? file : file.getParent().toRealPath().resolve(String.valueOf(file.getFileName()));
+        Path whole = file.getParent() == null
+                ? file
+                : file.getParent().toRealPath().resolve(String.valueOf(file.getFileName()));
         if (!whole.startsWith(top)) {
             throw new GitException("`" + file + "` lies outside the repository `" + top + "`");
         }
@@ -224,8 +227,8 @@ final class HistoryCommand implements Command {
         lo -= span * 0.1;
         hi += span * 0.1;
         double sx = (double) (w - left - right) / Math.max(1, points.size() - 1);
-        out.println("<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"" + w + "\" height=\"" + h + "\" viewBox=\"0 0 " + w
-                + " " + h + "\" font-family=\"sans-serif\" font-size=\"12\">");
+        out.println("<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"" + w + "\" height=\"" + h + "\" viewBox=\"0 0 "
+                + w + " " + h + "\" font-family=\"sans-serif\" font-size=\"12\">");
         out.println("<title>Margin of " + xml(name) + "</title>");
         out.println("<rect width=\"100%\" height=\"100%\" fill=\"white\"/>");
         out.println("<text x=\"" + left + "\" y=\"22\" font-size=\"14\">Margin of " + xml(name) + "</text>");
@@ -233,8 +236,8 @@ final class HistoryCommand implements Command {
         for (double t = Math.ceil(lo / step) * step; t <= hi; t += step) {
             long y = y(t, lo, hi, top, h - bottom);
             boolean zero = Math.abs(t) < step / 2;
-            out.println("<line x1=\"" + left + "\" x2=\"" + (w - right) + "\" y1=\"" + y + "\" y2=\"" + y + "\" stroke=\""
-                    + (zero ? "black" : "#ddd") + "\"/>");
+            out.println("<line x1=\"" + left + "\" x2=\"" + (w - right) + "\" y1=\"" + y + "\" y2=\"" + y
+                    + "\" stroke=\"" + (zero ? "black" : "#ddd") + "\"/>");
             out.println("<text x=\"" + (left - 8) + "\" y=\"" + (y + 4) + "\" text-anchor=\"end\">"
                     + Math.round(t * 1000) / 10.0 + " %</text>");
         }
@@ -265,7 +268,8 @@ final class HistoryCommand implements Command {
                             + Figures.margin(p.answer.margin(), p.answer.comparison())))
                     .append("</title></circle>\n");
         }
-        out.println("<path d=\"" + line.toString().strip() + "\" fill=\"none\" stroke=\"#1b6ca8\" stroke-width=\"1.5\"/>");
+        out.println(
+                "<path d=\"" + line.toString().strip() + "\" fill=\"none\" stroke=\"#1b6ca8\" stroke-width=\"1.5\"/>");
         out.print(dots);
         out.println("<text x=\"" + left + "\" y=\"" + (h - 28) + "\">"
                 + xml(points.get(0).commit.day()) + "</text>");

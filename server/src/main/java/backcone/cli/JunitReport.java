@@ -43,7 +43,10 @@ final class JunitReport implements Report {
                 x.writeAttribute("name", "text");
                 x.writeStartElement("error");
                 x.writeAttribute(
-                        "message", wrong.isEmpty() ? String.valueOf(c.fault()) : clean(wrong.get(0).message()));
+                        "message",
+                        wrong.isEmpty()
+                                ? String.valueOf(c.fault())
+                                : clean(wrong.get(0).message()));
                 StringBuilder all = new StringBuilder();
                 for (Diagnostic d : wrong) {
                     all.append(c.shown(d.file()))
@@ -91,7 +94,8 @@ final class JunitReport implements Report {
             x.writeAttribute("classname", clean(d.name()));
             x.writeAttribute("name", clean(r.id()));
             x.writeAttribute("file", c.shown(r.file()).replace('\\', '/'));
-            x.writeAttribute("line", Integer.toString(c.places(r.file()).line(r.span().start())));
+            x.writeAttribute(
+                    "line", Integer.toString(c.places(r.file()).line(r.span().start())));
             String told = r.state().word() + ": " + Figures.value(r) + ", required " + Figures.required(r)
                     + (Double.isNaN(r.margin()) ? "" : ", margin " + Figures.margin(r.margin(), r.comparison()));
             if (!r.state().isMet()) {
@@ -126,7 +130,12 @@ final class JunitReport implements Report {
         StringBuilder b = new StringBuilder(s.length());
         s.codePoints()
                 .forEach(p -> b.appendCodePoint(
-                        p == 9 || p == 10 || p == 13 || (p >= 32 && p <= 0xD7FF) || (p >= 0xE000 && p <= 0xFFFD) || p > 0xFFFF
+                        p == 9
+                                        || p == 10
+                                        || p == 13
+                                        || (p >= 32 && p <= 0xD7FF)
+                                        || (p >= 0xE000 && p <= 0xFFFD)
+                                        || p > 0xFFFF
                                 ? p
                                 : '?'));
         return b.toString();
@@ -136,8 +145,9 @@ final class JunitReport implements Report {
     public void end(List<String> unreachable) {
         for (String u : unreachable) {
             String text = u.replace("&", "&amp;").replace("<", "&lt;").replace("\"", "&quot;");
-            out.println("<testsuite name=\"backcone\" tests=\"1\" failures=\"0\" errors=\"1\"><testcase classname=\"backcone\""
-                    + " name=\"files\"><error message=\"" + clean(text) + "\"/></testcase></testsuite>");
+            out.println(
+                    "<testsuite name=\"backcone\" tests=\"1\" failures=\"0\" errors=\"1\"><testcase classname=\"backcone\""
+                            + " name=\"files\"><error message=\"" + clean(text) + "\"/></testcase></testsuite>");
             suites++;
         }
         if (suites == 0) {

@@ -26,7 +26,8 @@ final class Ledger {
                 write('\n'); // the same bytes on every platform
             }
         };
-        out.println("# Margins of " + spec + ", written by `backcone ledger`. Do not edit: change the spec and run it again,");
+        out.println("# Margins of " + spec
+                + ", written by `backcone ledger`. Do not edit: change the spec and run it again,");
         out.println("# after a merge conflict in this file, too.");
         List<DriveReview> sorted = new ArrayList<>(drives);
         sorted.sort(Comparator.comparing((DriveReview d) -> d.answer().name()));

@@ -22,8 +22,10 @@ final class LedgerCommand implements Command {
                     false,
                     true)),
             List.of(
-                    Usage.Option.flag("--check", "write nothing; say which ledgers are stale or missing (exit status 1)"),
-                    Usage.Option.flag("--print", "print the ledgers instead of writing them")),
+                    Usage.Option.flag(
+                            "--check", "write nothing; say which ledgers are stale or missing (exit status 1)"),
+                    Usage.Option.flag("--print", "print the ledgers instead of writing them"),
+                    Usage.Option.flag("--textconv", "print a spec with its margins behind it, as git asks for it")),
             List.of(
                     "A ledger holds no date: an accepted shortfall stands in it as short, accepted until its day. Numbers are"
                             + " rounded, so that it changes only when something moved.",
@@ -44,6 +46,12 @@ final class LedgerCommand implements Command {
 
     @Override
     public int run(Arguments arguments, PrintWriter out, PrintWriter err) throws IOException, InterruptedException {
+        if (arguments.has("--textconv")) {
+            for (String f : arguments.operands()) {
+                TextConv.print(f, out);
+            }
+            return Status.FINE;
+        }
         FileSet set = FileSet.of(arguments.operands(), false);
         for (String u : set.unreachable()) {
             err.println("backcone: " + u + ".");
@@ -102,9 +110,7 @@ final class LedgerCommand implements Command {
                     + c.shown() + "` tells them.");
             return null;
         }
-        return a.drives().isEmpty()
-                ? ""
-                : Ledger.of(String.valueOf(file.getFileName()), engine.review(file));
+        return a.drives().isEmpty() ? "" : Ledger.of(String.valueOf(file.getFileName()), engine.review(file));
     }
 
     static Path ledger(Path spec) {

@@ -57,7 +57,8 @@ final class MarkdownReport implements Report {
             body.append("| --- | --- | --- | --- | --- | --- |\n");
             for (RequirementAnswer r : d.requirements()) {
                 states.merge(r.state(), 1, Integer::sum);
-                String state = r.state().isMet() ? r.state().word() : "**" + r.state().word() + "**";
+                String state =
+                        r.state().isMet() ? r.state().word() : "**" + r.state().word() + "**";
                 body.append("| ")
                         .append(state)
                         .append(" | ")
@@ -86,7 +87,8 @@ final class MarkdownReport implements Report {
         out.println("## Gear drives");
         out.println();
         StringBuilder b = new StringBuilder();
-        states.forEach((s, n) -> b.append(b.length() == 0 ? "" : ", ").append(n).append(' ').append(s.word()));
+        states.forEach((s, n) ->
+                b.append(b.length() == 0 ? "" : ", ").append(n).append(' ').append(s.word()));
         if (wrong > 0) {
             b.append(b.length() == 0 ? "" : "; ").append(wrong).append(wrong == 1 ? " error" : " errors");
         }

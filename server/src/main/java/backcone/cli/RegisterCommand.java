@@ -27,7 +27,12 @@ final class RegisterCommand implements Command {
                     true)),
             List.of(
                     Usage.Option.oneOf(
-                            "--format", "FORMAT", "text, markdown or json; text unless said", "text", "markdown", "json"),
+                            "--format",
+                            "FORMAT",
+                            "text, markdown or json; text unless said",
+                            "text",
+                            "markdown",
+                            "json"),
                     Usage.Option.value("--on", "DATE", "as of this day; today unless said")),
             List.of("Exit status: 0 listed; 2 something can't be read; 64 wrong usage."),
             List.of(
@@ -35,7 +40,14 @@ final class RegisterCommand implements Command {
                     "backcone register --format markdown drives > register.md"));
 
     private record Deviation(
-            String drive, String requirement, String value, String accepted, String until, String by, String because, String state) {}
+            String drive,
+            String requirement,
+            String value,
+            String accepted,
+            String until,
+            String by,
+            String because,
+            String state) {}
 
     private record Said(String drive, String what, String why) {}
 
@@ -158,8 +170,8 @@ final class RegisterCommand implements Command {
         said("Assumptions", "assumed", assumptions, markdown, out);
         said("Waived limits", "limit", waived, markdown, out);
         List<List<String>> constants = new ArrayList<>();
-        recalled.forEach((k, v) -> constants.add(
-                List.of(k, v.size() <= 4 ? String.join(", ", v) : v.size() + " drives")));
+        recalled.forEach(
+                (k, v) -> constants.add(List.of(k, v.size() <= 4 ? String.join(", ", v) : v.size() + " drives")));
         table("Constants and equations from memory", List.of("what", "used by"), constants, markdown, out);
         if (markdown) {
             out.println(Caution.TEXT);
@@ -190,7 +202,8 @@ final class RegisterCommand implements Command {
             out.println("|" + " --- |".repeat(head.size()));
             for (List<String> r : rows) {
                 List<String> cells = new ArrayList<>();
-                r.forEach(c -> cells.add(c.replace("|", "\\|").replace("<", "&lt;").replace("\n", " ")));
+                r.forEach(c ->
+                        cells.add(c.replace("|", "\\|").replace("<", "&lt;").replace("\n", " ")));
                 out.println("| " + String.join(" | ", cells) + " |");
             }
         } else {

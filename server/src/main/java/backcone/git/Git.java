@@ -47,7 +47,8 @@ public final class Git {
                     a.error.contains("dubious ownership")
                             ? "git does not trust the repository at `" + folder
                                     + "`, which belongs to somebody else; `git status` there tells what to do"
-                            : "`" + folder + "` lies in no git repository; two files or two folders can be compared without one");
+                            : "`" + folder
+                                    + "` lies in no git repository; two files or two folders can be compared without one");
         }
         return new Git(Path.of(a.text().stripTrailing()));
     }
@@ -164,12 +165,15 @@ public final class Git {
             if (part.length == 4) {
                 Commit known = mine.get(part[0]);
                 path = known == null ? path : known.path();
-                out.add(new Commit(part[0], part[1], part[2], part[3].replace("\0", "").strip(), path));
+                out.add(new Commit(
+                        part[0], part[1], part[2], part[3].replace("\0", "").strip(), path));
             }
         }
         // what lies before the first commit of the file itself tells nothing about it
         String eldest = own.get(own.size() - 1).id();
-        while (!out.isEmpty() && !out.get(out.size() - 1).id().equals(eldest) && mine.containsKey(eldest)
+        while (!out.isEmpty()
+                && !out.get(out.size() - 1).id().equals(eldest)
+                && mine.containsKey(eldest)
                 && out.stream().anyMatch(x -> x.id().equals(eldest))) {
             out.remove(out.size() - 1);
         }

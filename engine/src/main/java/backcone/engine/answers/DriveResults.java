@@ -156,7 +156,8 @@ public final class DriveResults {
                 || state == State.ACCEPTED
                 || state == State.OUTSIDE;
         double reserve = rate != null && known && !statesOnly ? reserve(run, u, required) : Double.NaN;
-        List<RequirementAnswer.Band> bands = known && rate != null && !statesOnly ? bands(run, u, state, required) : List.of();
+        List<RequirementAnswer.Band> bands =
+                known && rate != null && !statesOnly ? bands(run, u, state, required) : List.of();
         Unit unit = u.unit;
         RequirementAnswer r = new RequirementAnswer(
                 u.id,

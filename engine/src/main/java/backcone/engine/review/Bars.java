@@ -34,7 +34,10 @@ public final class Bars {
                 case ACCEPTANCE -> {
                     if (e.after() != null) {
                         out.add(new Comparison.Lowered(
-                                before.isEmpty() ? "deviation accepted" : "acceptance changed", e.path(), before, after));
+                                before.isEmpty() ? "deviation accepted" : "acceptance changed",
+                                e.path(),
+                                before,
+                                after));
                     }
                 }
                 case WAIVER -> {
@@ -145,7 +148,7 @@ public final class Bars {
             if (e.path().equals("approved")) {
                 return null;
             }
-            rated |= e.kind() != Edit.Kind.RECORD && e.kind() != Edit.Kind.UNIT;
+            rated |= e.counts() && e.kind() != Edit.Kind.UNIT && e.kind() != Edit.Kind.REQUIREMENT;
         }
         return rated ? "Rated facts of `" + drive + "` changed, and `approved` is still " + approved + "." : null;
     }

@@ -8,4 +8,8 @@ import java.util.List;
  * {@code ratings} in words, and {@code equations}, a short hash over the equations, constants and tables used.
  */
 public record DriveReview(
-        DriveAnswer answer, List<String> ratings, String equations, List<ReviewFact> facts, List<ReviewFact> allowables) {}
+        DriveAnswer answer,
+        List<String> ratings,
+        String equations,
+        List<ReviewFact> facts,
+        List<ReviewFact> allowables) {}

@@ -56,16 +56,19 @@ final class ReviewWords {
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
-        text.lines().map(String::strip).filter(l -> !l.isEmpty() && l.charAt(0) != '#').forEach(l -> {
-            String[] word = l.split(" +", -1);
-            switch (word[0]) {
-                case "fact" -> w.facts.add(new Named(word[1], word[2]));
-                case "allowable" -> w.allowables.add(new Named(word[1], word[2]));
-                case "bar" -> w.bars.put(word[1], Way.valueOf(word[2].toUpperCase(java.util.Locale.ROOT)));
-                case "us" -> w.us.put(word[1], word[2]);
-                default -> throw new IllegalStateException("review.txt: " + l);
-            }
-        });
+        text.lines()
+                .map(String::strip)
+                .filter(l -> !l.isEmpty() && l.charAt(0) != '#')
+                .forEach(l -> {
+                    String[] word = l.split(" +", -1);
+                    switch (word[0]) {
+                        case "fact" -> w.facts.add(new Named(word[1], word[2]));
+                        case "allowable" -> w.allowables.add(new Named(word[1], word[2]));
+                        case "bar" -> w.bars.put(word[1], Way.valueOf(word[2].toUpperCase(java.util.Locale.ROOT)));
+                        case "us" -> w.us.put(word[1], word[2]);
+                        default -> throw new IllegalStateException("review.txt: " + l);
+                    }
+                });
         return w;
     }
 }

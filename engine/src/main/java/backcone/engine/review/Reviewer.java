@@ -53,15 +53,17 @@ public final class Reviewer {
             stresses.forEach((path, s) -> put(allowables, path, s, run));
         }
         return new DriveReview(
-                answer, List.copyOf(ratings), hash(used), List.copyOf(facts.values()), List.copyOf(allowables.values()));
+                answer,
+                List.copyOf(ratings),
+                hash(used),
+                List.copyOf(facts.values()),
+                List.copyOf(allowables.values()));
     }
 
     private static void facts(DriveGraph g, Map<String, Slot> out) {
         for (ReviewWords.Named n : ReviewWords.standard().facts) {
             for (Element e : List.copyOf(g.elements())) {
-                if (!e.isSpace()
-                        && !e.path().isEmpty()
-                        && g.shapes().library().isKind(e.kind(), n.kind())) {
+                if (!e.isSpace() && !e.path().isEmpty() && g.shapes().library().isKind(e.kind(), n.kind())) {
                     String path = e.path() + "." + n.name();
                     Slot s = g.find(path);
                     if (s != null) {
@@ -99,7 +101,9 @@ public final class Reviewer {
         }
         Unit u = run.graph.shownUnit(s);
         if (u != null && isUs(run.graph)) {
-            u = Units.standard().parse(ReviewWords.standard().us(u.text())) instanceof Units.Parse.Ok ok ? ok.unit() : u;
+            u = Units.standard().parse(ReviewWords.standard().us(u.text())) instanceof Units.Parse.Ok ok
+                    ? ok.unit()
+                    : u;
         }
         out.putIfAbsent(
                 path,
@@ -119,7 +123,9 @@ public final class Reviewer {
         Entry.Rate s = r.syntax();
         return r.id() + " by " + s.method().text()
                 + (s.edition() == null ? "" : " edition " + s.edition().text())
-                + (s.under() == null || s.under().isHole() ? "" : " under " + s.under().text());
+                + (s.under() == null || s.under().isHole()
+                        ? ""
+                        : " under " + s.under().text());
     }
 
     // ---- equations in use

@@ -4,7 +4,6 @@ import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.Expr;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.syntax.Name;
-import backcone.engine.syntax.Node;
 import backcone.engine.syntax.Note;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
@@ -37,9 +36,7 @@ public final class TreeDiff {
 
     /** One edit: the old entry, the new one, or either of them missing. */
     private record Choice(
-            int edit,
-            @Nullable Entry before,
-            @Nullable Entry after) implements Part {}
+            int edit, @Nullable Entry before, @Nullable Entry after) implements Part {}
 
     /** A block in both: its head, perhaps with an edit, and what is inside. */
     private record Nested(int headEdit, Entry before, Entry after, List<Part> body) implements Part {}
@@ -55,8 +52,7 @@ public final class TreeDiff {
      * Edits are added to {@code edits}, their ids being their places there. A file that is new or gone is compared with an
      * empty one. The spans of both trees point into {@code text}, which holds both texts.
      */
-    public static TreeDiff of(
-            FileId file, FileSyntax before, FileSyntax after, String text, List<Edit> edits) {
+    public static TreeDiff of(FileId file, FileSyntax before, FileSyntax after, String text, List<Edit> edits) {
         return new TreeDiff(file, text, edits, before, after);
     }
 
@@ -90,8 +86,7 @@ public final class TreeDiff {
 
     // ---- matching
 
-    private List<Part> body(
-            @Nullable String drive, String path, List<Entry> before, List<Entry> after, boolean top) {
+    private List<Part> body(@Nullable String drive, String path, List<Entry> before, List<Entry> after, boolean top) {
         Map<String, Entry> old = keyed(before, combined);
         Map<String, Entry> now = keyed(after, combined);
         if (top) {
@@ -128,12 +123,15 @@ public final class TreeDiff {
     private static String key(Entry e, String text) {
         if (e instanceof Entry.Fact f) {
             // a grade is given once per system
-            String system = f.value() instanceof Expr.Num n && n.unit() != null && isGrade(n.unit().text())
+            String system = f.value() instanceof Expr.Num n
+                            && n.unit() != null
+                            && isGrade(n.unit().text())
                     ? " " + n.unit().text()
                     : "";
             return "fact " + f.path().text() + system;
         } else if (e instanceof Entry.Block b) {
-            return "block " + b.head().text() + " " + (b.name() == null ? "" : b.name().text());
+            return "block " + b.head().text() + " "
+                    + (b.name() == null ? "" : b.name().text());
         } else if (e instanceof Entry.Drive d) {
             return "drive " + d.name().text();
         } else if (e instanceof Entry.Variant v) {
@@ -197,7 +195,8 @@ public final class TreeDiff {
             double most = 0.5;
             for (String n : now.keySet()) {
                 if (n.startsWith("drive ") && !old.containsKey(n)) {
-                    double s = alike(lines((Entry.Drive) req(old, k), combined), lines((Entry.Drive) req(now, n), combined));
+                    double s = alike(
+                            lines((Entry.Drive) req(old, k), combined), lines((Entry.Drive) req(now, n), combined));
                     if (s > most) {
                         most = s;
                         best = n;
@@ -284,8 +283,8 @@ public final class TreeDiff {
         if (from != null && to != null) {
             boolean words = (from instanceof Expr.Str || from instanceof Expr.Dated)
                     && (to instanceof Expr.Str || to instanceof Expr.Dated);
-            boolean sameSense = !(a instanceof Entry.Requirement ra && b instanceof Entry.Requirement rb)
-                    || ra.cmp() == rb.cmp();
+            boolean sameSense =
+                    !(a instanceof Entry.Requirement ra && b instanceof Entry.Requirement rb) || ra.cmp() == rb.cmp();
             if (words || (vb.equals(va) && sameSense && kind == Edit.Kind.VALUE && sameAssumption(b, a))) {
                 // the value stands; its source or reason is another
                 kind = Edit.Kind.RECORD;
@@ -360,7 +359,8 @@ public final class TreeDiff {
         double half = Math.abs(uy.toBase(y.value() + lastDigit(y.text()) / 2) - is);
         double halfOld = Math.abs(ux.toBase(x.value() + lastDigit(x.text()) / 2) - was);
         // the coarser of the two must not hide a change: half a digit of either, at most 0.1 %
-        return Math.abs(was - is) <= Math.min(Math.max(half, Math.min(halfOld, half * 10)) * 1.000001, 1e-3 * Math.abs(was));
+        return Math.abs(was - is)
+                <= Math.min(Math.max(half, Math.min(halfOld, half * 10)) * 1.000001, 1e-3 * Math.abs(was));
     }
 
     private static double lastDigit(String number) {
@@ -503,7 +503,9 @@ public final class TreeDiff {
         if (e instanceof Entry.Fact f) {
             return f.path().text();
         } else if (e instanceof Entry.Block b) {
-            return b.name() == null || b.name().isHole() ? b.head().text() : b.name().text();
+            return b.name() == null || b.name().isHole()
+                    ? b.head().text()
+                    : b.name().text();
         } else if (e instanceof Entry.Drive d) {
             return d.name().text();
         } else if (e instanceof Entry.Variant v) {
