@@ -768,7 +768,7 @@ public final class DriveResults {
     }
 
     private void missingInput(Slot s, Set<String> waiting) {
-        if (s.hasRelations()
+        if (s.decl.neededBecause == null
                 && problems.all().stream()
                         .anyMatch(d -> d.severity() == backcone.engine.diagnostics.Severity.ERROR
                                 && (d.code() == Code.UNKNOWN_NAME || d.code() == Code.UNKNOWN_KIND))) {

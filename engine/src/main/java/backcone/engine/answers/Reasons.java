@@ -37,6 +37,9 @@ final class Reasons {
     Why of(int register) {
         Set<Slot> open = new LinkedHashSet<>();
         Map<String, Fault> faults = new LinkedHashMap<>();
+        if (register < 0) {
+            return new Why(List.of(), List.of(), true); // it was never understood, and a finding says why
+        }
         boolean broken = false;
         for (int r : run.faults().origins(register)) {
             Tape tape = graph.tape();

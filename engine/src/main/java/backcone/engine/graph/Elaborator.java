@@ -430,6 +430,9 @@ final class Elaborator {
             return;
         }
         Slot s = (Slot) target;
+        if (s.decl.how == Entry.Given.EQUALS && f.value() instanceof Expr.Hole) {
+            return; // half typed: perhaps no fact at all, and the parser has said what is missing
+        }
         if (s.decl.how == Entry.Given.EQUALS && s.decl.role != Decl.Role.LET && !example) {
             Diagnostic d = Diagnostic.of(
                     Code.COMPUTED_GIVEN,
