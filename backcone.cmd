@@ -42,7 +42,7 @@ if not exist "%APP%" (
   popd
 )
 
-if /i not "%~1"=="serve" if /i not "%~1"=="explore" set "FLAGS=%FLAGS% -XX:TieredStopAtLevel=1"
+if /i not "%~1"=="serve" if /i not "%~1"=="explore" set "FLAGS=%FLAGS% -XX:TieredStopAtLevel=1 -Xmn24m"
 for %%A in ("%APP%") do set "KEY=%%~zA-%%~tA"
 set "KEY=%KEY:/=-%"
 set "KEY=%KEY::=-%"

@@ -3,6 +3,7 @@ package backcone.engine;
 import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.Explanation;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.review.DriveReview;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import java.util.List;
@@ -25,6 +26,9 @@ public interface Analysis {
 
     /** The drives of this file, variants and rows of families included, in order. */
     List<DriveAnswer> drives();
+
+    /** The same drives as a ledger keeps them. */
+    List<DriveReview> reviews();
 
     /**
      * How {@code name} came about: {@code head.main.wheel.pitting}, {@code head.cone_distance}, or with the drive in front

@@ -2,7 +2,6 @@ package backcone.engine;
 
 import backcone.engine.parse.Parser;
 import backcone.engine.review.Comparison;
-import backcone.engine.review.DriveReview;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
@@ -39,11 +38,6 @@ public final class BackconeEngine implements Engine {
     /** Forgets a text that has changed. */
     public void forget(FileId file) {
         texts.remove(file);
-    }
-
-    /** The drives of a spec as a ledger keeps them, judged without a date. */
-    public List<DriveReview> review(FileId file) {
-        return ((FileAnalysis) analyse(file)).reviews();
     }
 
     /**

@@ -152,8 +152,8 @@ final class FileAnalysis implements Analysis {
         return shapes;
     }
 
-    /** The same drives as a ledger keeps them. */
-    List<DriveReview> reviews() {
+    @Override
+    public List<DriveReview> reviews() {
         Sources src = sources;
         List<DriveReview> out = new ArrayList<>();
         if (src == null) {

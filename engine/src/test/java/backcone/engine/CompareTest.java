@@ -272,7 +272,9 @@ class CompareTest {
                 .replace(
                         "require z",
                         "accept c.house.grip >= 0.1 until 2027-06-30 by \"B. Ost\" because \"trial\"\n  require z");
-        var drives = engine(Map.of("d.drive", accepted, "house.method", HOUSE)).review(new FileId("d.drive"));
+        var drives = engine(Map.of("d.drive", accepted, "house.method", HOUSE))
+                .analyse(new FileId("d.drive"))
+                .reviews();
         assertThat(drives).hasSize(1);
         assertThat(drives.get(0).facts()).extracting(f -> f.path()).contains("c.ratio", "a.torque");
         assertThat(drives.get(0).equations()).hasSize(12);
@@ -280,11 +282,15 @@ class CompareTest {
 
     @Test
     void theHashFollowsEquationsAndNotProse() {
-        var one = engine(Map.of("d.drive", DRIVE, "house.method", HOUSE)).review(new FileId("d.drive"));
+        var one = engine(Map.of("d.drive", DRIVE, "house.method", HOUSE))
+                .analyse(new FileId("d.drive"))
+                .reviews();
         var prose = engine(Map.of("d.drive", DRIVE, "house.method", HOUSE.replace("\"grip\"", "\"how it grips\"")))
-                .review(new FileId("d.drive"));
+                .analyse(new FileId("d.drive"))
+                .reviews();
         var other = engine(Map.of("d.drive", DRIVE, "house.method", HOUSE.replace("z * b", "z * b * 2")))
-                .review(new FileId("d.drive"));
+                .analyse(new FileId("d.drive"))
+                .reviews();
         assertThat(prose.get(0).equations()).isEqualTo(one.get(0).equations());
         assertThat(other.get(0).equations()).isNotEqualTo(one.get(0).equations());
     }

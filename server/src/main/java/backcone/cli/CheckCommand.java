@@ -6,14 +6,7 @@ import java.nio.file.Path;
 import java.time.LocalDate;
 import java.time.ZoneId;
 import java.time.format.DateTimeParseException;
-import java.util.ArrayDeque;
-import java.util.Deque;
-import java.util.Iterator;
 import java.util.List;
-import java.util.concurrent.ExecutionException;
-import java.util.concurrent.ExecutorService;
-import java.util.concurrent.Executors;
-import java.util.concurrent.Future;
 import org.jspecify.annotations.Nullable;
 
 /** {@code backcone check}: diagnostics and requirements of files or folders. */
@@ -52,12 +45,6 @@ final class CheckCommand implements Command {
                     "backcone check feeder.drive             one spec",
                     "backcone check --format json drives     for other programs",
                     "backcone check --on 2027-07-01 drives   as it will be on that day"));
-
-    /** Specs in work or waiting to be told, for each core: enough to keep both cores busy behind one slow spec. */
-    private static final int AHEAD = 16;
-
-    /** Deep enough for any nesting that the parser lets through. */
-    private static final long STACK = 16L << 20;
 
     @Override
     public Usage usage() {
@@ -115,19 +102,11 @@ final class CheckCommand implements Command {
     private static int check(List<Path> files, LocalDate day, Report report, boolean visible, PrintWriter err)
             throws IOException, InterruptedException {
         EngineFactory engine = new EngineFactory(FileSet.root(files), day);
-        int cores = Math.min(files.size(), Runtime.getRuntime().availableProcessors());
-        ExecutorService pool = Executors.newFixedThreadPool(cores, r -> new Thread(null, r, "check", STACK));
         Progress progress = new Progress("checking", files.size(), !visible && Terminal.err());
         int status = Status.FINE;
-        try {
-            Deque<Future<Checked>> ahead = new ArrayDeque<>();
-            Iterator<Path> left = files.iterator();
-            while (left.hasNext() || !ahead.isEmpty()) {
-                while (left.hasNext() && ahead.size() < cores * AHEAD) {
-                    Path next = left.next();
-                    ahead.add(pool.submit(() -> Checked.of(engine, next)));
-                }
-                Checked c = ahead.remove().get();
+        try (Ahead<Path, Checked> ahead = new Ahead<>(files, f -> Checked.of(engine, f))) {
+            while (ahead.hasNext()) {
+                Checked c = ahead.next();
                 progress.step();
                 if (c.fault() != null) {
                     progress.done();
@@ -139,11 +118,8 @@ final class CheckCommand implements Command {
                     engine.forget(c.file()); // libraries stay: others use them
                 }
             }
-        } catch (ExecutionException e) {
-            throw new IllegalStateException(e.getCause()); // Checked.of keeps what an analysis can throw
         } finally {
             progress.done();
-            pool.shutdownNow();
         }
         return status;
     }

@@ -4,11 +4,9 @@ import backcone.engine.Analysis;
 import backcone.engine.BackconeEngine;
 import backcone.engine.Handbook;
 import backcone.engine.Loader;
-import backcone.engine.review.DriveReview;
 import backcone.engine.text.FileId;
 import java.nio.file.Path;
 import java.time.LocalDate;
-import java.util.List;
 import java.util.Map;
 import java.util.concurrent.ConcurrentHashMap;
 
@@ -25,11 +23,6 @@ final class EngineFactory {
 
     Analysis analyse(Path file) {
         return engine.analyse(loader.id(file));
-    }
-
-    /** The drives of a spec as a ledger keeps them. */
-    List<DriveReview> review(Path file) {
-        return engine.review(loader.id(file));
     }
 
     /** Lets go of a text that is done with, so that a large folder needs no more memory than a small one. */

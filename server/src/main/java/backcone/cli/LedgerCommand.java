@@ -64,31 +64,37 @@ final class LedgerCommand implements Command {
         int[] count = new int[4]; // as they should be, written, stale, missing
         int status = set.unreachable().isEmpty() ? Status.FINE : Status.WRONG_TEXT;
         EngineFactory engine = new EngineFactory(FileSet.root(set.files()), NO_DATE);
-        for (Path file : set.files()) {
-            String text = text(engine, file, err);
-            engine.forget(file);
-            if (text == null) {
-                status = Status.WRONG_TEXT;
-                continue;
-            }
-            if (text.isEmpty()) {
-                continue; // a library: no drive in it
-            }
-            if (print) {
-                out.print(text);
-                continue;
-            }
-            Path ledger = ledger(file);
-            String now = Files.isRegularFile(ledger) ? Files.readString(ledger, StandardCharsets.UTF_8) : null;
-            if (text.equals(now == null ? null : now.replace("\r\n", "\n"))) {
-                count[0]++;
-            } else if (check) {
-                count[now == null ? 3 : 2]++;
-                out.println(FileSet.shown(ledger) + (now == null ? " is missing" : " is stale"));
-            } else {
-                write(ledger, text);
-                count[1]++;
-                out.println(FileSet.shown(ledger) + (now == null ? " is new" : " is renewed"));
+        try (Ahead<Path, Done> ahead = new Ahead<>(set.files(), f -> Done.of(engine, f))) {
+            while (ahead.hasNext()) {
+                Done d = ahead.next();
+                Path file = d.file;
+                String text = d.text;
+                if (!d.said.isEmpty()) {
+                    err.print(d.said);
+                }
+                if (text == null) {
+                    status = Status.WRONG_TEXT;
+                    continue;
+                }
+                if (text.isEmpty()) {
+                    continue; // a library: no drive in it
+                }
+                if (print) {
+                    out.print(text);
+                    continue;
+                }
+                Path ledger = ledger(file);
+                String now = Files.isRegularFile(ledger) ? Files.readString(ledger, StandardCharsets.UTF_8) : null;
+                if (text.equals(now == null ? null : now.replace("\r\n", "\n"))) {
+                    count[0]++;
+                } else if (check) {
+                    count[now == null ? 3 : 2]++;
+                    out.println(FileSet.shown(ledger) + (now == null ? " is missing" : " is stale"));
+                } else {
+                    write(ledger, text);
+                    count[1]++;
+                    out.println(FileSet.shown(ledger) + (now == null ? " is new" : " is renewed"));
+                }
             }
         }
         if (!print) {
@@ -101,6 +107,16 @@ final class LedgerCommand implements Command {
         return Math.max(status, check && count[2] + count[3] > 0 ? Status.NOT_MET : Status.FINE);
     }
 
+    /** A spec with its ledger's text; {@code said} is what there is to say of a wrong one. */
+    private record Done(Path file, @Nullable String text, String said) {
+        static Done of(EngineFactory engine, Path file) {
+            java.io.StringWriter said = new java.io.StringWriter();
+            String text = LedgerCommand.text(engine, file, new PrintWriter(said, true));
+            engine.forget(file);
+            return new Done(file, text, said.toString());
+        }
+    }
+
     /** The ledger's text; empty for a library, null where the spec is wrong and the reason is said. */
     static @Nullable String text(EngineFactory engine, Path file, PrintWriter err) {
         Checked c = Checked.of(engine, file);
@@ -110,7 +126,7 @@ final class LedgerCommand implements Command {
                     + c.shown() + "` tells them.");
             return null;
         }
-        return a.drives().isEmpty() ? "" : Ledger.of(String.valueOf(file.getFileName()), engine.review(file));
+        return a.drives().isEmpty() ? "" : Ledger.of(String.valueOf(file.getFileName()), a.reviews());
     }
 
     static Path ledger(Path spec) {

@@ -47,7 +47,7 @@ final class TextConv {
                 a.diagnostics().stream().anyMatch(d -> d.severity() == Severity.ERROR && !Checked.aboutStates(d));
         if (!wrong && !a.drives().isEmpty()) {
             out.println();
-            out.print(Ledger.of(name, engine.review(id)));
+            out.print(Ledger.of(name, a.reviews()));
         }
     }
 

@@ -428,6 +428,11 @@ public final class DriveGraph {
         tape.finish();
     }
 
+    public void demand(Collection<Slot> all) {
+        all.forEach(compiler::value);
+        tape.finish();
+    }
+
     /** The slot in whose equation a register was computed. */
     public @Nullable Slot near(int register) {
         Slot own = owners.get(register);

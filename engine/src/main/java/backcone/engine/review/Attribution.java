@@ -13,7 +13,7 @@ public final class Attribution {
     /** Up to so many players every order is counted. */
     public static final int EXACT = 12;
 
-    private static final int ORDERS = 400;
+    private static final int ORDERS = 120;
 
     private Attribution() {}
 

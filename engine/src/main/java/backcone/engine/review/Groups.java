@@ -9,10 +9,12 @@ import org.jspecify.annotations.Nullable;
 
 /**
  * Which edits are players of their own. Edits that have no meaning without each other (a contradiction, a name that nothing
- * declares, a requirement that falls open) become one; where there are still more than {@link Attribution#EXACT}, those of one
- * block become one.
+ * declares, a requirement that falls open) become one; where there are still very many, those of one block become one.
  */
 public final class Groups {
+    /** Beyond so many edits those of one block are one. */
+    private static final int MANY = 30;
+
     private Groups() {}
 
     /** What is wrong when exactly these edits are made; null when nothing is. */
@@ -40,7 +42,7 @@ public final class Groups {
                 }
             }
             if (why == null) {
-                if (groups.size() > Attribution.EXACT && !blocks) {
+                if (groups.size() > MANY && !blocks) {
                     blocks = true;
                     groups = byBlock(groups, edits);
                     continue;

@@ -12,6 +12,7 @@ import backcone.engine.model.TableDef;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.Note;
 import backcone.engine.text.FileId;
+import backcone.engine.text.Span;
 import backcone.engine.units.Unit;
 import backcone.engine.units.Units;
 import java.nio.charset.StandardCharsets;
@@ -24,11 +25,17 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.TreeSet;
+import java.util.concurrent.ConcurrentHashMap;
 import java.util.function.Function;
+import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
 
 /** Gathers from the graphs of a drive what a reviewer looks at. */
 public final class Reviewer {
+    private record Place(FileId file, Span at) {}
+
+    private static final Map<Place, String> KNOWN = new ConcurrentHashMap<>();
+
     private Reviewer() {}
 
     /** {@code texts} gives the text of a handbook or library file, null where there is none. */
@@ -46,8 +53,9 @@ public final class Reviewer {
             Map<String, Slot> wanted = new LinkedHashMap<>();
             facts(g, wanted);
             Map<String, Slot> stresses = allowables(g);
-            wanted.values().forEach(g::demand);
-            stresses.values().forEach(g::demand);
+            List<Slot> all = new ArrayList<>(wanted.values());
+            all.addAll(stresses.values());
+            g.demand(all);
             Run run = new Run(g);
             wanted.forEach((path, s) -> put(facts, path, s, run));
             stresses.forEach((path, s) -> put(allowables, path, s, run));
@@ -144,31 +152,49 @@ public final class Reviewer {
             }
         }
         for (Decl d : decls) {
-            String text = texts.apply(d.file);
-            if (text == null || d.value == null) {
-                continue;
+            if (d.value != null) {
+                add(d.span, d.file, () -> equation(d, texts), out);
             }
-            StringBuilder b = new StringBuilder(d.toString()).append(' ').append(Words.of(text, d.value));
-            for (Note n : d.notes) {
-                if (n instanceof Note.Taking) {
-                    b.append(' ').append(Words.of(text, n));
-                } else if (n instanceof Note.Reading r) {
-                    b.append(' ').append(r.name()).append(' ').append(Words.of(text, r.value()));
-                }
-            }
-            out.add(b.toString());
         }
         for (TableDef t : g.usedTables()) {
-            String text = texts.apply(t.file);
-            if (text == null) {
-                continue;
-            }
-            StringBuilder b = new StringBuilder(t.owner).append(' ').append(t.name());
-            for (Entry.Row r : t.syntax.rows()) {
-                b.append('\n').append(Words.of(text, r));
-            }
-            out.add(b.append(t.between).append(t.below).append(t.above).toString());
+            add(t.syntax.span(), t.file, () -> table(t, texts), out);
         }
+    }
+
+    /** What stands in the handbook is the same for every drive, so it is spelled out once. */
+    private static void add(Span at, FileId file, Supplier<String> words, TreeSet<String> out) {
+        String s = file.isHandbook() ? KNOWN.computeIfAbsent(new Place(file, at), k -> words.get()) : words.get();
+        if (!s.isEmpty()) {
+            out.add(s);
+        }
+    }
+
+    private static String equation(Decl d, Function<FileId, @Nullable String> texts) {
+        String text = texts.apply(d.file);
+        if (text == null || d.value == null) {
+            return "";
+        }
+        StringBuilder b = new StringBuilder(d.toString()).append(' ').append(Words.of(text, d.value));
+        for (Note n : d.notes) {
+            if (n instanceof Note.Taking) {
+                b.append(' ').append(Words.of(text, n));
+            } else if (n instanceof Note.Reading r) {
+                b.append(' ').append(r.name()).append(' ').append(Words.of(text, r.value()));
+            }
+        }
+        return b.toString();
+    }
+
+    private static String table(TableDef t, Function<FileId, @Nullable String> texts) {
+        String text = texts.apply(t.file);
+        if (text == null) {
+            return "";
+        }
+        StringBuilder b = new StringBuilder(t.owner).append(' ').append(t.name());
+        for (Entry.Row r : t.syntax.rows()) {
+            b.append('\n').append(Words.of(text, r));
+        }
+        return b.append(t.between).append(t.below).append(t.above).toString();
     }
 
     private static String hash(TreeSet<String> used) {

@@ -1,0 +1,1 @@
+autocmd BufRead,BufNewFile *.drive,*.method setfiletype backcone
