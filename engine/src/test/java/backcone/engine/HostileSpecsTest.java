@@ -23,7 +23,8 @@ class HostileSpecsTest {
     private static Map<String, String> samples() throws IOException {
         Map<String, String> out = new TreeMap<>();
         try (Stream<Path> all = Files.walk(SAMPLES)) {
-            for (Path p : all.filter(f -> f.toString().endsWith(".drive") && !f.toString().contains("broken"))
+            for (Path p : all.filter(f ->
+                            f.toString().endsWith(".drive") && !f.toString().contains("broken"))
                     .toList()) {
                 out.put(SAMPLES.relativize(p).toString().replace('\\', '/'), Files.readString(p));
             }
@@ -46,7 +47,9 @@ class HostileSpecsTest {
         }
         a.drives().forEach(d -> {
             for (RequirementAnswer r : d.requirements()) {
-                assertThat(Double.isNaN(r.value()) && r.state().isMet()).as(r.id()).isFalse();
+                assertThat(Double.isNaN(r.value()) && r.state().isMet())
+                        .as(r.id())
+                        .isFalse();
             }
         });
         return a;
@@ -102,8 +105,10 @@ class HostileSpecsTest {
     void numbersOfAnySize() throws IOException {
         Map<String, String> all = samples();
         String text = java.util.Objects.requireNonNull(all.get("water_wheel.drive"));
-        for (String n : new String[] {"0", "1e999", "1e-999", "9e307", "1e-320", "-5", "99999999999999999999", "0.0", "1e5"}) {
-            for (String was : new String[] {"= 6 mm", "= 75 mm", "= 20 deg", "= 19", "= 98", "= 7.5 kW", "= 212 rpm", ">= 1.5"}) {
+        for (String n :
+                new String[] {"0", "1e999", "1e-999", "9e307", "1e-320", "-5", "99999999999999999999", "0.0", "1e5"}) {
+            for (String was :
+                    new String[] {"= 6 mm", "= 75 mm", "= 20 deg", "= 19", "= 98", "= 7.5 kW", "= 212 rpm", ">= 1.5"}) {
                 String unit = was.replaceAll("[=>.0-9 ]", "");
                 String sign = was.startsWith(">=") ? ">= " : "= ";
                 analyse(all, "water_wheel.drive", text.replace(was, sign + n + (unit.isEmpty() ? "" : " " + unit)));
@@ -154,8 +159,10 @@ class HostileSpecsTest {
         String text = java.util.Objects.requireNonNull(all.get("water_wheel.drive"));
         List<String> plain = states(analyse(all, "water_wheel.drive", text));
         assertThat(states(analyse(all, "water_wheel.drive", "\uFEFF" + text))).isEqualTo(plain);
-        assertThat(states(analyse(all, "water_wheel.drive", text.replace("\n", "\r\n")))).isEqualTo(plain);
-        assertThat(states(analyse(all, "water_wheel.drive", text.stripTrailing()))).isEqualTo(plain);
+        assertThat(states(analyse(all, "water_wheel.drive", text.replace("\n", "\r\n"))))
+                .isEqualTo(plain);
+        assertThat(states(analyse(all, "water_wheel.drive", text.stripTrailing())))
+                .isEqualTo(plain);
     }
 
     private static List<String> states(Analysis a) {

@@ -35,26 +35,25 @@ class BrokenSamplesTest {
     private static String said(Path file) {
         Analysis a = new EngineFactory(ROOT, DAY).analyse(file);
         Places places = new Places(a.text());
-        return a.diagnostics().stream()
-                .map(d -> line(d, places))
-                .collect(Collectors.joining("\n", "", "\n"));
+        return a.diagnostics().stream().map(d -> line(d, places)).collect(Collectors.joining("\n", "", "\n"));
     }
 
     private static String line(Diagnostic d, Places places) {
-        return places.at(d.span().start()) + " " + d.severity().name().toLowerCase(Locale.ROOT) + " " + d.code().id()
-                + " " + d.message();
+        return places.at(d.span().start()) + " " + d.severity().name().toLowerCase(Locale.ROOT) + " "
+                + d.code().id() + " " + d.message();
     }
 
     @TestFactory
     Stream<DynamicTest> everyMistakeGivesItsMessage() throws IOException {
-        return texts().stream().map(f -> DynamicTest.dynamicTest(f.getFileName().toString(), () -> {
-            Path expected = f.resolveSibling(f.getFileName().toString().replace(".drive", ".expected"));
-            String said = said(f);
-            if (Boolean.getBoolean("backcone.update")) {
-                Files.writeString(expected, said);
-            }
-            assertThat(said).isEqualTo(Files.readString(expected));
-        }));
+        return texts().stream()
+                .map(f -> DynamicTest.dynamicTest(f.getFileName().toString(), () -> {
+                    Path expected = f.resolveSibling(f.getFileName().toString().replace(".drive", ".expected"));
+                    String said = said(f);
+                    if (Boolean.getBoolean("backcone.update")) {
+                        Files.writeString(expected, said);
+                    }
+                    assertThat(said).isEqualTo(Files.readString(expected));
+                }));
     }
 
     @Test
