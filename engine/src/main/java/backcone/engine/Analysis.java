@@ -3,6 +3,7 @@ package backcone.engine;
 import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.Explanation;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.editing.Scene;
 import backcone.engine.review.DriveReview;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
@@ -38,6 +39,9 @@ public interface Analysis {
 
     /** A whole rating in calculation order, for {@code explain FILE mesh.rating}; empty if {@code name} is no rating. */
     Optional<List<Explanation>> explainRating(String name);
+
+    /** What answers to editors are drawn from. */
+    Scene scene();
 
     /** Names that {@link #explain} knows, for suggestions. */
     List<String> names();

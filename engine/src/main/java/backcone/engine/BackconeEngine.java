@@ -35,6 +35,27 @@ public final class BackconeEngine implements Engine {
         return FileAnalysis.of(t, this::load, Handbook.standard(), today);
     }
 
+    /**
+     * The analysis of a text that somebody is typing; with {@code newest} it takes the place of what the loader would give to
+     * the files that use it. {@code before} is what was found out about an earlier text of the file: whatever still holds is
+     * taken from there, and the answer is the same as without it.
+     */
+    public Analysis analyse(FileId file, String text, @Nullable Analysis before, boolean newest) {
+        Parser.Parsed p = Parser.parse(file, text);
+        SourceText t = new SourceText(file, text, p.tree(), p.problems());
+        if (newest) {
+            texts.put(file, t);
+        }
+        return FileAnalysis.of(
+                t, this::load, Handbook.standard(), today, before instanceof FileAnalysis f ? f : null, true);
+    }
+
+    /** A shipped text as somebody reads it; there is nothing to find in it. */
+    public Analysis handbook(FileId file) {
+        String text = Handbook.text(file);
+        return FileAnalysis.handbook(file, text == null ? "" : text);
+    }
+
     /** Forgets a text that has changed. */
     public void forget(FileId file) {
         texts.remove(file);

@@ -6,7 +6,7 @@ import backcone.engine.answers.Examples;
 import backcone.engine.answers.Explanation;
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
-import backcone.engine.eval.Run;
+import backcone.engine.editing.Scene;
 import backcone.engine.explain.Explainer;
 import backcone.engine.graph.Checker;
 import backcone.engine.graph.DriveBuilder;
@@ -44,6 +44,9 @@ final class FileAnalysis implements Analysis {
     private final List<Diagnostic> diagnostics;
     private final List<DriveAnswer> drives;
     private final Map<String, DriveSource> byName;
+    private final Map<String, Built> built;
+    private final List<Diagnostic> ofBlocks;
+    private @Nullable Scene scene;
 
     private FileAnalysis(
             SourceText main,
@@ -51,13 +54,17 @@ final class FileAnalysis implements Analysis {
             Shapes shapes,
             List<Diagnostic> diagnostics,
             List<DriveAnswer> drives,
-            Map<String, DriveSource> byName) {
+            Map<String, DriveSource> byName,
+            Map<String, Built> built,
+            List<Diagnostic> ofBlocks) {
         this.main = main;
         this.sources = sources;
         this.shapes = shapes;
         this.diagnostics = diagnostics;
         this.drives = drives;
         this.byName = byName;
+        this.built = built;
+        this.ofBlocks = ofBlocks;
     }
 
     static FileAnalysis unreadable(FileId file, Loader.Loaded why) {
@@ -69,21 +76,158 @@ final class FileAnalysis implements Analysis {
                         "`" + file.path() + "` can't be read: " + u.reason() + ".")
                 : Diagnostic.of(Code.FILE_NOT_FOUND, file, Span.NONE, "There is no file `" + file.path() + "`.");
         SourceText none = new SourceText(file, "", BackconeEngine.empty(), List.of());
-        return new FileAnalysis(none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of());
+        return new FileAnalysis(none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of(), Map.of(), List.of());
     }
 
     static FileAnalysis of(SourceText main, Function<FileId, Object> load, Handbook handbook, LocalDate today) {
+        return of(main, load, handbook, today, null, false);
+    }
+
+    /**
+     * {@code before}: what was found out about an earlier text of this file; what still holds is taken from there. {@code
+     * editing}: what editors show beside the text is computed too.
+     */
+    static FileAnalysis of(
+            SourceText main,
+            Function<FileId, Object> load,
+            Handbook handbook,
+            LocalDate today,
+            @Nullable FileAnalysis before,
+            boolean editing) {
         if (main.file().isMethodFile()) {
             return methodFile(main, handbook);
         }
         Sources sources = new Sources(main, load);
         List<Diagnostic> found = new ArrayList<>(main.problems());
         found.addAll(sources.problems());
-        Shapes shapes = shapes(sources, handbook);
+        boolean sameFiles =
+                before != null && before.sources != null && sameTexts(before.sources.used(), sources.used());
+        Shapes shapes = sameFiles ? java.util.Objects.requireNonNull(before).shapes : shapes(sources, handbook);
+        Set<Integer> changed = sameFiles ? changed(java.util.Objects.requireNonNull(before).main, main) : null;
+        FileAnalysis kept = changed == null ? null : before;
         Problems own = new Problems();
         misplaced(main, own);
         Map<String, DriveSource> byName = new LinkedHashMap<>();
         driveSources(sources, main, own, byName);
+        List<Diagnostic> ofBlocks = blocks(main, sources, shapes, kept);
+        ofBlocks.forEach(own::add);
+        Map<String, Built> built = new LinkedHashMap<>();
+        List<DriveAnswer> answers = new ArrayList<>();
+        for (DriveSource s : byName.values()) {
+            Built b = kept == null ? null : kept.again(s, main, java.util.Objects.requireNonNull(changed), today);
+            if (b == null) {
+                b = Built.of(s, main, sources, shapes, today, editing);
+            }
+            built.put(s.name(), b);
+            Moved moved = b.moved(main);
+            answers.add(moved.answer(b.answer));
+            boolean derived = s.layers().size() > 1;
+            for (Diagnostic d : moved.diagnostics(b.found)) {
+                own.add(
+                        derived
+                                ? new Diagnostic(
+                                        d.code(),
+                                        d.severity(),
+                                        d.file(),
+                                        d.span(),
+                                        "In `" + s.name() + "`: " + d.message(),
+                                        d.related(),
+                                        d.fixes())
+                                : d);
+            }
+        }
+        found.addAll(own.all());
+        return new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName, built, ofBlocks);
+    }
+
+    private static boolean sameTexts(Map<FileId, SourceText> a, Map<FileId, SourceText> b) {
+        if (!a.keySet().equals(b.keySet())) {
+            return false;
+        }
+        for (Map.Entry<FileId, SourceText> e : a.entrySet()) {
+            if (b.get(e.getKey()) != e.getValue()) {
+                return false;
+            }
+        }
+        return true;
+    }
+
+    /**
+     * The drives, variants and families at the top of the file whose text has changed; null where more has changed than the
+     * insides of those.
+     */
+    private static @Nullable Set<Integer> changed(SourceText before, SourceText now) {
+        List<Entry> a = before.tree().entries();
+        List<Entry> b = now.tree().entries();
+        if (a.size() != b.size()) {
+            return null;
+        }
+        Set<Integer> out = new java.util.HashSet<>();
+        for (int i = 0; i < a.size(); i++) {
+            Entry x = a.get(i);
+            Entry y = b.get(i);
+            Name n = Sources.nameOf(x);
+            Name m = Sources.nameOf(y);
+            if (x.getClass() != y.getClass()
+                    || !(n == null ? m == null : m != null && n.text().equals(m.text()))) {
+                return null;
+            }
+            if (x.span().length() == y.span().length()
+                    && before.text()
+                            .regionMatches(
+                                    x.span().start(),
+                                    now.text(),
+                                    y.span().start(),
+                                    x.span().length())) {
+                continue;
+            }
+            if (!(x instanceof Entry.Drive || x instanceof Entry.Variant || x instanceof Entry.Family)) {
+                return null;
+            }
+            out.add(i);
+        }
+        return out;
+    }
+
+    /** What is built of a drive already, if it still holds or holds with another number. */
+    private @Nullable Built again(DriveSource s, SourceText now, Set<Integer> changed, LocalDate today) {
+        Built b = built.get(s.name());
+        if (b == null || b.source.layers().size() != s.layers().size()) {
+            return null;
+        }
+        List<Entry> entries = now.tree().entries();
+        int touched = -1;
+        for (int i : changed) {
+            Entry e = entries.get(i);
+            Name n = Sources.nameOf(e);
+            boolean concerned = n != null && (s.name().equals(n.text()) || s.name().startsWith(n.text() + "."));
+            for (DriveSource.Layer l : s.layers()) {
+                List<Entry> body = e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
+                concerned |= body != null && l.body() == body;
+            }
+            if (concerned) {
+                if (touched >= 0) {
+                    return null;
+                }
+                touched = i;
+            }
+        }
+        if (touched < 0) {
+            return b;
+        }
+        return entries.get(touched) instanceof Entry.Drive ? b.withNumber(touched, now, today) : null;
+    }
+
+    /** Findings about the blocks and names at the top of the file. */
+    private static List<Diagnostic> blocks(
+            SourceText main, Sources sources, Shapes shapes, @Nullable FileAnalysis kept) {
+        if (kept != null) {
+            List<Diagnostic> moved =
+                    new Moved(main.file(), kept.main.tree().entries(), main.tree().entries(), null, 0)
+                            .diagnostics(kept.ofBlocks);
+            return moved;
+        }
+        Problems own = new Problems();
         List<String> blocks = new ArrayList<>();
         for (Entry e : main.tree().entries()) {
             if (e instanceof Entry.Block b) {
@@ -112,31 +256,7 @@ final class FileAnalysis implements Analysis {
         if (!blocks.isEmpty()) {
             DriveBuilder.library(shapes, sources, main.file(), blocks, own);
         }
-        List<DriveAnswer> answers = new ArrayList<>();
-        for (DriveSource s : byName.values()) {
-            Problems p = new Problems();
-            List<Run> runs = new ArrayList<>();
-            for (String c : DriveBuilder.casesInUse(s)) {
-                runs.add(new Run(DriveBuilder.build(shapes, sources, s, c, p, false)));
-            }
-            answers.add(DriveResults.of(s, runs, today, p));
-            boolean derived = s.layers().size() > 1;
-            for (Diagnostic d : p.all()) {
-                own.add(
-                        derived
-                                ? new Diagnostic(
-                                        d.code(),
-                                        d.severity(),
-                                        d.file(),
-                                        d.span(),
-                                        "In `" + s.name() + "`: " + d.message(),
-                                        d.related(),
-                                        d.fixes())
-                                : d);
-            }
-        }
-        found.addAll(own.all());
-        return new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName);
+        return List.copyOf(own.all());
     }
 
     /** The handbook with the method files that a spec uses. */
@@ -386,6 +506,13 @@ final class FileAnalysis implements Analysis {
 
     // ---- method files
 
+    static FileAnalysis handbook(FileId file, String text) {
+        SourceText t = new SourceText(
+                file, text, backcone.engine.parse.Parser.parse(file, text).tree(), List.of());
+        return new FileAnalysis(
+                t, null, Handbook.standard().shapes(), List.of(), List.of(), Map.of(), Map.of(), List.of());
+    }
+
     private static FileAnalysis methodFile(SourceText main, Handbook handbook) {
         List<Diagnostic> found = new ArrayList<>(main.problems());
         LibraryBuilder b = new LibraryBuilder(handbook.shapes().library());
@@ -412,7 +539,7 @@ final class FileAnalysis implements Analysis {
         }
         Problems once = new Problems();
         found.forEach(once::add);
-        return new FileAnalysis(main, null, shapes, sorted(once.all(), main), List.of(), Map.of());
+        return new FileAnalysis(main, null, shapes, sorted(once.all(), main), List.of(), Map.of(), Map.of(), List.of());
     }
 
     // ---- questions
@@ -447,6 +574,28 @@ final class FileAnalysis implements Analysis {
     @Override
     public List<DriveAnswer> drives() {
         return drives;
+    }
+
+    @Override
+    public synchronized Scene scene() {
+        Scene s = scene;
+        if (s == null) {
+            List<Scene.Shown> shown = new ArrayList<>();
+            for (DriveAnswer d : drives) {
+                DriveSource source = byName.get(d.name());
+                Built b = built.get(d.name());
+                if (source != null) {
+                    shown.add(new Scene.Shown(source, d, b == null ? List.of() : b.runs));
+                }
+            }
+            Sources src = sources;
+            Function<FileId, @Nullable String> texts = src != null
+                    ? src::textOf
+                    : f -> f.equals(main.file()) ? main.text() : Handbook.text(f);
+            s = new Scene(main.file(), main.text(), main.tree(), shapes, diagnostics, shown, texts, src);
+            scene = s;
+        }
+        return s;
     }
 
     private record Asked(DriveSource source, String name) {}

@@ -13,20 +13,20 @@ import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
 
 /** Texts below one folder. A link may not lead out of it. */
-final class DiskLoader implements Loader {
+public final class DiskLoader implements Loader {
     private static final long LARGEST = 16L << 20;
     private final Path root;
 
-    DiskLoader(Path root) {
+    public DiskLoader(Path root) {
         this.root = root;
     }
 
-    FileId id(Path file) {
+    public FileId id(Path file) {
         return new FileId(
                 root.relativize(file.toAbsolutePath().normalize()).toString().replace('\\', '/'));
     }
 
-    Path path(FileId file) {
+    public Path path(FileId file) {
         return root.resolve(file.path());
     }
 
@@ -44,7 +44,7 @@ final class DiskLoader implements Loader {
     }
 
     /** Reads a file whole, or says why it can't be read. */
-    static Loaded read(Path file) {
+    public static Loaded read(Path file) {
         try {
             if (!Files.exists(file)) {
                 return new Loaded.Missing();

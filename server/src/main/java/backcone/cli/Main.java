@@ -13,17 +13,26 @@ import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
+import java.util.function.IntSupplier;
 import org.jspecify.annotations.Nullable;
 
 /** The door for people and for CI: {@code backcone COMMAND}. */
 public final class Main {
     private Main() {}
 
-    public static void main(String[] args) {
+    private static IntSupplier server = () -> Status.INTERNAL;
+
+    /** {@code serve} is what the language server does, from its first message to its exit status. */
+    public static void main(String[] args, IntSupplier serve) {
+        server = serve;
         PrintWriter out = writer(FileDescriptor.out, Terminal.out());
         PrintWriter err = writer(FileDescriptor.err, Terminal.err());
         int status = run(args, out, err);
         System.exit(status);
+    }
+
+    static IntSupplier server() {
+        return server;
     }
 
     /** UTF-8, except on a Windows terminal that says it shows something else. */
@@ -46,7 +55,8 @@ public final class Main {
                 new LedgerCommand(),
                 new CompareCommand(),
                 new HistoryCommand(),
-                new RegisterCommand());
+                new RegisterCommand(),
+                new ServeCommand());
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */

@@ -1,8 +1,8 @@
 package backcone.cli;
 
 /** The version of this build, the same as in the build files. */
-final class Version {
-    static final String TEXT = "0.1.0";
+public final class Version {
+    public static final String TEXT = "0.1.0";
 
     private Version() {}
 }

@@ -64,7 +64,7 @@ class ReadyMadeFilesTest {
         Files.writeString(
                 launcher,
                 "#!/bin/sh\nexec '" + Path.of(System.getProperty("java.home"), "bin", "java") + "' -cp '"
-                        + System.getProperty("java.class.path") + "' backcone.cli.Main \"$@\"\n");
+                        + System.getProperty("java.class.path") + "' backcone.Backcone \"$@\"\n");
         assertThat(launcher.toFile().setExecutable(true)).isTrue();
     }
 

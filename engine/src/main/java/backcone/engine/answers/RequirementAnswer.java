@@ -38,6 +38,36 @@ public record RequirementAnswer(
         @Nullable String because,
         @Nullable String fault) {
 
+    /** The same at another place. */
+    public RequirementAnswer at(Span other) {
+        return new RequirementAnswer(
+                id,
+                mesh,
+                rating,
+                member,
+                check,
+                method,
+                edition,
+                caseName,
+                meaning,
+                value,
+                required,
+                upper,
+                comparison,
+                unit,
+                margin,
+                loadReserve,
+                state,
+                file,
+                other,
+                missing,
+                outside,
+                accepted,
+                bands,
+                because,
+                fault);
+    }
+
     /** An input that is not given: where it belongs ({@code head.face_width}) and what it means. */
     public record Missing(String path, String meaning, String kind) {}
 

@@ -44,9 +44,11 @@ public final class Explainer {
 
     public Optional<Explanation> explain(String name) {
         Slot s = graph.find(name);
-        if (s == null) {
-            return Optional.empty();
-        }
+        return s == null ? Optional.empty() : explain(s);
+    }
+
+    /** The same for a value at hand. */
+    public Optional<Explanation> explain(Slot s) {
         graph.demand(s);
         Run run = new Run(graph);
         return Optional.of(of(s, run, new LinkedHashSet<>(), 0));
@@ -155,8 +157,13 @@ public final class Explainer {
                 List.copyOf(from));
     }
 
+    /** One value alone, without what it came from. */
+    public Explanation alone(Slot s, Run run) {
+        return flat(s, run);
+    }
+
     /** The slots named in the part of the equation that was taken, in order of their first use. */
-    private List<Slot> behind(Slot s) {
+    public static List<Slot> behind(Slot s) {
         Set<Slot> out = new LinkedHashSet<>();
         for (Slot.Reach r : s.reachedOrNone()) {
             out.add(r.slot());

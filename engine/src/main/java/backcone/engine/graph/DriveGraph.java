@@ -539,6 +539,17 @@ public final class DriveGraph {
         return out;
     }
 
+    /** Slots that something has asked for. */
+    public Collection<Slot> computedSlots() {
+        Set<Slot> out = new LinkedHashSet<>(owners.values());
+        for (Slot s : origin) {
+            if (s != null) {
+                out.add(s);
+            }
+        }
+        return out;
+    }
+
     /** The values of all inputs as written. */
     public double[] inputValues() {
         double[] v = new double[inputs.size()];

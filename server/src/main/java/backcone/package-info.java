@@ -1,0 +1,5 @@
+/** Where the program starts. */
+@NullMarked
+package backcone;
+
+import org.jspecify.annotations.NullMarked;
