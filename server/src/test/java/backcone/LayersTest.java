@@ -31,6 +31,19 @@ class LayersTest {
             Map.entry(
                     "answers", List.of("text", "syntax", "units", "numeric", "diagnostics", "model", "graph", "eval")),
             Map.entry("explain", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
+            Map.entry(
+                    "editing",
+                    List.of(
+                            "text",
+                            "syntax",
+                            "units",
+                            "diagnostics",
+                            "parse",
+                            "model",
+                            "graph",
+                            "eval",
+                            "answers",
+                            "explain")),
             Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")));
 
     @Test
@@ -106,7 +119,7 @@ class LayersTest {
                 .resideInAPackage("backcone.cli..")
                 .should()
                 .dependOnClassesThat()
-                .resideInAnyPackage("org.eclipse.lsp4j..")
+                .resideInAnyPackage("org.eclipse.lsp4j..", "backcone.lsp..")
                 .check(ALL);
     }
 

@@ -65,8 +65,7 @@ final class Built {
     }
 
     /** With {@code editing} what editors show beside the text is computed too. */
-    static Built of(
-            DriveSource s, SourceText main, Sources sources, Shapes shapes, LocalDate today, boolean editing) {
+    static Built of(DriveSource s, SourceText main, Sources sources, Shapes shapes, LocalDate today, boolean editing) {
         Problems p = new Problems();
         List<Run> runs = new ArrayList<>();
         for (String c : DriveBuilder.casesInUse(s)) {
@@ -125,7 +124,8 @@ final class Built {
         }
         // the same mistakes as before, at the same places
         Span number = new Span(start, start + literal.text().length());
-        if (!problemsIn(base, old.span()).isEmpty() || !problemsIn(main, now.span()).isEmpty()) {
+        if (!problemsIn(base, old.span()).isEmpty()
+                || !problemsIn(main, now.span()).isEmpty()) {
             return null;
         }
         double v = base(typed);

@@ -1,7 +1,6 @@
 package backcone.engine;
 
 import backcone.engine.answers.DriveAnswer;
-import backcone.engine.answers.DriveResults;
 import backcone.engine.answers.Examples;
 import backcone.engine.answers.Explanation;
 import backcone.engine.diagnostics.Code;
@@ -48,6 +47,11 @@ final class FileAnalysis implements Analysis {
     private final List<Diagnostic> ofBlocks;
     private @Nullable Scene scene;
 
+    /** The analysis of the text before, as long as its scene may be wanted, and the entries that differ. */
+    private @Nullable FileAnalysis earlier;
+
+    private @Nullable Set<Integer> since;
+
     private FileAnalysis(
             SourceText main,
             @Nullable Sources sources,
@@ -76,7 +80,8 @@ final class FileAnalysis implements Analysis {
                         "`" + file.path() + "` can't be read: " + u.reason() + ".")
                 : Diagnostic.of(Code.FILE_NOT_FOUND, file, Span.NONE, "There is no file `" + file.path() + "`.");
         SourceText none = new SourceText(file, "", BackconeEngine.empty(), List.of());
-        return new FileAnalysis(none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of(), Map.of(), List.of());
+        return new FileAnalysis(
+                none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of(), Map.of(), List.of());
     }
 
     static FileAnalysis of(SourceText main, Function<FileId, Object> load, Handbook handbook, LocalDate today) {
@@ -137,7 +142,11 @@ final class FileAnalysis implements Analysis {
             }
         }
         found.addAll(own.all());
-        return new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName, built, ofBlocks);
+        FileAnalysis a = new FileAnalysis(main, sources, shapes, sorted(found, main), answers, byName, built, ofBlocks);
+        if (kept != null) {
+            a.follow(kept, java.util.Objects.requireNonNull(changed));
+        }
+        return a;
     }
 
     private static boolean sameTexts(Map<FileId, SourceText> a, Map<FileId, SourceText> b) {
@@ -189,6 +198,22 @@ final class FileAnalysis implements Analysis {
         return out;
     }
 
+    /** Remembers the text before, or what that one remembers where nobody has asked it anything. */
+    private void follow(FileAnalysis before, Set<Integer> changed) {
+        synchronized (before) {
+            if (before.scene != null) {
+                earlier = before;
+                since = changed;
+            } else if (before.earlier != null && before.since != null) {
+                earlier = before.earlier;
+                Set<Integer> both = new java.util.HashSet<>(before.since);
+                both.addAll(changed);
+                since = both;
+            }
+            before.earlier = null;
+        }
+    }
+
     /** What is built of a drive already, if it still holds or holds with another number. */
     private @Nullable Built again(DriveSource s, SourceText now, Set<Integer> changed, LocalDate today) {
         Built b = built.get(s.name());
@@ -200,9 +225,11 @@ final class FileAnalysis implements Analysis {
         for (int i : changed) {
             Entry e = entries.get(i);
             Name n = Sources.nameOf(e);
-            boolean concerned = n != null && (s.name().equals(n.text()) || s.name().startsWith(n.text() + "."));
+            boolean concerned =
+                    n != null && (s.name().equals(n.text()) || s.name().startsWith(n.text() + "."));
             for (DriveSource.Layer l : s.layers()) {
-                List<Entry> body = e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
+                List<Entry> body =
+                        e instanceof Entry.Drive d ? d.body() : e instanceof Entry.Variant v ? v.body() : null;
                 concerned |= body != null && l.body() == body;
             }
             if (concerned) {
@@ -222,9 +249,9 @@ final class FileAnalysis implements Analysis {
     private static List<Diagnostic> blocks(
             SourceText main, Sources sources, Shapes shapes, @Nullable FileAnalysis kept) {
         if (kept != null) {
-            List<Diagnostic> moved =
-                    new Moved(main.file(), kept.main.tree().entries(), main.tree().entries(), null, 0)
-                            .diagnostics(kept.ofBlocks);
+            List<Diagnostic> moved = new Moved(
+                            main.file(), kept.main.tree().entries(), main.tree().entries(), null, 0)
+                    .diagnostics(kept.ofBlocks);
             return moved;
         }
         Problems own = new Problems();
@@ -589,13 +616,24 @@ final class FileAnalysis implements Analysis {
                 }
             }
             Sources src = sources;
-            Function<FileId, @Nullable String> texts = src != null
-                    ? src::textOf
-                    : f -> f.equals(main.file()) ? main.text() : Handbook.text(f);
+            Function<FileId, @Nullable String> texts =
+                    src != null ? src::textOf : f -> f.equals(main.file()) ? main.text() : Handbook.text(f);
             s = new Scene(main.file(), main.text(), main.tree(), shapes, diagnostics, shown, texts, src);
+            FileAnalysis known = earlier;
+            if (known != null && since != null) {
+                Scene old = known.sceneIfAny();
+                if (old != null) {
+                    s.take(old, since);
+                }
+                earlier = null;
+            }
             scene = s;
         }
         return s;
+    }
+
+    private synchronized @Nullable Scene sceneIfAny() {
+        return scene;
     }
 
     private record Asked(DriveSource source, String name) {}

@@ -31,6 +31,15 @@ public final class Main {
         System.exit(status);
     }
 
+    /** A spec that shows what there is. */
+    public static String starter() {
+        try {
+            return StartCommand.text("straight-bevel");
+        } catch (IOException e) {
+            return "";
+        }
+    }
+
     static IntSupplier server() {
         return server;
     }

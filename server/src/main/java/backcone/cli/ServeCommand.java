@@ -12,9 +12,8 @@ final class ServeCommand implements Command {
                 "the language server, for editors",
                 List.of(),
                 List.of(Usage.Option.flag("--stdio", "speak on standard streams; it always does")),
-                List.of(
-                        "It speaks the Language Server Protocol 3.17 on standard input and output; editors start it."
-                                + " `editor-config` holds what to put into the settings of yours."),
+                List.of("It speaks the Language Server Protocol 3.17 on standard input and output; editors start it."
+                        + " `editor-config` holds what to put into the settings of yours."),
                 List.of("backcone serve"));
     }
 

@@ -65,7 +65,9 @@ public final class BackconeServer implements LanguageServer {
         if (p.getRootUri() != null) {
             return p.getRootUri();
         }
-        return p.getRootPath() == null ? null : Uris.uri(Path.of(p.getRootPath()).toAbsolutePath().normalize());
+        return p.getRootPath() == null
+                ? null
+                : Uris.uri(Path.of(p.getRootPath()).toAbsolutePath().normalize());
     }
 
     private void root(@Nullable String uri) {
@@ -111,12 +113,18 @@ public final class BackconeServer implements LanguageServer {
                 false,
                 win != null && Boolean.TRUE.equals(win.getWorkDoneProgress()),
                 dynamicWatch,
-                w != null && w.getInlayHint() != null && Boolean.TRUE.equals(w.getInlayHint().getRefreshSupport()),
-                w != null && w.getCodeLens() != null && Boolean.TRUE.equals(w.getCodeLens().getRefreshSupport()),
+                w != null
+                        && w.getInlayHint() != null
+                        && Boolean.TRUE.equals(w.getInlayHint().getRefreshSupport()),
+                w != null
+                        && w.getCodeLens() != null
+                        && Boolean.TRUE.equals(w.getCodeLens().getRefreshSupport()),
                 t == null
                         || t.getDocumentSymbol() == null
                         || Boolean.TRUE.equals(t.getDocumentSymbol().getHierarchicalDocumentSymbolSupport()),
-                w != null && w.getWorkspaceEdit() != null && Boolean.TRUE.equals(w.getWorkspaceEdit().getDocumentChanges()));
+                w != null
+                        && w.getWorkspaceEdit() != null
+                        && Boolean.TRUE.equals(w.getWorkspaceEdit().getDocumentChanges()));
         return utf8;
     }
 
@@ -138,8 +146,11 @@ public final class BackconeServer implements LanguageServer {
         s.setDocumentHighlightProvider(true);
         s.setDocumentSymbolProvider(true);
         s.setWorkspaceSymbolProvider(true);
-        s.setCodeActionProvider(new CodeActionOptions(
-                List.of(CodeActionKind.QuickFix, CodeActionKind.Refactor, CodeActionKind.RefactorExtract, CodeActionKind.RefactorInline)));
+        s.setCodeActionProvider(new CodeActionOptions(List.of(
+                CodeActionKind.QuickFix,
+                CodeActionKind.Refactor,
+                CodeActionKind.RefactorExtract,
+                CodeActionKind.RefactorInline)));
         s.setCodeLensProvider(new CodeLensOptions(true));
         s.setDocumentFormattingProvider(true);
         s.setDocumentRangeFormattingProvider(true);

@@ -16,6 +16,6 @@ record Client(
         boolean lensRefresh,
         boolean hierarchicalSymbols,
         boolean documentChanges) {
-    static final Client NOTHING = new Client(
-            false, false, false, false, false, false, true, false, false, false, false, false, true, false);
+    static final Client NOTHING =
+            new Client(false, false, false, false, false, false, true, false, false, false, false, false, true, false);
 }

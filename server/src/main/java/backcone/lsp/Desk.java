@@ -61,6 +61,7 @@ final class Desk {
     volatile Settings settings = Settings.USUAL;
     volatile Client can = Client.NOTHING;
     private final LocalDate today;
+    volatile boolean ended;
 
     private record Closed(Folder folder, FileId id, Set<FileId> uses, boolean told) {}
 
@@ -232,6 +233,20 @@ final class Desk {
         synchronized (lock) {
             later.add(r);
             lock.notifyAll();
+        }
+    }
+
+    /** Waits until everything asked so far is answered. */
+    void drain() {
+        CompletableFuture<Void> a = new CompletableFuture<>();
+        CompletableFuture<Void> b = new CompletableFuture<>();
+        later(() -> a.complete(null));
+        answers.execute(() -> b.complete(null));
+        try {
+            a.get(20, TimeUnit.SECONDS);
+            b.get(20, TimeUnit.SECONDS);
+        } catch (Exception e) {
+            fault(e);
         }
     }
 
@@ -426,8 +441,8 @@ final class Desk {
                 out.completeExceptionally(e);
             } catch (Throwable e) {
                 fault(e);
-                out.completeExceptionally(new ResponseErrorException(
-                        new ResponseError(ResponseErrorCode.InternalError, "The server met a fault of its own.", null)));
+                out.completeExceptionally(new ResponseErrorException(new ResponseError(
+                        ResponseErrorCode.InternalError, "The server met a fault of its own.", null)));
             }
         });
         return out;
@@ -445,8 +460,8 @@ final class Desk {
                 out.completeExceptionally(e);
             } catch (Throwable e) {
                 fault(e);
-                out.completeExceptionally(new ResponseErrorException(
-                        new ResponseError(ResponseErrorCode.InternalError, "The server met a fault of its own.", null)));
+                out.completeExceptionally(new ResponseErrorException(new ResponseError(
+                        ResponseErrorCode.InternalError, "The server met a fault of its own.", null)));
             }
         });
         return out;

@@ -31,9 +31,8 @@ final class HandbookFiles {
 
     private static Path cache() {
         String xdg = System.getenv("XDG_CACHE_HOME");
-        Path base = xdg != null && !xdg.isBlank()
-                ? Path.of(xdg)
-                : Path.of(System.getProperty("user.home", "."), ".cache");
+        Path base =
+                xdg != null && !xdg.isBlank() ? Path.of(xdg) : Path.of(System.getProperty("user.home", "."), ".cache");
         return base.resolve("backcone").resolve("texts");
     }
 

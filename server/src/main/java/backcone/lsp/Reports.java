@@ -5,6 +5,7 @@ import backcone.engine.answers.Explanation;
 import backcone.engine.editing.Occurrence;
 import backcone.engine.editing.Scene;
 import backcone.engine.syntax.Entry;
+import backcone.engine.syntax.Name;
 import backcone.engine.syntax.Nodes;
 import backcone.engine.units.Numbers;
 import java.util.ArrayList;
@@ -27,12 +28,18 @@ final class Reports {
         String drive = null;
         for (Entry e : scene.tree.entries()) {
             if (e.span().contains(offset) && (e instanceof Entry.Drive || e instanceof Entry.Variant)) {
-                drive = Nodes.name(e) == null ? null : Nodes.name(e).text();
-                for (Entry x : Nodes.body(e) == null ? List.<Entry>of() : Nodes.body(e)) {
+                Name called = Nodes.name(e);
+                List<Entry> body = Nodes.body(e);
+                drive = called == null ? null : called.text();
+                for (Entry x : body == null ? List.<Entry>of() : body) {
                     if (x instanceof Entry.Rate r
                             && r.span().start() <= offset
-                            && offset <= (r.as() != null ? r.as().span().end() : r.method().span().end())) {
-                        String id = r.mesh().text() + "." + (r.as() == null ? r.method().text() : r.as().text());
+                            && offset
+                                    <= (r.as() != null
+                                            ? r.as().span().end()
+                                            : r.method().span().end())) {
+                        String id = r.mesh().text() + "."
+                                + (r.as() == null ? r.method().text() : r.as().text());
                         Optional<List<Explanation>> all = a.explainRating(drive + "." + id);
                         if (all.isPresent()) {
                             return rating(id, all.get());
@@ -42,10 +49,10 @@ final class Reports {
             }
         }
         Occurrence o = scene.occurrences().at(offset);
-        if (o == null || o.target().slot() == null || drive == null) {
+        if (o == null || o.target().path() == null || drive == null) {
             return null;
         }
-        String name = o.target().slot().path();
+        String name = o.target().path();
         Optional<Explanation> e = a.explain(drive + "." + name);
         if (e.isEmpty()) {
             return null;
@@ -85,7 +92,11 @@ final class Reports {
                 : Double.isNaN(e.value())
                         ? e.status().word()
                         : Numbers.format(e.value(), 6) + (e.unit().isEmpty() ? "" : " " + e.unit());
-        b.append("**").append(e.meaning() == null ? e.name() : plain(e.meaning())).append("** `").append(e.name()).append("`");
+        b.append("**")
+                .append(e.meaning() == null ? e.name() : plain(e.meaning()))
+                .append("** `")
+                .append(e.name())
+                .append("`");
         b.append(" = `").append(shown.replace('`', '\'')).append("`");
         boolean given = e.equation() == null || e.numbers() == null;
         if (!given) {

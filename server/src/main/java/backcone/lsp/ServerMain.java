@@ -33,10 +33,16 @@ public final class ServerMain {
         OutputStream out = new BufferedOutputStream(new FileOutputStream(FileDescriptor.out), 1 << 16);
         // whatever prints by mistake must not come between messages
         System.setOut(System.err);
+        java.util.logging.LogManager.getLogManager().reset();
         return serve(in, out, System.err, Runtime.getRuntime()::halt);
     }
 
     static int serve(InputStream in, OutputStream out, PrintStream log, IntConsumer exit) {
+        return session(in, out, log, exit).ended ? 0 : 1;
+    }
+
+    /** One session, up to the end of its stream. */
+    static Desk session(InputStream in, OutputStream out, PrintStream log, IntConsumer exit) {
         Desk desk = new Desk(log, LocalDate.now());
         BackconeServer server = new BackconeServer(desk, status -> {
             log.flush();
@@ -56,7 +62,8 @@ public final class ServerMain {
         } catch (IOException e) {
             log.println("backcone: " + e);
         }
-        return wire.isEnded() ? 0 : 1;
+        desk.ended = wire.isEnded();
+        return desk;
     }
 
     /** What a client is told of a fault: never a stack trace. */

@@ -31,8 +31,21 @@ final class Stale {
     static boolean isResult(Code c) {
         return States.says(c)
                 || switch (c) {
-                    case MISSING_INPUT, TIGHT, ACCEPTED, ACCEPTANCE_SOON, ACCEPTANCE_NOT_NEEDED, LIMIT_PASSED, CUSTOM_HINT,
-                            NOT_APPLICABLE, FAULT, NO_ROOT, BEYOND_TABLE, IMPOSSIBLE, UNUSED_NAME, DISAGREE, NOT_WHOLE -> true;
+                    case MISSING_INPUT,
+                            TIGHT,
+                            ACCEPTED,
+                            ACCEPTANCE_SOON,
+                            ACCEPTANCE_NOT_NEEDED,
+                            LIMIT_PASSED,
+                            CUSTOM_HINT,
+                            NOT_APPLICABLE,
+                            FAULT,
+                            NO_ROOT,
+                            BEYOND_TABLE,
+                            IMPOSSIBLE,
+                            UNUSED_NAME,
+                            DISAGREE,
+                            NOT_WHOLE -> true;
                     default -> false;
                 };
     }

@@ -100,7 +100,8 @@ final class TextRequests implements TextDocumentService {
                         return new DocumentDiagnosticReport(new RelatedUnchangedDocumentDiagnosticReport(id));
                     }
                     RelatedFullDocumentDiagnosticReport full = new RelatedFullDocumentDiagnosticReport(q.convert()
-                            .diagnostics(desk.findings(q.doc(), q.analysis(), q.doc().whole()), q.lines()));
+                            .diagnostics(
+                                    desk.findings(q.doc(), q.analysis(), q.doc().whole()), q.lines()));
                     full.setResultId(id);
                     return new DocumentDiagnosticReport(full);
                 })
@@ -160,32 +161,33 @@ final class TextRequests implements TextDocumentService {
 
     @Override
     public CompletableFuture<Either<List<CompletionItem>, CompletionList>> completion(CompletionParams p) {
-        return desk.<Either<List<CompletionItem>, CompletionList>>ask(p.getTextDocument().getUri(), q -> {
-                    Scene scene = q.analysis().scene();
-                    Completions.Offer offer = Completions.at(scene, offset(q, p.getPosition()));
-                    Range range = q.lines().range(offer.word());
-                    List<CompletionItem> out = new ArrayList<>();
-                    if (offer.paths()) {
-                        paths(q, range, out);
-                    }
-                    for (Completions.Item i : offer.items()) {
-                        CompletionItem c = new CompletionItem(i.label());
-                        c.setKind(kind(i.sort()));
-                        c.setDetail(i.detail());
-                        c.setSortText(i.order());
-                        boolean snippet = i.snippet() && desk.can.snippets();
-                        c.setInsertTextFormat(snippet ? InsertTextFormat.Snippet : InsertTextFormat.PlainText);
-                        c.setTextEdit(Either.forLeft(new TextEdit(range, snippet ? i.insert() : i.plain())));
-                        c.setFilterText(i.label());
-                        JsonObject data = new JsonObject();
-                        data.addProperty("uri", q.doc().uri);
-                        data.addProperty("sort", i.sort().name());
-                        data.addProperty("about", i.about());
-                        c.setData(data);
-                        out.add(c);
-                    }
-                    return Either.forRight(new CompletionList(false, out));
-                })
+        return desk.<Either<List<CompletionItem>, CompletionList>>ask(
+                        p.getTextDocument().getUri(), q -> {
+                            Scene scene = q.analysis().scene();
+                            Completions.Offer offer = Completions.at(scene, offset(q, p.getPosition()));
+                            Range range = q.lines().range(offer.word());
+                            List<CompletionItem> out = new ArrayList<>();
+                            if (offer.paths()) {
+                                paths(q, range, out);
+                            }
+                            for (Completions.Item i : offer.items()) {
+                                CompletionItem c = new CompletionItem(i.label());
+                                c.setKind(kind(i.sort()));
+                                c.setDetail(i.detail());
+                                c.setSortText(i.order());
+                                boolean snippet = i.snippet() && desk.can.snippets();
+                                c.setInsertTextFormat(snippet ? InsertTextFormat.Snippet : InsertTextFormat.PlainText);
+                                c.setTextEdit(Either.forLeft(new TextEdit(range, snippet ? i.insert() : i.plain())));
+                                c.setFilterText(i.label());
+                                JsonObject data = new JsonObject();
+                                data.addProperty("uri", q.doc().uri);
+                                data.addProperty("sort", i.sort().name());
+                                data.addProperty("about", i.about());
+                                c.setData(data);
+                                out.add(c);
+                            }
+                            return Either.forRight(new CompletionList(false, out));
+                        })
                 .thenApply(r -> r != null ? r : Either.forLeft(new ArrayList<>()));
     }
 
@@ -258,9 +260,8 @@ final class TextRequests implements TextDocumentService {
                     if (o != null) {
                         Target t = o.target();
                         // a word that is given here leads to its declaration; a value used here to where it is given
-                        if (!handbook && t.slot() != null && t.slot().fact() != null && !o.writes()) {
-                            out.add(q.convert()
-                                    .location(t.slot().fact().file(), t.slot().fact().nameSpan()));
+                        if (!handbook && t.givenIn() != null && !o.writes()) {
+                            out.add(q.convert().location(t.givenIn(), t.givenAt()));
                         } else if (t.isSomewhere()) {
                             out.add(q.convert().location(t.file(), t.span()));
                         }
@@ -322,7 +323,8 @@ final class TextRequests implements TextDocumentService {
                     }
                     boolean declaration =
                             p.getContext() == null || p.getContext().isIncludeDeclaration();
-                    for (Map.Entry<FileId, List<Occurrence>> e : everywhere(q, o.target()).entrySet()) {
+                    for (Map.Entry<FileId, List<Occurrence>> e :
+                            everywhere(q, o.target()).entrySet()) {
                         for (Occurrence x : e.getValue()) {
                             if (declaration || !x.declares()) {
                                 out.add(q.convert().location(e.getKey(), x.span()));
@@ -397,9 +399,7 @@ final class TextRequests implements TextDocumentService {
             }
             return Either3.forSecond(new PrepareRenameResult(
                     q.lines().range(o.span()),
-                    q.snapshot()
-                            .text()
-                            .substring(o.span().start(), o.span().end())));
+                    q.snapshot().text().substring(o.span().start(), o.span().end())));
         });
     }
 
@@ -453,17 +453,18 @@ final class TextRequests implements TextDocumentService {
 
     @Override
     public CompletableFuture<List<Either<SymbolInformation, DocumentSymbol>>> documentSymbol(DocumentSymbolParams p) {
-        return desk.<List<Either<SymbolInformation, DocumentSymbol>>>ask(p.getTextDocument().getUri(), q -> {
-                    List<Either<SymbolInformation, DocumentSymbol>> out = new ArrayList<>();
-                    for (Outline.Symbol s : Outline.symbols(q.analysis().scene())) {
-                        if (desk.can.hierarchicalSymbols()) {
-                            out.add(Either.forRight(symbol(s, q.lines())));
-                        } else {
-                            flat(s, null, q, out);
-                        }
-                    }
-                    return out;
-                })
+        return desk.<List<Either<SymbolInformation, DocumentSymbol>>>ask(
+                        p.getTextDocument().getUri(), q -> {
+                            List<Either<SymbolInformation, DocumentSymbol>> out = new ArrayList<>();
+                            for (Outline.Symbol s : Outline.symbols(q.analysis().scene())) {
+                                if (desk.can.hierarchicalSymbols()) {
+                                    out.add(Either.forRight(symbol(s, q.lines())));
+                                } else {
+                                    flat(s, null, q, out);
+                                }
+                            }
+                            return out;
+                        })
                 .thenApply(r -> r != null ? r : new ArrayList<>());
     }
 
@@ -474,7 +475,10 @@ final class TextRequests implements TextDocumentService {
             Desk.Asked q,
             List<Either<SymbolInformation, DocumentSymbol>> out) {
         out.add(Either.forLeft(new SymbolInformation(
-                s.name(), symbolKind(s.sort()), new Location(q.doc().uri, q.lines().range(s.span())), around)));
+                s.name(),
+                symbolKind(s.sort()),
+                new Location(q.doc().uri, q.lines().range(s.span())),
+                around)));
         s.inside().forEach(x -> flat(x, s.name(), q, out));
     }
 
@@ -514,7 +518,9 @@ final class TextRequests implements TextDocumentService {
                     List<FoldingRange> out = new ArrayList<>();
                     for (Outline.Fold f : Outline.folds(q.analysis().scene())) {
                         int a = q.lines().line(f.span().start());
-                        int b = q.lines().line(Math.min(f.span().end(), q.snapshot().text().length()));
+                        int b = q.lines()
+                                .line(Math.min(
+                                        f.span().end(), q.snapshot().text().length()));
                         if (b > a) {
                             FoldingRange r = new FoldingRange(a, f.comment() ? b : b - 1 > a ? b - 1 : b);
                             r.setKind(f.comment() ? FoldingRangeKind.Comment : FoldingRangeKind.Region);
@@ -558,8 +564,8 @@ final class TextRequests implements TextDocumentService {
                         if (e instanceof Entry.Use u) {
                             FileId f = used(q, u);
                             if (f != null) {
-                                DocumentLink l = new DocumentLink(
-                                        q.lines().range(u.pathSpan()), desk.uri(q.doc().folder, f));
+                                DocumentLink l =
+                                        new DocumentLink(q.lines().range(u.pathSpan()), desk.uri(q.doc().folder, f));
                                 l.setTooltip("the file that is used");
                                 out.add(l);
                             }
@@ -597,30 +603,31 @@ final class TextRequests implements TextDocumentService {
     @Override
     public CompletableFuture<Either<SemanticTokens, SemanticTokensDelta>> semanticTokensFullDelta(
             SemanticTokensDeltaParams p) {
-        return desk.<Either<SemanticTokens, SemanticTokensDelta>>ask(p.getTextDocument().getUri(), q -> {
-                    int[] old = q.doc().tokens;
-                    String oldId = q.doc().tokensId;
-                    int[] data = tokens(q, 0, q.snapshot().text().length());
-                    String id = keep(q.doc(), data);
-                    if (old == null || oldId == null || !oldId.equals(p.getPreviousResultId())) {
-                        return Either.forLeft(new SemanticTokens(id, list(data, 0, data.length)));
-                    }
-                    int head = 0;
-                    int most = Math.min(old.length, data.length);
-                    while (head < most && old[head] == data[head]) {
-                        head++;
-                    }
-                    int tail = 0;
-                    while (tail < most - head && old[old.length - 1 - tail] == data[data.length - 1 - tail]) {
-                        tail++;
-                    }
-                    List<SemanticTokensEdit> edits = new ArrayList<>();
-                    if (head < old.length || head < data.length) {
-                        edits.add(new SemanticTokensEdit(
-                                head, old.length - head - tail, list(data, head, data.length - tail)));
-                    }
-                    return Either.forRight(new SemanticTokensDelta(edits, id));
-                })
+        return desk.<Either<SemanticTokens, SemanticTokensDelta>>ask(
+                        p.getTextDocument().getUri(), q -> {
+                            int[] old = q.doc().tokens;
+                            String oldId = q.doc().tokensId;
+                            int[] data = tokens(q, 0, q.snapshot().text().length());
+                            String id = keep(q.doc(), data);
+                            if (old == null || oldId == null || !oldId.equals(p.getPreviousResultId())) {
+                                return Either.forLeft(new SemanticTokens(id, list(data, 0, data.length)));
+                            }
+                            int head = 0;
+                            int most = Math.min(old.length, data.length);
+                            while (head < most && old[head] == data[head]) {
+                                head++;
+                            }
+                            int tail = 0;
+                            while (tail < most - head && old[old.length - 1 - tail] == data[data.length - 1 - tail]) {
+                                tail++;
+                            }
+                            List<SemanticTokensEdit> edits = new ArrayList<>();
+                            if (head < old.length || head < data.length) {
+                                edits.add(new SemanticTokensEdit(
+                                        head, old.length - head - tail, list(data, head, data.length - tail)));
+                            }
+                            return Either.forRight(new SemanticTokensDelta(edits, id));
+                        })
                 .thenApply(r -> r != null ? r : Either.forLeft(new SemanticTokens(new ArrayList<>())));
     }
 
@@ -690,7 +697,8 @@ final class TextRequests implements TextDocumentService {
                         while (head < most && a.charAt(head) == b.charAt(head)) {
                             head++;
                         }
-                        while (tail < most - head && a.charAt(a.length() - 1 - tail) == b.charAt(b.length() - 1 - tail)) {
+                        while (tail < most - head
+                                && a.charAt(a.length() - 1 - tail) == b.charAt(b.length() - 1 - tail)) {
                             tail++;
                         }
                     }
@@ -713,7 +721,8 @@ final class TextRequests implements TextDocumentService {
                             }
                         }
                         InlayHint i = new InlayHint(
-                                q.lines().position(at), Either.forLeft(before == null ? h.label() : "(" + h.label() + ")"));
+                                q.lines().position(at),
+                                Either.forLeft(before == null ? h.label() : "(" + h.label() + ")"));
                         i.setPaddingLeft(true);
                         JsonObject data = new JsonObject();
                         data.addProperty("uri", q.doc().uri);
@@ -785,7 +794,8 @@ final class TextRequests implements TextDocumentService {
                     int uses = 0;
                     List<Location> places = new ArrayList<>();
                     if (o != null) {
-                        for (Map.Entry<FileId, List<Occurrence>> e : everywhere(q, o.target()).entrySet()) {
+                        for (Map.Entry<FileId, List<Occurrence>> e :
+                                everywhere(q, o.target()).entrySet()) {
                             for (Occurrence x : e.getValue()) {
                                 if (!x.declares()) {
                                     uses++;
@@ -799,7 +809,9 @@ final class TextRequests implements TextDocumentService {
                     arguments.add(c.getRange().getStart());
                     arguments.add(places);
                     c.setCommand(new Command(
-                            uses == 0 ? "not used in the files in reach" : "used in " + uses + (uses == 1 ? " place" : " places"),
+                            uses == 0
+                                    ? "not used in the files in reach"
+                                    : "used in " + uses + (uses == 1 ? " place" : " places"),
                             uses == 0 ? "" : "backcone.places",
                             arguments));
                     return c;
@@ -834,7 +846,8 @@ final class TextRequests implements TextDocumentService {
 
     @Override
     public CompletableFuture<List<? extends TextEdit>> onTypeFormatting(DocumentOnTypeFormattingParams p) {
-        return desk.<List<? extends TextEdit>>ask(p.getTextDocument().getUri(), q -> onType(q, p.getPosition(), p.getCh()))
+        return desk.<List<? extends TextEdit>>ask(
+                        p.getTextDocument().getUri(), q -> onType(q, p.getPosition(), p.getCh()))
                 .thenApply(r -> r != null ? r : List.of());
     }
 
@@ -862,9 +875,7 @@ final class TextRequests implements TextDocumentService {
             return List.of(); // it closes a block on its own line
         }
         String want = "  ".repeat(Math.max(0, depth));
-        return text.substring(start, i).equals(want)
-                ? List.of()
-                : List.of(new TextEdit(lines.range(start, i), want));
+        return text.substring(start, i).equals(want) ? List.of() : List.of(new TextEdit(lines.range(start, i), want));
     }
 
     /** Edits of whole lines that bring a text into the canonical layout; none where it has syntax errors. */
@@ -957,8 +968,8 @@ final class TextRequests implements TextDocumentService {
     private static CallHierarchyItem item(Desk.Asked q, Calls.Item i) {
         Location whole = q.convert().location(i.file(), i.span());
         Location name = q.convert().location(i.file(), i.nameSpan());
-        CallHierarchyItem c = new CallHierarchyItem(
-                i.name(), SymbolKind.Property, whole.getUri(), whole.getRange(), name.getRange());
+        CallHierarchyItem c =
+                new CallHierarchyItem(i.name(), SymbolKind.Property, whole.getUri(), whole.getRange(), name.getRange());
         c.setDetail(i.detail());
         JsonObject data = new JsonObject();
         data.addProperty("uri", q.doc().uri);
@@ -986,8 +997,8 @@ final class TextRequests implements TextDocumentService {
         CallHierarchyItem from = p.getItem();
         return calls(from, false).thenApply(l -> {
             List<CallHierarchyOutgoingCall> out = new ArrayList<>();
-            l.forEach(x -> out.add(
-                    new CallHierarchyOutgoingCall(x, new ArrayList<>(List.of(from.getSelectionRange())))));
+            l.forEach(
+                    x -> out.add(new CallHierarchyOutgoingCall(x, new ArrayList<>(List.of(from.getSelectionRange())))));
             return out;
         });
     }

@@ -270,7 +270,9 @@ final class Wire {
 
     private void issue(MessageIssueException e) {
         Message m = e.getRpcMessage();
-        String what = e.getIssues().isEmpty() ? "" : String.valueOf(e.getIssues().get(0).getText());
+        String what = e.getIssues().isEmpty()
+                ? ""
+                : String.valueOf(e.getIssues().get(0).getText());
         if (m instanceof RequestMessage r) {
             answer(r, ResponseErrorCode.InvalidParams, what);
         } else {

@@ -34,7 +34,8 @@ import org.jspecify.annotations.Nullable;
 
 /** Requests about folders, settings and commands. */
 final class WorkspaceRequests implements WorkspaceService {
-    static final List<String> COMMANDS = List.of("backcone.report", "backcone.show", "backcone.places", "backcone.status");
+    static final List<String> COMMANDS =
+            List.of("backcone.report", "backcone.show", "backcone.places", "backcone.status");
     private final Desk desk;
     private final Gson gson = new Gson();
 
@@ -151,11 +152,8 @@ final class WorkspaceRequests implements WorkspaceService {
                 return show(a);
             case "backcone.status":
                 Runtime r = Runtime.getRuntime();
-                return CompletableFuture.completedFuture(Map.of(
-                        "documents",
-                        desk.all().size(),
-                        "memoryMB",
-                        (r.totalMemory() - r.freeMemory()) >> 20));
+                return CompletableFuture.completedFuture(
+                        Map.of("documents", desk.all().size(), "memoryMB", (r.totalMemory() - r.freeMemory()) >> 20));
             default:
                 return CompletableFuture.completedFuture(null);
         }

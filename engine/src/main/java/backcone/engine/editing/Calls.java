@@ -25,10 +25,11 @@ public final class Calls {
     public static @Nullable Item at(Scene scene, int offset) {
         Occurrence o = scene.occurrences().at(offset);
         Spot spot = Spot.at(scene, offset);
-        if (o == null || o.target().slot() == null || spot.graph() == null || spot.drive() == null) {
+        if (o == null || o.target().path() == null || spot.graph() == null || spot.drive() == null) {
             return null;
         }
-        return item(scene, spot.drive(), spot.graph(), o.target().slot());
+        Slot s = spot.graph().find(o.target().path());
+        return s == null ? null : item(scene, spot.drive(), spot.graph(), s);
     }
 
     private static Item item(Scene scene, String drive, DriveGraph g, Slot s) {

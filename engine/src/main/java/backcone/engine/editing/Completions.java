@@ -57,7 +57,14 @@ public final class Completions {
      * {@code ${1|a,b|}}, {@code $0}). {@code plain} is the same for editors without such places. {@code order} sorts.
      */
     public record Item(
-            String label, Sort sort, String detail, String order, String insert, boolean snippet, String plain, String about) {}
+            String label,
+            Sort sort,
+            String detail,
+            String order,
+            String insert,
+            boolean snippet,
+            String plain,
+            String about) {}
 
     /** {@code word}: what the items replace. {@code paths}: the items are files, to be found by the caller. */
     public record Offer(Span word, List<Item> items, boolean paths) {}
@@ -93,7 +100,7 @@ public final class Completions {
         }
         int lineStart = text.lastIndexOf('\n', at - 1) + 1;
         String line = text.substring(lineStart, at);
-        for (Colours.Piece p : Colours.of(text)) {
+        for (Colours.Piece p : scene.pieces()) {
             boolean open = p.sort() == Colours.Sort.STRING
                     && p.start() < at
                     && (at < p.end() || (at == p.end() && !closed(text, p)));
@@ -129,8 +136,7 @@ public final class Completions {
 
     private void put(String label, Sort sort, String detail, String order, String insert, String plain, String about) {
         if (seen.add(label + "/" + sort)) {
-            out.add(new Item(
-                    label, sort, detail, order + label, insert, !insert.equals(plain), plain, about));
+            out.add(new Item(label, sort, detail, order + label, insert, !insert.equals(plain), plain, about));
         }
     }
 
@@ -157,7 +163,11 @@ public final class Completions {
         Names names = new Names(g);
         Matcher dotted = DOTTED.matcher(before);
         if (dotted.find()) {
-            dotted(names, el, dotted.group(1), before.substring(0, dotted.start()).strip());
+            dotted(
+                    names,
+                    el,
+                    dotted.group(1),
+                    before.substring(0, dotted.start()).strip());
             return;
         }
         if (stripped.isEmpty()) {
@@ -216,8 +226,9 @@ public final class Completions {
             for (List<MethodDef> all : library.methods.values()) {
                 for (MethodDef x : all) {
                     if ((kind == null || library.isKind(kind, x.kind())) && rates(x)) {
-                        String edition =
-                                x.body().editions.isEmpty() ? "" : " edition " + x.body().editions.get(0);
+                        String edition = x.body().editions.isEmpty()
+                                ? ""
+                                : " edition " + x.body().editions.get(0);
                         put(
                                 x.name() + edition,
                                 Sort.METHOD,
@@ -252,7 +263,8 @@ public final class Completions {
             put("under", Sort.KEYWORD, "the case", "2");
             return true;
         }
-        if (stripped.matches("\\w+(\\s+\\w+)?\\s+on") && spot.entry() instanceof Entry.Block || stripped.matches("(pinion|wheel|gear|bearing)(\\s+\\w+)?\\s+on")) {
+        if (stripped.matches("\\w+(\\s+\\w+)?\\s+on") && spot.entry() instanceof Entry.Block
+                || stripped.matches("(pinion|wheel|gear|bearing)(\\s+\\w+)?\\s+on")) {
             for (String s : names.elementsOf("shaft")) {
                 put(s, Sort.REFERENCE, "shaft", "1");
             }
@@ -337,7 +349,14 @@ public final class Completions {
                 "material ${1:name} {\n  $0\n}",
                 "material ",
                 "material");
-        put("lubricant", Sort.BLOCK, "an oil of this file", "2", "lubricant ${1:name} {\n  $0\n}", "lubricant ", "lubricant");
+        put(
+                "lubricant",
+                Sort.BLOCK,
+                "an oil of this file",
+                "2",
+                "lubricant ${1:name} {\n  $0\n}",
+                "lubricant ",
+                "lubricant");
         put("let", Sort.KEYWORD, "a name for a value", "2", "let ${1:name} = $0", "let ", "let");
         put(
                 "variant",
@@ -393,9 +412,8 @@ public final class Completions {
             KindDef k = library.kinds.get(b);
             boolean part = Names.isPart(el, b);
             boolean shaft = b.equals("pinion") || b.equals("wheel");
-            String insert = shaft
-                    ? b + " on ${1:shaft} {\n  $0\n}"
-                    : part ? b + " {\n  $0\n}" : b + " ${1:name} {\n  $0\n}";
+            String insert =
+                    shaft ? b + " on ${1:shaft} {\n  $0\n}" : part ? b + " {\n  $0\n}" : b + " ${1:name} {\n  $0\n}";
             put(b, Sort.BLOCK, k == null || k.meaning() == null ? "a block" : k.meaning(), "3", insert, b + " ", b);
         }
         if (el.kind().equals("drive")) {
@@ -427,7 +445,14 @@ public final class Completions {
                     "waive");
         }
         put("let", Sort.KEYWORD, "a name for a value", "5", "let ${1:name} = $0", "let ", "let");
-        put("override", Sort.KEYWORD, "a value of your own for a computed one", "5", "override ${1:name} = ${2:value} because \"${3:reason}\"", "override ", "override");
+        put(
+                "override",
+                Sort.KEYWORD,
+                "a value of your own for a computed one",
+                "5",
+                "override ${1:name} = ${2:value} because \"${3:reason}\"",
+                "override ",
+                "override");
     }
 
     private String placeholder(Decl d, Names names) {
@@ -509,7 +534,14 @@ public final class Completions {
     private void notes() {
         put("per", Sort.KEYWORD, "where the value comes from", "7", "per \"$1\"", "per ", "per");
         put("because", Sort.KEYWORD, "the reason", "7", "because \"$1\"", "because ", "because");
-        put("assumed", Sort.KEYWORD, "an assumption, and why", "8", "assumed because \"$1\"", "assumed because ", "assumed");
+        put(
+                "assumed",
+                Sort.KEYWORD,
+                "an assumption, and why",
+                "8",
+                "assumed because \"$1\"",
+                "assumed because ",
+                "assumed");
         put("measured", Sort.KEYWORD, "a measured value", "8");
     }
 
@@ -580,7 +612,9 @@ public final class Completions {
         }
         if (before.matches(".*:\\s*$")) {
             library.quantities.values().forEach(q -> put(q.name(), Sort.WORD, q.meaning(), "1"));
-            library.choices.values().forEach(c -> put(c.name(), Sort.WORD, c.meaning() == null ? "" : c.meaning(), "2"));
+            library.choices
+                    .values()
+                    .forEach(c -> put(c.name(), Sort.WORD, c.meaning() == null ? "" : c.meaning(), "2"));
             return;
         }
         if (before.matches(".*\\sper\\s+$")) {

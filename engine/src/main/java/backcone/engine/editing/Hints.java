@@ -94,7 +94,10 @@ public final class Hints {
             for (Entry e : scene.tree.entries()) {
                 String drive = e instanceof Entry.Drive d ? d.name().text() : null;
                 Scene.Shown s = drive == null ? null : scene.drive(drive);
-                if (s == null || s.runs().isEmpty() || e.span().end() < from || e.span().start() > to) {
+                if (s == null
+                        || s.runs().isEmpty()
+                        || e.span().end() < from
+                        || e.span().start() > to) {
                     continue;
                 }
                 DriveGraph g = s.runs().get(0).graph;
@@ -135,14 +138,7 @@ public final class Hints {
     }
 
     private static void body(
-            Scene scene,
-            Scene.Shown s,
-            Names names,
-            Element at,
-            List<Entry> body,
-            int from,
-            int to,
-            List<Hint> out) {
+            Scene scene, Scene.Shown s, Names names, Element at, List<Entry> body, int from, int to, List<Hint> out) {
         for (Entry e : body) {
             if (e.span().end() < from || e.span().start() > to) {
                 continue;
@@ -236,8 +232,7 @@ public final class Hints {
         return found[0];
     }
 
-    private static String label(
-            Scene.Shown s, Names names, Element at, List<String> paths, @Nullable Unit written) {
+    private static String label(Scene.Shown s, Names names, Element at, List<String> paths, @Nullable Unit written) {
         StringBuilder b = new StringBuilder();
         String before = "";
         for (String p : paths) {
@@ -279,7 +274,9 @@ public final class Hints {
             if (r != null) {
                 StringBuilder b = new StringBuilder(Hovers.told(r));
                 for (RequirementAnswer other : s.answer().requirements()) {
-                    if (other != r && other.span().equals(r.span()) && other.file().equals(r.file())) {
+                    if (other != r
+                            && other.span().equals(r.span())
+                            && other.file().equals(r.file())) {
                         b.append("\n\n---\n").append(Hovers.told(other));
                     }
                 }
@@ -293,7 +290,10 @@ public final class Hints {
                     var e = new backcone.engine.explain.Explainer(g, scene.texts).explain(about);
                     if (e.isPresent()) {
                         return "**"
-                                + Hovers.escape(e.get().meaning() == null ? about : e.get().meaning())
+                                + Hovers.escape(
+                                        e.get().meaning() == null
+                                                ? about
+                                                : e.get().meaning())
                                 + "**\n\n" + Hovers.explained(e.get());
                     }
                 }

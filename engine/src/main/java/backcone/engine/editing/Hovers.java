@@ -25,8 +25,8 @@ import org.jspecify.annotations.Nullable;
 public final class Hovers {
     private static final int LONGEST = 6000;
     private static final List<String> SI = List.of(
-            "m", "m^2", "m^3", "N", "N*m", "Pa", "W", "m/s", "rad/s", "rad", "s", "kg", "kg/m^3", "K", "1/K", "m^2/s", "Hz",
-            "N/m", "kg*m^2", "m^4", "m/s^2", "Pa*s", "1/m");
+            "m", "m^2", "m^3", "N", "N*m", "Pa", "W", "m/s", "rad/s", "rad", "s", "kg", "kg/m^3", "K", "1/K", "m^2/s",
+            "Hz", "N/m", "kg*m^2", "m^4", "m/s^2", "Pa*s", "1/m");
 
     private Hovers() {}
 
@@ -39,7 +39,7 @@ public final class Hovers {
             String text = of(scene, o, offset);
             return text.isEmpty() ? null : new Hover(o.span(), cut(text));
         }
-        for (Colours.Piece p : Colours.of(scene.text)) {
+        for (Colours.Piece p : scene.pieces()) {
             if (p.start() <= offset && offset < p.end()) {
                 String word = scene.text.substring(p.start(), p.end());
                 String text = p.sort() == Colours.Sort.KEYWORD
@@ -267,7 +267,8 @@ public final class Hovers {
             end--;
         }
         int start = end;
-        while (start > 0 && (Character.isDigit(text.charAt(start - 1)) || "+-.eE".indexOf(text.charAt(start - 1)) >= 0)) {
+        while (start > 0
+                && (Character.isDigit(text.charAt(start - 1)) || "+-.eE".indexOf(text.charAt(start - 1)) >= 0)) {
             start--;
         }
         try {
@@ -306,20 +307,24 @@ public final class Hovers {
         StringBuilder b = new StringBuilder();
         Explanation e = null;
         DriveGraph g = Spot.at(scene, offset).graph();
-        if (t.slot() != null && g != null) {
+        if (t.path() != null && g != null) {
             synchronized (scene) {
-                e = new Explainer(g, scene.texts).explain(t.slot()).orElse(null);
+                e = new Explainer(g, scene.texts).explain(t.path()).orElse(null);
             }
         }
         String meaning = e != null && e.meaning() != null ? e.meaning() : t.meaning();
-        b.append("**").append(escape(meaning == null ? t.name() : meaning)).append("** `").append(e == null ? t.name() : e.name()).append('`');
+        b.append("**")
+                .append(escape(meaning == null ? t.name() : meaning))
+                .append("** `")
+                .append(e == null ? t.name() : e.name())
+                .append('`');
         if (d != null && d.symbol != null && !d.symbol.equals(d.name)) {
             b.append(" `").append(d.symbol).append('`');
         }
         b.append("\n\n");
         if (e != null) {
             b.append(explained(e));
-            b.append(Sensitive.line(g, t.slot(), scene));
+            b.append(Sensitive.line(g, t.path(), scene));
         }
         if (d != null && (e == null || e.status() == Explanation.Status.OPEN)) {
             b.append(input(scene, d));
@@ -361,12 +366,16 @@ public final class Hovers {
                 || e.status() == Explanation.Status.ASSUMED
                 || e.status() == Explanation.Status.MEASURED;
         if (e.equation() != null && !given) {
-            String symbol = e.symbol() != null ? e.symbol() : e.name().substring(e.name().lastIndexOf('.') + 1);
+            String symbol = e.symbol() != null
+                    ? e.symbol()
+                    : e.name().substring(e.name().lastIndexOf('.') + 1);
             StringBuilder eq = new StringBuilder();
             boolean relation = e.status() == Explanation.Status.SOLVED;
             eq.append(relation ? "" : symbol + " = ").append(e.equation());
             if (e.numbers() != null && !e.numbers().equals(e.equation())) {
-                eq.append('\n').append(relation ? "" : " ".repeat(symbol.length()) + " = ").append(e.numbers());
+                eq.append('\n')
+                        .append(relation ? "" : " ".repeat(symbol.length()) + " = ")
+                        .append(e.numbers());
             }
             b.append(code(eq.toString())).append('\n');
         }
@@ -391,16 +400,23 @@ public final class Hovers {
             }
             b.append(". ");
         } else if (d.kind instanceof ValueKind.Choice c) {
-            b.append("one of `").append(String.join("`, `", c.kind().words().keySet())).append("`. ");
+            b.append("one of `")
+                    .append(String.join("`, `", c.kind().words().keySet()))
+                    .append("`. ");
         } else if (d.kind instanceof ValueKind.Reference r) {
             b.append("names a `").append(r.kind()).append("`. ");
         }
         if (d.range != null) {
-            b.append("Range `").append(Labels.text(scene, d.file, d.range.low().span()))
-                    .append("` to `").append(Labels.text(scene, d.file, d.range.high().span())).append("`. ");
+            b.append("Range `")
+                    .append(Labels.text(scene, d.file, d.range.low().span()))
+                    .append("` to `")
+                    .append(Labels.text(scene, d.file, d.range.high().span()))
+                    .append("`. ");
         }
         if (d.how == Entry.Given.DEFAULT && d.value != null) {
-            b.append("Default `").append(Labels.text(scene, d.file, d.value.span())).append("`. ");
+            b.append("Default `")
+                    .append(Labels.text(scene, d.file, d.value.span()))
+                    .append("`. ");
         }
         if (d.neededBecause != null) {
             b.append("Never defaulted: ").append(escape(d.neededBecause)).append(". ");

@@ -25,7 +25,9 @@ final class Labels {
 
     static String percent(double fraction) {
         double p = fraction * 100;
-        String digits = Math.abs(p) >= 99.95 ? String.format(Locale.ROOT, "%.0f", Math.abs(p)) : String.format(Locale.ROOT, "%.1f", Math.abs(p));
+        String digits = Math.abs(p) >= 99.95
+                ? String.format(Locale.ROOT, "%.0f", Math.abs(p))
+                : String.format(Locale.ROOT, "%.1f", Math.abs(p));
         boolean zero = digits.equals("0.0");
         return (zero ? "" : p < 0 ? "\u2212" : "+") + digits + " %";
     }
@@ -58,12 +60,16 @@ final class Labels {
     static String sentence(RequirementAnswer r) {
         StringBuilder b = new StringBuilder("**").append(r.state().word()).append("**");
         if (r.state() == State.OPEN) {
-            return b.append(r.fault() == null ? "" : ": " + Hovers.escape(r.fault())).toString();
+            return b.append(r.fault() == null ? "" : ": " + Hovers.escape(r.fault()))
+                    .toString();
         }
         String unit = r.unit().isEmpty() ? "" : " " + r.unit();
         b.append(": ").append(number(r.value())).append(unit);
         if (!Double.isNaN(r.required())) {
-            b.append(", required ").append(Hovers.escape(r.comparison())).append(' ').append(number(r.required()));
+            b.append(", required ")
+                    .append(Hovers.escape(r.comparison()))
+                    .append(' ')
+                    .append(number(r.required()));
             if (!Double.isNaN(r.upper())) {
                 b.append(" and ").append(number(r.upper()));
             }

@@ -72,8 +72,8 @@ public final class Lenses {
         }
         String text = Labels.counts(all);
         if (least != null && least.rating() != null && least.mesh() != null) {
-            String id = least.id().substring(Math.min(
-                    least.id().length(), (least.mesh() + "." + least.rating() + ".").length()));
+            String id = least.id()
+                    .substring(Math.min(least.id().length(), (least.mesh() + "." + least.rating() + ".").length()));
             text += " \u00B7 governing " + id + ", " + Labels.percent(least.margin());
         }
         return new Lens(at, text, least == null ? null : least.span(), false);

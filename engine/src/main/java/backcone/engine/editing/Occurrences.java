@@ -33,19 +33,57 @@ import org.jspecify.annotations.Nullable;
 
 /** Every name of a text with what it means, by place. */
 public final class Occurrences {
-    private final List<Occurrence> all;
+    private final Scene scene;
+    private final int[] starts;
+    private final @Nullable List<Occurrence>[] parts;
+    private final @Nullable Kept[] kept;
 
-    private Occurrences(List<Occurrence> all) {
-        this.all = all;
+    /** What was found out about an entry at the top of an earlier text in which it was the same. */
+    private record Kept(int[] starts, List<Occurrence> all) {}
+
+    @SuppressWarnings("unchecked")
+    Occurrences(Scene scene) {
+        this.scene = scene;
+        List<Entry> entries = scene.tree.entries();
+        this.starts = new int[entries.size()];
+        for (int i = 0; i < starts.length; i++) {
+            starts[i] = entries.get(i).span().start();
+        }
+        this.parts = new List[starts.length];
+        this.kept = new Kept[starts.length];
     }
 
-    static Occurrences of(Scene scene) {
-        Reader r = new Reader(scene);
-        if (scene.file.isMethodFile()) {
-            r.methodFile();
-        } else {
-            r.drives();
+    /** Takes over what holds still: all entries have their counterparts, and those not in {@code changed} their text. */
+    void take(Occurrences before, Set<Integer> changed) {
+        synchronized (before.scene) {
+            for (int i = 0; i < starts.length && i < before.starts.length; i++) {
+                Entry e = scene.tree.entries().get(i);
+                boolean rests = e instanceof Entry.Variant || e instanceof Entry.Family; // on other entries
+                if (changed.contains(i) || (rests && !changed.isEmpty())) {
+                    continue;
+                }
+                List<Occurrence> known = before.parts[i];
+                kept[i] = known == null ? before.kept[i] : new Kept(before.starts, known);
+            }
         }
+    }
+
+    private List<Occurrence> part(int i) {
+        synchronized (scene) {
+            List<Occurrence> known = parts[i];
+            if (known == null) {
+                Kept k = kept[i];
+                known = k == null ? read(i) : moved(k);
+                parts[i] = known;
+                kept[i] = null;
+            }
+            return known;
+        }
+    }
+
+    private List<Occurrence> read(int i) {
+        Reader r = new Reader(scene);
+        r.entry(scene.tree.entries().get(i));
         r.out.sort(Comparator.comparingInt((Occurrence o) -> o.span().start())
                 .thenComparingInt(o -> o.span().end()));
         List<Occurrence> once = new ArrayList<>(r.out.size());
@@ -54,28 +92,76 @@ public final class Occurrences {
                 once.add(o);
             }
         }
-        return new Occurrences(List.copyOf(once));
+        return once;
+    }
+
+    private List<Occurrence> moved(Kept k) {
+        List<Occurrence> out = new ArrayList<>(k.all.size());
+        for (Occurrence o : k.all) {
+            Target t = o.target();
+            boolean here = t.file().equals(scene.file);
+            boolean given = scene.file.equals(t.givenIn());
+            if (here || given) {
+                t = new Target(
+                        t.sort(),
+                        t.name(),
+                        t.file(),
+                        here ? moved(t.span(), k.starts) : t.span(),
+                        t.decl(),
+                        t.path(),
+                        t.meaning(),
+                        t.givenIn(),
+                        given ? moved(t.givenAt(), k.starts) : t.givenAt());
+            }
+            out.add(new Occurrence(moved(o.span(), k.starts), t, o.declares(), o.writes()));
+        }
+        return out;
+    }
+
+    private Span moved(Span s, int[] before) {
+        int k = java.util.Arrays.binarySearch(before, s.start());
+        k = k >= 0 ? k : -k - 2;
+        int by = k < 0 ? 0 : starts[k] - before[k];
+        return by == 0 ? s : new Span(s.start() + by, s.end() + by);
     }
 
     public List<Occurrence> all() {
-        return all;
+        List<Occurrence> out = new ArrayList<>();
+        for (int i = 0; i < starts.length; i++) {
+            out.addAll(part(i));
+        }
+        return out;
+    }
+
+    /** Names in entries at the top of the file that touch a range. */
+    List<Occurrence> around(int from, int to) {
+        List<Occurrence> out = new ArrayList<>();
+        List<Entry> entries = scene.tree.entries();
+        for (int i = 0; i < starts.length; i++) {
+            Span s = entries.get(i).span();
+            if (s.start() <= to && from <= s.end()) {
+                out.addAll(part(i));
+            }
+        }
+        return out;
     }
 
     /** The name at or just before an offset. */
     public @Nullable Occurrence at(int offset) {
+        List<Occurrence> some = around(offset, offset);
         int lo = 0;
-        int hi = all.size() - 1;
+        int hi = some.size() - 1;
         while (lo < hi) {
             int mid = (lo + hi + 1) >>> 1;
-            if (all.get(mid).span().start() <= offset) {
+            if (some.get(mid).span().start() <= offset) {
                 lo = mid;
             } else {
                 hi = mid - 1;
             }
         }
-        for (int i = lo; i >= 0 && i >= lo - 1 && i < all.size(); i--) {
-            if (all.get(i).span().contains(offset)) {
-                return all.get(i);
+        for (int i = lo; i >= 0 && i >= lo - 1 && i < some.size(); i--) {
+            if (some.get(i).span().contains(offset)) {
+                return some.get(i);
             }
         }
         return null;
@@ -84,9 +170,11 @@ public final class Occurrences {
     /** All places of a thing in this text. */
     public List<Occurrence> of(Target t) {
         List<Occurrence> out = new ArrayList<>();
-        for (Occurrence o : all) {
-            if (o.target().same(t)) {
-                out.add(o);
+        for (int i = 0; i < starts.length; i++) {
+            for (Occurrence o : part(i)) {
+                if (o.target().same(t)) {
+                    out.add(o);
+                }
             }
         }
         return out;
@@ -104,6 +192,13 @@ public final class Occurrences {
             this.file = scene.file;
         }
 
+        private final Map<String, @Nullable DriveGraph> graphs = new HashMap<>();
+
+        /** A graph for as long as an entry is read. */
+        private @Nullable DriveGraph graph(String drive, @Nullable String caseName) {
+            return graphs.computeIfAbsent(drive + "/" + caseName, k -> scene.plainGraph(drive, caseName));
+        }
+
         private void put(Name n, @Nullable Target t, boolean declares, boolean writes) {
             if (t != null && !n.isHole() && n.span().length() > 0) {
                 out.add(new Occurrence(n.span(), t, declares, writes));
@@ -112,8 +207,16 @@ public final class Occurrences {
 
         // ---- drives
 
-        void drives() {
-            for (Entry e : scene.tree.entries()) {
+        void entry(Entry e) {
+            if (file.isMethodFile()) {
+                methodEntry(e);
+            } else {
+                driveFile(e);
+            }
+        }
+
+        private void driveFile(Entry e) {
+            {
                 if (e instanceof Entry.Use u) {
                     use(u);
                 } else if (e instanceof Entry.Drive d) {
@@ -183,8 +286,7 @@ public final class Occurrences {
             if (x instanceof Entry.Block b) {
                 return block(b, e.file());
             } else if (x instanceof Entry.Use u && u.alias() != null) {
-                return Target.of(
-                        Target.Sort.FILE, name, e.file(), u.alias().span(), "the file " + u.path());
+                return Target.of(Target.Sort.FILE, name, e.file(), u.alias().span(), "the file " + u.path());
             } else if (n != null) {
                 Target.Sort sort = x instanceof Entry.Let ? Target.Sort.LET : Target.Sort.DRIVE;
                 String title = x instanceof Entry.Drive d ? d.title() : x instanceof Entry.Variant v ? v.title() : null;
@@ -194,7 +296,7 @@ public final class Occurrences {
         }
 
         private void drive(String name, List<Entry> body) {
-            DriveGraph g = scene.graph(name);
+            DriveGraph g = graph(name, null);
             if (g == null) {
                 return;
             }
@@ -211,7 +313,7 @@ public final class Occurrences {
             }
             for (Scene.Shown s : scene.drives) {
                 if (s.source().name().startsWith(f.name().text() + ".")) {
-                    DriveGraph g = scene.graph(s.source().name());
+                    DriveGraph g = graph(s.source().name(), null);
                     if (g != null) {
                         Names names = new Names(g);
                         for (Entry.Cell c : f.rows().get(0).cells()) {
@@ -238,7 +340,7 @@ public final class Occurrences {
             if (e instanceof Entry.Rate r) {
                 DriveGraph own = g;
                 if (r.under() != null && !r.under().isHole()) {
-                    DriveGraph other = scene.graph(drive, r.under().text());
+                    DriveGraph other = graph(drive, r.under().text());
                     own = other == null ? g : other;
                     Meaning m = names.path(List.of(r.under()), 0, g.drive());
                     put(r.under(), target(m), false, false);
@@ -248,12 +350,17 @@ public final class Occurrences {
                 Element space = there.space(r);
                 MethodDef m = space != null ? space.method() : null;
                 if (m == null) {
-                    List<MethodDef> all = library.methods.getOrDefault(r.method().text(), List.of());
+                    List<MethodDef> all =
+                            library.methods.getOrDefault(r.method().text(), List.of());
                     m = all.isEmpty() ? null : all.get(0);
                 }
                 put(r.method(), m == null ? null : method(m), false, false);
                 if (r.as() != null) {
-                    put(r.as(), Target.of(Target.Sort.BLOCK, r.as().text(), file, r.as().span(), "a rating"), true, false);
+                    put(
+                            r.as(),
+                            Target.of(Target.Sort.BLOCK, r.as().text(), file, r.as().span(), "a rating"),
+                            true,
+                            false);
                 }
                 if (space != null) {
                     body(there, space, r.body());
@@ -292,7 +399,16 @@ public final class Occurrences {
                     Decl d = path(names, at, f.path(), f.value(), true);
                     expr(names, at, f.value(), d);
                 } else if (e instanceof Entry.Let l) {
-                    put(l.name(), Target.of(Target.Sort.LET, l.name().text(), file, l.name().span(), null), true, false);
+                    put(
+                            l.name(),
+                            Target.of(
+                                    Target.Sort.LET,
+                                    l.name().text(),
+                                    file,
+                                    l.name().span(),
+                                    null),
+                            true,
+                            false);
                     expr(names, at, l.value(), null);
                 } else if (e instanceof Entry.FactFor f) {
                     put(f.name(), target(names.path(List.of(f.name()), 0, at)), false, true);
@@ -320,7 +436,8 @@ public final class Occurrences {
                                                     r.name().text(),
                                                     v.decl().file,
                                                     r.name().span(),
-                                                    "another reading of " + v.decl().symbolOrName()),
+                                                    "another reading of "
+                                                            + v.decl().symbolOrName()),
                                             false,
                                             false);
                                 }
@@ -333,13 +450,16 @@ public final class Occurrences {
 
         private void inner(Names names, Element at, Entry.Block b) {
             Element el = names.block(at, b);
-            if (el != null && el.kind().equals(b.head().text()) || library.kinds.containsKey(b.head().text())) {
+            if (el != null && el.kind().equals(b.head().text())
+                    || library.kinds.containsKey(b.head().text())) {
                 kind(b.head());
             } else if (el != null) {
                 KindDef k = library.kinds.get(el.kind());
                 put(
                         b.head(),
-                        k == null ? null : Target.of(Target.Sort.KIND, b.head().text(), k.file(), k.span(), k.meaning()),
+                        k == null
+                                ? null
+                                : Target.of(Target.Sort.KIND, b.head().text(), k.file(), k.span(), k.meaning()),
                         false,
                         false);
             }
@@ -353,8 +473,9 @@ public final class Occurrences {
                                 b.name().span(),
                                 null,
                                 null,
-                                el,
-                                b.title()),
+                                b.title(),
+                                null,
+                                Span.NONE),
                         true,
                         false);
             }
@@ -386,7 +507,11 @@ public final class Occurrences {
         private static Target method(MethodDef m) {
             Name n = Nodes.name(m.syntax());
             return Target.of(
-                    Target.Sort.METHOD, m.name(), m.file(), n == null ? m.syntax().span() : n.span(), m.meaning());
+                    Target.Sort.METHOD,
+                    m.name(),
+                    m.file(),
+                    n == null ? m.syntax().span() : n.span(),
+                    m.meaning());
         }
 
         /** The names of a path; the declaration of the last one is returned. */
@@ -394,9 +519,7 @@ public final class Occurrences {
             Decl last = null;
             for (int i = 0; i < p.names().size(); i++) {
                 boolean end = i == p.names().size() - 1;
-                Meaning m = value != null && end
-                        ? names.given(p.names(), i, at, value)
-                        : names.path(p.names(), i, at);
+                Meaning m = value != null && end ? names.given(p.names(), i, at, value) : names.path(p.names(), i, at);
                 if (m == null && at.isSpace()) {
                     m = names.check(at, p.names(), i);
                 }
@@ -412,7 +535,18 @@ public final class Occurrences {
                 Target.Sort sort = d.role == Decl.Role.LET
                         ? Target.Sort.LET
                         : d.role == Decl.Role.CHECK ? Target.Sort.CHECK : Target.Sort.PROPERTY;
-                return new Target(sort, d.name, d.file, d.nameNode.span(), d, v.slot(), null, d.meaning);
+                backcone.engine.graph.Slot.Fact f =
+                        v.slot() == null ? null : v.slot().fact();
+                return new Target(
+                        sort,
+                        d.name,
+                        d.file,
+                        d.nameNode.span(),
+                        d,
+                        v.slot() == null ? null : v.slot().path(),
+                        d.meaning,
+                        f == null ? null : f.file(),
+                        f == null ? Span.NONE : f.nameSpan());
             } else if (m instanceof Meaning.Block b) {
                 return element(b.element());
             } else if (m instanceof Meaning.Lookup t) {
@@ -436,7 +570,8 @@ public final class Occurrences {
                 KindDef k = library.kinds.get(e.kind());
                 return k == null
                         ? null
-                        : new Target(Target.Sort.KIND, e.name, k.file(), k.span(), null, null, e, k.meaning());
+                        : new Target(
+                                Target.Sort.KIND, e.name, k.file(), k.span(), null, null, k.meaning(), null, Span.NONE);
             }
             Target.Sort sort = e.kind().equals("material") ? Target.Sort.MATERIAL : Target.Sort.BLOCK;
             // the head is `bevel head`: its last word is the name
@@ -451,8 +586,9 @@ public final class Occurrences {
                     named ? new Span(start, head.end()) : head,
                     null,
                     null,
-                    e,
-                    e.title());
+                    e.title(),
+                    null,
+                    Span.NONE);
         }
 
         private static Target word(ChoiceKind kind, String word) {
@@ -565,10 +701,8 @@ public final class Occurrences {
 
         // ---- method files
 
-        private final Map<String, List<Target>> names = new HashMap<>();
-
-        void methodFile() {
-            for (Entry e : scene.tree.entries()) {
+        private void methodEntry(Entry e) {
+            {
                 Map<String, Target> local = new HashMap<>();
                 String kind = e instanceof Entry.Method m
                         ? m.kind().text()
@@ -602,7 +736,12 @@ public final class Occurrences {
         private void declared(Entry top, Map<String, Target> out) {
             Nodes.walk(top, n -> {
                 if (n instanceof Entry.Declaration d) {
-                    Target t = Target.of(Target.Sort.PROPERTY, d.name().text(), file, d.name().span(), d.meaning());
+                    Target t = Target.of(
+                            Target.Sort.PROPERTY,
+                            d.name().text(),
+                            file,
+                            d.name().span(),
+                            d.meaning());
                     out.put(d.name().text(), t);
                     if (d.symbol() != null) {
                         out.put(d.symbol().text(), t);
@@ -610,11 +749,21 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Check c) {
                     out.put(
                             c.name().text(),
-                            Target.of(Target.Sort.CHECK, c.name().text(), file, c.name().span(), c.meaning()));
+                            Target.of(
+                                    Target.Sort.CHECK,
+                                    c.name().text(),
+                                    file,
+                                    c.name().span(),
+                                    c.meaning()));
                 } else if (n instanceof Entry.Table t) {
                     out.put(
                             t.name().text(),
-                            Target.of(Target.Sort.TABLE, t.name().text(), file, t.name().span(), t.meaning()));
+                            Target.of(
+                                    Target.Sort.TABLE,
+                                    t.name().text(),
+                                    file,
+                                    t.name().span(),
+                                    t.meaning()));
                 } else if (n instanceof Entry.Parts p) {
                     for (Name x : p.names()) {
                         out.put(x.text(), Target.of(Target.Sort.BLOCK, x.text(), file, x.span(), null));
@@ -625,19 +774,39 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Part p) {
                     out.put(
                             p.name().text(),
-                            Target.of(Target.Sort.BLOCK, p.name().text(), file, p.name().span(), p.meaning()));
+                            Target.of(
+                                    Target.Sort.BLOCK,
+                                    p.name().text(),
+                                    file,
+                                    p.name().span(),
+                                    p.meaning()));
                 } else if (n instanceof Entry.Role r) {
                     out.put(
                             r.name().text(),
-                            Target.of(Target.Sort.BLOCK, r.name().text(), file, r.name().span(), null));
+                            Target.of(
+                                    Target.Sort.BLOCK,
+                                    r.name().text(),
+                                    file,
+                                    r.name().span(),
+                                    null));
                 } else if (n instanceof Entry.Collect c) {
                     out.put(
                             c.name().text(),
-                            Target.of(Target.Sort.BLOCK, c.name().text(), file, c.name().span(), null));
+                            Target.of(
+                                    Target.Sort.BLOCK,
+                                    c.name().text(),
+                                    file,
+                                    c.name().span(),
+                                    null));
                 } else if (n instanceof Entry.Cases c) {
                     out.put(
                             c.name().text(),
-                            Target.of(Target.Sort.BLOCK, c.name().text(), file, c.name().span(), null));
+                            Target.of(
+                                    Target.Sort.BLOCK,
+                                    c.name().text(),
+                                    file,
+                                    c.name().span(),
+                                    null));
                     for (Name w : c.words()) {
                         out.put(w.text(), Target.of(Target.Sort.BLOCK, w.text(), file, w.span(), null));
                     }
@@ -653,8 +822,9 @@ public final class Occurrences {
                     d.nameNode.span(),
                     d,
                     null,
+                    d.meaning,
                     null,
-                    d.meaning);
+                    Span.NONE);
         }
 
         private static void ofBody(BodyDef b, Map<String, Target> out) {
@@ -712,7 +882,12 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Table t) {
                     put(
                             t.name(),
-                            Target.of(Target.Sort.TABLE, t.name().text(), file, t.name().span(), t.meaning()),
+                            Target.of(
+                                    Target.Sort.TABLE,
+                                    t.name().text(),
+                                    file,
+                                    t.name().span(),
+                                    t.meaning()),
                             true,
                             false);
                     if (t.kind() != null) {
@@ -721,7 +896,12 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Function f) {
                     put(
                             f.name(),
-                            Target.of(Target.Sort.FUNCTION, f.name().text(), file, f.name().span(), f.meaning()),
+                            Target.of(
+                                    Target.Sort.FUNCTION,
+                                    f.name().text(),
+                                    file,
+                                    f.name().span(),
+                                    f.meaning()),
                             true,
                             false);
                     put(f.kind(), quantity(f.kind().text()), false, false);
@@ -730,7 +910,12 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Method m) {
                     put(
                             m.name(),
-                            Target.of(Target.Sort.METHOD, m.name().text(), file, m.name().span(), m.meaning()),
+                            Target.of(
+                                    Target.Sort.METHOD,
+                                    m.name().text(),
+                                    file,
+                                    m.name().span(),
+                                    m.meaning()),
                             true,
                             false);
                     kind(m.kind());
@@ -739,27 +924,47 @@ public final class Occurrences {
                 } else if (n instanceof Entry.Quantity q) {
                     put(
                             q.name(),
-                            Target.of(Target.Sort.QUANTITY, q.name().text(), file, q.name().span(), q.meaning()),
+                            Target.of(
+                                    Target.Sort.QUANTITY,
+                                    q.name().text(),
+                                    file,
+                                    q.name().span(),
+                                    q.meaning()),
                             true,
                             false);
                     put(q.unit(), unit(q.unit()), false, false);
                 } else if (n instanceof Entry.Choice c) {
                     put(
                             c.name(),
-                            Target.of(Target.Sort.CHOICE, c.name().text(), file, c.name().span(), c.meaning()),
+                            Target.of(
+                                    Target.Sort.CHOICE,
+                                    c.name().text(),
+                                    file,
+                                    c.name().span(),
+                                    c.meaning()),
                             true,
                             false);
                     for (Entry.Word w : c.words()) {
                         put(
                                 w.name(),
-                                Target.of(Target.Sort.WORD, w.name().text(), file, w.name().span(), w.meaning()),
+                                Target.of(
+                                        Target.Sort.WORD,
+                                        w.name().text(),
+                                        file,
+                                        w.name().span(),
+                                        w.meaning()),
                                 true,
                                 false);
                     }
                 } else if (n instanceof Entry.Source s) {
                     put(
                             s.name(),
-                            Target.of(Target.Sort.SOURCE, s.name().text(), file, s.name().span(), s.text()),
+                            Target.of(
+                                    Target.Sort.SOURCE,
+                                    s.name().text(),
+                                    file,
+                                    s.name().span(),
+                                    s.text()),
                             true,
                             false);
                 } else if (n instanceof Note.Per p && p.source() != null) {

@@ -42,28 +42,25 @@ public final class Outline {
             Name n = b.name() == null ? b.head() : b.name();
             return n.isHole()
                     ? null
-                    : of(n, b.name() == null ? title(b.title()) : b.head().text() + title(b.title()), b.head().text(), e, inside);
+                    : of(
+                            n,
+                            b.name() == null ? title(b.title()) : b.head().text() + title(b.title()),
+                            b.head().text(),
+                            e,
+                            inside);
         } else if (e instanceof Entry.Rate r) {
             String name = "rate " + r.mesh().text() + (r.as() == null ? "" : " as " + r.as());
-            return new Symbol(name, "by " + r.method(), "rate", e.span(), r.mesh().span(), inside);
+            return new Symbol(
+                    name, "by " + r.method(), "rate", e.span(), r.mesh().span(), inside);
         } else if (e instanceof Entry.Require r) {
-            return new Symbol(line(text, e), "", "require", e.span(), r.subject().span(), List.of());
+            return new Symbol(
+                    line(text, e), "", "require", e.span(), r.subject().span(), List.of());
         } else if (e instanceof Entry.Requirement r) {
             return new Symbol(line(text, e), "", "require", e.span(), r.path().span(), List.of());
         } else if (e instanceof Entry.Accept a) {
             return new Symbol(line(text, e), "", "accept", e.span(), a.path().span(), List.of());
         } else if (e instanceof Entry.Waive a) {
             return new Symbol(line(text, e), "", "accept", e.span(), a.path().span(), List.of());
-        } else if (e instanceof Entry.Fact f) {
-            return depth == 0 || f.path().names().get(0).isHole()
-                    ? null
-                    : new Symbol(
-                            f.path().text(),
-                            shown(text, f.value()),
-                            "fact",
-                            e.span(),
-                            f.path().span(),
-                            List.of());
         } else if (e instanceof Entry.Use u) {
             return new Symbol("use " + u.path(), "", "use", e.span(), u.pathSpan(), List.of());
         }
@@ -116,7 +113,9 @@ public final class Outline {
     private static String line(String text, Entry e) {
         int end = text.indexOf('\n', e.span().start());
         end = end < 0 || end > e.span().end() ? e.span().end() : end;
-        String s = text.substring(e.span().start(), Math.min(end, text.length())).strip().replaceAll("\\s+", " ");
+        String s = text.substring(e.span().start(), Math.min(end, text.length()))
+                .strip()
+                .replaceAll("\\s+", " ");
         int because = s.indexOf(" because ");
         s = because > 0 ? s.substring(0, because) : s;
         return s.length() > 60 ? s.substring(0, 59) + "\u2026" : s.isEmpty() ? "?" : s;
@@ -135,7 +134,9 @@ public final class Outline {
         int lastLine = -5;
         for (var c : scene.tree.comments()) {
             int lineStart = scene.text.lastIndexOf('\n', Math.max(0, c.span().start() - 1)) + 1;
-            boolean alone = scene.text.substring(Math.min(lineStart, c.span().start()), c.span().start()).isBlank();
+            boolean alone = scene.text
+                    .substring(Math.min(lineStart, c.span().start()), c.span().start())
+                    .isBlank();
             if (!alone) {
                 continue;
             }

@@ -8,8 +8,19 @@ import java.util.List;
 public final class Paint {
     /** Classes in the order of the legend; the words are those of the protocol's own list. */
     public static final List<String> TYPES = List.of(
-            "keyword", "number", "string", "comment", "type", "class", "property", "variable", "function", "method",
-            "enumMember", "namespace", "operator");
+            "keyword",
+            "number",
+            "string",
+            "comment",
+            "type",
+            "class",
+            "property",
+            "variable",
+            "function",
+            "method",
+            "enumMember",
+            "namespace",
+            "operator");
 
     public static final List<String> MODIFIERS = List.of("declaration", "readonly", "defaultLibrary");
 
@@ -20,9 +31,9 @@ public final class Paint {
 
     public static List<Stroke> of(Scene scene, int from, int to) {
         List<Stroke> out = new ArrayList<>();
-        List<Occurrence> names = scene.occurrences().all();
+        List<Occurrence> names = scene.occurrences().around(from, to);
         int k = 0;
-        for (Colours.Piece p : Colours.of(scene.text)) {
+        for (Colours.Piece p : scene.pieces()) {
             if (p.end() < from || p.start() > to) {
                 continue;
             }

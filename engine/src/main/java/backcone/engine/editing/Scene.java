@@ -9,11 +9,13 @@ import backcone.engine.graph.DriveSource;
 import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
 import backcone.engine.model.Library;
+import backcone.engine.parse.Colours;
 import backcone.engine.syntax.FileSyntax;
 import backcone.engine.text.FileId;
-import java.util.HashMap;
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import java.util.function.Function;
 import org.jspecify.annotations.Nullable;
 
@@ -30,9 +32,17 @@ public final class Scene {
     public final List<Shown> drives;
     final Function<FileId, @Nullable String> texts;
     final DriveGraph.@Nullable Top top;
-    private final Map<String, DriveGraph> traced = new HashMap<>();
-    private @Nullable Occurrences occurrences;
-    private @Nullable Map<String, Integer> uses;
+    private static final int KEPT = 4;
+    private final Map<String, DriveGraph> traced = new LinkedHashMap<>(8, 0.75f, true) {
+        private static final long serialVersionUID = 1L;
+
+        @Override
+        protected boolean removeEldestEntry(Map.Entry<String, DriveGraph> e) {
+            return size() > KEPT;
+        }
+    };
+    private final Occurrences occurrences;
+    private @Nullable List<Colours.Piece> pieces;
 
     /** A drive with its results; the graphs of its runs may have been built for an earlier text. */
     public record Shown(DriveSource source, DriveAnswer answer, List<Run> runs) {}
@@ -54,6 +64,7 @@ public final class Scene {
         this.drives = drives;
         this.texts = texts;
         this.top = top;
+        this.occurrences = new Occurrences(this);
     }
 
     Library library() {
@@ -77,16 +88,38 @@ public final class Scene {
         if (s == null || around == null) {
             return null;
         }
-        return traced.computeIfAbsent(
-                drive + "/" + caseName,
-                k -> DriveBuilder.build(shapes, around, s.source(), caseName, new Problems(), true));
+        String key = drive + "/" + caseName;
+        DriveGraph g = traced.get(key);
+        if (g == null) {
+            g = DriveBuilder.build(shapes, around, s.source(), caseName, new Problems(), true);
+            traced.put(key, g);
+        }
+        return g;
+    }
+
+    /** The same without the trace, made anew; null for the case that the drive as a whole is read in. */
+    @Nullable
+    DriveGraph plainGraph(String drive, @Nullable String caseName) {
+        Shown s = drive(drive);
+        DriveGraph.Top around = top;
+        return s == null || around == null
+                ? null
+                : DriveBuilder.build(
+                        shapes,
+                        around,
+                        s.source(),
+                        caseName == null ? DriveBuilder.casesInUse(s.source()).get(0) : caseName,
+                        new Problems(),
+                        false);
     }
 
     /** The graph under the case that the drive as a whole is read in. */
     @Nullable
     DriveGraph graph(String drive) {
         Shown s = drive(drive);
-        return s == null ? null : graph(drive, DriveBuilder.casesInUse(s.source()).get(0));
+        return s == null
+                ? null
+                : graph(drive, DriveBuilder.casesInUse(s.source()).get(0));
     }
 
     private @Nullable DriveGraph loose;
@@ -101,12 +134,22 @@ public final class Scene {
     }
 
     /** Every name in the text with what it means. */
-    public synchronized Occurrences occurrences() {
-        Occurrences o = occurrences;
-        if (o == null) {
-            o = Occurrences.of(this);
-            occurrences = o;
+    public Occurrences occurrences() {
+        return occurrences;
+    }
+
+    /** The words of the text as they look. */
+    synchronized List<Colours.Piece> pieces() {
+        List<Colours.Piece> p = pieces;
+        if (p == null) {
+            p = Colours.of(text);
+            pieces = p;
         }
-        return o;
+        return p;
+    }
+
+    /** Takes over what is known of an earlier text of the same file; {@code changed}: the entries that differ. */
+    public void take(Scene before, Set<Integer> changed) {
+        occurrences.take(before.occurrences, changed);
     }
 }

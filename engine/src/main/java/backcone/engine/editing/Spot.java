@@ -64,7 +64,9 @@ record Spot(
                     continue;
                 }
                 at = e;
-                if (e instanceof Entry.Block b && b.body() != null && offset > b.head().span().end()) {
+                if (e instanceof Entry.Block b
+                        && b.body() != null
+                        && offset > b.head().span().end()) {
                     Element inner = new Names(g).block(el, b);
                     if (inner == null) {
                         return new Spot(drive, g, null, rate, e);

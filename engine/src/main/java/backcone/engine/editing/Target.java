@@ -1,7 +1,5 @@
 package backcone.engine.editing;
 
-import backcone.engine.graph.Element;
-import backcone.engine.graph.Slot;
 import backcone.engine.model.Decl;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
@@ -9,7 +7,7 @@ import org.jspecify.annotations.Nullable;
 
 /**
  * What a name means. {@code file} and {@code span} are the name where it is declared; {@link Span#NONE} in a file without a
- * path for what is declared nowhere, such as a unit.
+ * path for what is declared nowhere, such as a unit. {@code path} names the value in its drive. {@code givenIn} and {@code givenAt} are where a drive gives it a value.
  */
 public record Target(
         Sort sort,
@@ -17,9 +15,10 @@ public record Target(
         FileId file,
         Span span,
         @Nullable Decl decl,
-        @Nullable Slot slot,
-        @Nullable Element element,
-        @Nullable String meaning) {
+        @Nullable String path,
+        @Nullable String meaning,
+        @Nullable FileId givenIn,
+        Span givenAt) {
 
     static final FileId NOWHERE = new FileId("");
 
@@ -44,7 +43,7 @@ public record Target(
     }
 
     static Target of(Sort sort, String name, FileId file, Span span, @Nullable String meaning) {
-        return new Target(sort, name, file, span, null, null, null, meaning);
+        return new Target(sort, name, file, span, null, null, meaning, null, Span.NONE);
     }
 
     public boolean isSomewhere() {

@@ -124,7 +124,8 @@ public final class Names {
             }
         } else if (upTo == 1) {
             DriveGraph.TopEntry t = graph.top.find(names.get(0).text());
-            DriveGraph.TopEntry inner = t == null ? null : t.inside().get(names.get(1).text());
+            DriveGraph.TopEntry inner =
+                    t == null ? null : t.inside().get(names.get(1).text());
             return inner == null ? null : new Meaning.Top(inner);
         }
         return null;
@@ -215,7 +216,9 @@ public final class Names {
         }
         e.shape.part.forEach(p -> out.add(p.name().text()));
         for (Decl d : e.shape.decls) {
-            if (d.kind instanceof ValueKind.Reference r && !out.contains(d.name) && r.kind().equals(d.name)) {
+            if (d.kind instanceof ValueKind.Reference r
+                    && !out.contains(d.name)
+                    && r.kind().equals(d.name)) {
                 out.add(d.name);
             }
         }
@@ -241,7 +244,8 @@ public final class Names {
             if (t == null) {
                 continue;
             }
-            if (t.entry() instanceof Entry.Block b && graph.shapes.library.isKind(b.head().text(), kind)) {
+            if (t.entry() instanceof Entry.Block b
+                    && graph.shapes.library.isKind(b.head().text(), kind)) {
                 out.add(n);
             }
             for (Map.Entry<String, DriveGraph.TopEntry> x : t.inside().entrySet()) {
