@@ -285,6 +285,22 @@ class LanguageTest {
     }
 
     @Test
+    void inAnExampleOfAMethodAndInARatingTheUnitPicksAmongTheScalesOfThePair() {
+        assertThat(Specs.method("""
+                source own "own figures"
+                method house for bevel "a method" {
+                  fineness "steps above three" : Ratio = acc_Q in AGMA_Q - 3     per own, derived
+                  example "eight" per own {
+                    accuracy = 8 AGMA_Q
+                    gives fineness = 5
+                  }
+                }
+                """).messages()).isEmpty();
+        assertThat(specs("", RATE.replace("holds", "accuracy = 8 AGMA_Q\n holds")).messages())
+                .contains("A rating by house has no property `accuracy`");
+    }
+
+    @Test
     void moreLoadNeverRaisesAMargin() {
         double before = Double.POSITIVE_INFINITY;
         for (int kw = 1; kw <= 40; kw++) {

@@ -495,10 +495,9 @@ final class Elaborator {
             if (n.isHole()) {
                 return null;
             }
-            Object x = i == 0 && e.isSpace() && e.parent != null ? spaceName(e, n.text()) : own(holder, n.text());
-            if (x instanceof Shape.Spoken sp) {
-                x = bySpoken(holder, sp, value);
-            }
+            Object x = i == 0 && e.isSpace() && e.parent != null
+                    ? spaceName(e, n.text(), value)
+                    : own(holder, n.text(), value);
             boolean last = i == names.size() - 1;
             if (x instanceof Slot s && !last) {
                 x = s.inline != null ? s.inline : s.isGiven() ? graph.compiler.value(s) : x;
@@ -533,30 +532,30 @@ final class Elaborator {
         return null;
     }
 
-    private @Nullable Object spaceName(Element space, String n) {
-        Object x = own(space, n);
+    private @Nullable Object spaceName(Element space, String n, Expr value) {
+        Object x = own(space, n, value);
         if (x == null && space.parent != null) {
-            x = own(space.parent, n);
+            x = own(space.parent, n, value);
             if (x instanceof Slot && !example) {
                 return null;
             }
         }
         if (x == null && example) {
             // an example may speak of the drive around: duty, shafts
-            x = graph.drive.own(n);
+            x = named(graph.drive, n, value);
         }
         return x;
     }
 
-    private @Nullable Object own(Element e, String n) {
-        Object x = e.own(n);
+    private @Nullable Object own(Element e, String n, Expr value) {
+        Object x = named(e, n, value);
         if (x == null && e.space != null && !e.axes.isEmpty()) {
-            x = e.axes.get(e.axes.size() - 1).element().own(n);
+            x = named(e.axes.get(e.axes.size() - 1).element(), n, value);
         }
         Element at = exampleSpace;
         if (x == null && at != null && e.fixed && e.parent == at.parent) {
             Element combo = at.combo(List.of(new Axis(e.collection, e)), graph.nextId);
-            x = combo == null ? null : combo.own(n);
+            x = combo == null ? null : named(combo, n, value);
         }
         if (x == null && n.equals("duty") && graph.activeCase != null) {
             return graph.activeCase;
@@ -585,8 +584,13 @@ final class Elaborator {
         graph.problems.add(near == null ? d : d.withFix("write " + near, n.span(), near));
     }
 
-    /** One spoken name for several scales: the unit of the value picks. */
-    private Object bySpoken(Element holder, Shape.Spoken sp, Expr value) {
+    /** What the element itself calls so; of one name for several scales, the one that the unit of the value picks. */
+    private static @Nullable Object named(Element e, String n, Expr value) {
+        Object x = e.own(n);
+        return x instanceof Shape.Spoken sp ? bySpoken(e, sp, value) : x;
+    }
+
+    private static Object bySpoken(Element holder, Shape.Spoken sp, Expr value) {
         Dimension d = dimension(value);
         if (d != null) {
             for (Shape.Member m : sp.members()) {
