@@ -31,7 +31,10 @@ class LayersTest {
             Map.entry(
                     "answers", List.of("text", "syntax", "units", "numeric", "diagnostics", "model", "graph", "eval")),
             Map.entry("explain", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
-            Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")));
+            Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
+            Map.entry(
+                    "fixes",
+                    List.of("text", "syntax", "units", "diagnostics", "model", "graph", "eval", "answers")));
 
     @Test
     void enginePackagesSeeOnlyWhatIsListed() {
