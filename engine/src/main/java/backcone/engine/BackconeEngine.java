@@ -1,5 +1,7 @@
 package backcone.engine;
 
+import backcone.engine.fixes.Fix;
+import backcone.engine.fixes.Fixes;
 import backcone.engine.parse.Parser;
 import backcone.engine.review.Comparison;
 import backcone.engine.syntax.FileSyntax;
@@ -67,6 +69,14 @@ public final class BackconeEngine implements Engine {
      */
     public Comparison compare(BackconeEngine before, @Nullable FileId oldFile, @Nullable FileId newFile) {
         return Comparer.compare(before, oldFile, this, newFile, today);
+    }
+
+    /**
+     * What can be done at a place of a text that this engine has analysed: fixes first, the best of them in front, then what
+     * says the same otherwise. Every fix that promises a result has been tried over the whole text.
+     */
+    public List<Fix> fixes(Analysis analysis, Span range) {
+        return Fixes.at(new Bench(analysis, this::load, today), range);
     }
 
     Object load(FileId file) {
