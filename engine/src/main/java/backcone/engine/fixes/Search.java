@@ -324,8 +324,7 @@ final class Search {
                 if (y != second.now()) {
                     both.add(second.count(y));
                 }
-                double change = s.cost()
-                        * (Math.abs(Math.log(x / first.now())) + Math.abs(Math.log(y / x / was)));
+                double change = s.cost() * (Math.abs(Math.log(x / first.now())) + Math.abs(Math.log(y / x / was)));
                 change += preference(g, mesh, s.words().get(2), first, x, second, y);
                 out.add(new Candidate(both, null, change));
             }
@@ -335,8 +334,7 @@ final class Search {
     }
 
     /** How much more of a counted nuisance there is than the least there can be. */
-    private double preference(
-            DriveGraph g, Element mesh, String name, Axis first, double x, Axis second, double y) {
+    private double preference(DriveGraph g, Element mesh, String name, Axis first, double x, Axis second, double y) {
         Slot slot = g.find(mesh.path() + "." + name);
         if (slot == null) {
             return 0;
@@ -403,9 +401,10 @@ final class Search {
     // ---- another block of the files in reach
 
     private List<Candidate> swaps(DriveGraph g, Element e, Steps.Step s, Set<String> known) {
-        return new Swaps(subject, library, steps, s).of(g, e, known).stream()
-                .map(w -> new Candidate(List.of(), w, s.cost()))
-                .toList();
+        return new Swaps(subject, library, steps, s)
+                .of(g, e, known).stream()
+                        .map(w -> new Candidate(List.of(), w, s.cost()))
+                        .toList();
     }
 
     // ---- texts
@@ -446,7 +445,10 @@ final class Search {
         }
         StringBuilder b = new StringBuilder();
         for (Axis.Setting s : c.settings) {
-            b.append(b.length() > 0 ? ", " : "").append(name(s.axis().slot())).append(" = ").append(value(s));
+            b.append(b.length() > 0 ? ", " : "")
+                    .append(name(s.axis().slot()))
+                    .append(" = ")
+                    .append(value(s));
             if (s.axis().source() != null) {
                 b.append(" (source dropped)");
             }
@@ -522,9 +524,7 @@ final class Search {
                 }
             }
         }
-        return v.notWorseThan(before)
-                ? new Ranked(c, v, v.failing().size(), v.newHints(before))
-                : null;
+        return v.notWorseThan(before) ? new Ranked(c, v, v.failing().size(), v.newHints(before)) : null;
     }
 
     private @Nullable Verdict unchanged;
@@ -559,7 +559,9 @@ final class Search {
     private @Nullable Ranked verify(Goal goal, Candidate c) {
         Subject s = subject.edited(edits(goal, c));
         Verdict v = Verdict.of(s.drives(), s.diagnostics());
-        return reached(goal, v) && v.notWorseThan(now) ? new Ranked(c, v, v.failing().size(), v.newHints(now)) : null;
+        return reached(goal, v) && v.notWorseThan(now)
+                ? new Ranked(c, v, v.failing().size(), v.newHints(now))
+                : null;
     }
 
     // ---- what came of it
@@ -587,10 +589,7 @@ final class Search {
         List<String> failing = v.failing();
         List<String> open = v.in(State.OPEN);
         if (failing.isEmpty()) {
-            return b.append(
-                            open.isEmpty()
-                                    ? "all requirements met"
-                                    : "all others met, " + open.size() + " open")
+            return b.append(open.isEmpty() ? "all requirements met" : "all others met, " + open.size() + " open")
                     .toString();
         }
         b.append("still short: ");
@@ -620,7 +619,9 @@ final class Search {
             return "beyond all bounds";
         }
         double percent = m * 100;
-        String n = Math.abs(percent) < 10 ? Numbers.format(Math.abs(percent), 2) : Numbers.format(Math.rint(Math.abs(percent)), 6);
+        String n = Math.abs(percent) < 10
+                ? Numbers.format(Math.abs(percent), 2)
+                : Numbers.format(Math.rint(Math.abs(percent)), 6);
         return (percent < 0 ? "−" : "+") + n + " %";
     }
 }

@@ -59,9 +59,11 @@ class SearchTest {
             all.addAll(d.requirements());
         }
         if (m.group(1) != null) {
-            assertThat(all).as(f.title()).anyMatch(r -> r.id().endsWith("." + m.group(1))
-                    && Numbers.format(r.value(), 3).equals(m.group(2))
-                    && r.state().isMet());
+            assertThat(all)
+                    .as(f.title())
+                    .anyMatch(r -> r.id().endsWith("." + m.group(1))
+                            && Numbers.format(r.value(), 3).equals(m.group(2))
+                            && r.state().isMet());
         }
         boolean met = all.stream().allMatch(r -> r.state().isMet());
         assertThat(m.group(4).equals("all requirements met")).as(f.title()).isEqualTo(met);
@@ -143,8 +145,7 @@ class SearchTest {
                         "torque");
         assertThat(steps.all).noneMatch(s -> steps.never.contains(s.name()) || steps.never.contains(s.second()));
         for (String sample : List.of("slat_conveyor.drive", "water_wheel.drive", "sluice_gate.drive")) {
-            Desk desk = Desk.sample(sample)
-                    .but("service_factor = 1.", "service_factor = 2.");
+            Desk desk = Desk.sample(sample).but("service_factor = 1.", "service_factor = 2.");
             for (String check : List.of("bending >= 1", "endurance_strength >= 1", "wear >= 1")) {
                 for (Fix f : searched(desk.at(check))) {
                     String after = desk.after(f).text();
@@ -190,8 +191,8 @@ class SearchTest {
 
     @Test
     void aVariantThatAloneIsShortGetsAFactOfItsOwn() {
-        Desk desk = Desk.sample("sluice_gate.drive")
-                .but("rated.torque         = 70 N*m", "rated.torque         = 160 N*m");
+        Desk desk =
+                Desk.sample("sluice_gate.drive").but("rated.torque         = 70 N*m", "rated.torque         = 160 N*m");
         assertThat(desk.analyse().drives().stream()
                         .filter(d -> d.requirements().stream().anyMatch(r -> r.state() == State.SHORT))
                         .map(DriveAnswer::name))
