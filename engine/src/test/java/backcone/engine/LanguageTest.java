@@ -137,6 +137,60 @@ class LanguageTest {
     }
 
     @Test
+    void aShaftIsRatedSectionBySectionByAMethodForShafts() {
+        String method = HOUSE + """
+            method slender for shaft "a method for shafts" {
+              each section {
+                pull "pull" : Force
+                check stress_left "stress to spare" = 10 MPa * d_sec^2 / pull     per own, derived
+              }
+            }
+            """;
+        Specs d = specs("", """
+                shaft third { section seat { diameter = 20 mm
+                  }
+                  section end { diameter = 10 mm
+                  }
+                }
+                rate third by slender { seat.pull = 1000 N
+                  end.pull = 500 N
+                  stress_left >= 1.5
+                  end.stress_left >= 1 }
+                """).with("house.method", method);
+        assertThat(d.requirement("third.slender.seat.stress_left").value()).isCloseTo(4, within(1e-9));
+        assertThat(d.requirement("third.slender.end.stress_left").value()).isCloseTo(2, within(1e-9));
+    }
+
+    @Test
+    void aReadingIsTakenForEveryCaseOfAnEquation() {
+        String cases = HOUSE.replace("  check warm", """
+                  cases place { near, far }
+                  each place {
+                    reach "reach" : Ratio = 1     per own, derived
+                        reading long_arm = 3      per own, derived
+                    each member {
+                      lift "lift" : Ratio = 10     per own, derived
+                          reading high = 20        per own, derived
+                    }
+                  }
+                  each member {
+                    check reached "reach of both" = near.reach + far.reach + sum(each place : lift)
+                  }
+                  check warm""");
+        String rate = "rate head by house edition 2020 as main { %s reached >= 5 }";
+        assertThat(specs("", rate.formatted(""))
+                        .with("house.method", cases)
+                        .requirement("head.main.pinion.reached")
+                        .value())
+                .isCloseTo(22, within(1e-9));
+        assertThat(specs("", rate.formatted("use long_arm for reach\n use high for lift\n"))
+                        .with("house.method", cases)
+                        .requirement("head.main.pinion.reached")
+                        .value())
+                .isCloseTo(46, within(1e-9));
+    }
+
+    @Test
     void outsideALimitIsNeverClear() {
         RequirementAnswer r = specs("", RATE)
                 .with("house.method", HOUSE.replace("2 m/s", "0.1 m/s"))

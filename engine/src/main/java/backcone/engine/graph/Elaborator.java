@@ -661,7 +661,7 @@ final class Elaborator {
     void rate(Entry.Rate r, FileId file, boolean replace) {
         Element[] holder = new Element[1];
         Object x = graph.scopes.path(r.mesh(), Ctx.of(graph.drive), holder, new int[1]);
-        if (!(x instanceof Element mesh) || !graph.shapes.library.isKind(mesh.kind(), "mesh")) {
+        if (!(x instanceof Element mesh) || !isRated(mesh)) {
             if (!r.mesh().names().get(0).isHole()) {
                 List<String> meshes = new ArrayList<>();
                 graph.allOfKind("mesh").forEach(m -> meshes.add(m.name));
@@ -727,6 +727,15 @@ final class Elaborator {
         mesh.named.put(name, space);
         mesh.ratings.add(space);
         return space;
+    }
+
+    /** Meshes are; of the other blocks, those that some method is for. */
+    private boolean isRated(Element e) {
+        return graph.shapes.library.isKind(e.kind(), "mesh")
+                || !e.isSpace()
+                        && graph.shapes.library.methods.values().stream()
+                                .anyMatch(v -> v.stream()
+                                        .anyMatch(m -> graph.shapes.library.isKind(e.kind(), m.kind()) && hasChecks(m)));
     }
 
     private void noMethod(Entry.Rate r, FileId file, Element mesh, String method) {
@@ -824,6 +833,7 @@ final class Elaborator {
                     slots.add(s);
                 }
             }
+            spread(space, space.shape, List.of(), u.target().text(), slots);
         }
         if (slots.isEmpty()) {
             graph.problems.add(
@@ -846,6 +856,26 @@ final class Elaborator {
                 return;
             }
             s.reading = u.reading().text();
+        }
+    }
+
+    /** An equation within {@code each} stands once for every combination of elements; a reading is taken for all of them. */
+    private void spread(Element space, Shape shape, List<Axis> axes, String name, List<Slot> out) {
+        for (Map.Entry<String, Shape> each : shape.each.entrySet()) {
+            if (graph.scopes.collection(each.getKey(), new Ctx(space, axes, null), new Element[1])
+                    instanceof Val.Group group) {
+                for (Element el : group.elements()) {
+                    List<Axis> more = new ArrayList<>(axes);
+                    more.add(new Axis(each.getKey(), el));
+                    Element combo = space.combo(more, graph.nextId);
+                    if (combo != null) {
+                        if (combo.own(name) instanceof Slot s && !out.contains(s)) {
+                            out.add(s);
+                        }
+                        spread(space, each.getValue(), more, name, out);
+                    }
+                }
+            }
         }
     }
 }

@@ -4,6 +4,7 @@ import backcone.engine.model.MethodDef;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
 import java.util.ArrayList;
+import java.util.Comparator;
 import java.util.HashMap;
 import java.util.LinkedHashMap;
 import java.util.List;
@@ -190,6 +191,7 @@ public final class Element {
         for (Axis x : at) {
             key.add(x.element());
         }
+        key.sort(Comparator.comparingInt(x -> x.id)); // in whatever order they are named, it is one combination
         if (map.containsKey(key)) {
             return map.get(key);
         }
