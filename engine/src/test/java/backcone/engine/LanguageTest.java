@@ -296,7 +296,8 @@ class LanguageTest {
                   }
                 }
                 """).messages()).isEmpty();
-        assertThat(specs("", RATE.replace("holds", "accuracy = 8 AGMA_Q\n holds")).messages())
+        assertThat(specs("", RATE.replace("holds", "accuracy = 8 AGMA_Q\n holds"))
+                        .messages())
                 .contains("A rating by house has no property `accuracy`");
     }
 

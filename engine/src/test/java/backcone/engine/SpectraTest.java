@@ -74,7 +74,8 @@ class SpectraTest {
     void rootUnderThreeLevels() {
         assertThat(problems(
                         "torque = 100 N*m\n required_life = 20000 h\n" + bin("start", "2 %", "180 N*m", "")
-                                + bin("full", "58 %", "100 N*m", "") + bin("idle", "40 %", "30 N*m", "speed = 600 rpm\n"),
+                                + bin("full", "58 %", "100 N*m", "")
+                                + bin("idle", "40 %", "30 N*m", "speed = 600 rpm\n"),
                         """
                         pinion.y_r1 = 0.5
                         gives pinion.U_r  = 0.0499344 within 0.001 %
@@ -83,7 +84,7 @@ class SpectraTest {
                 .isEmpty();
     }
 
-    // ten cycles above the static strength: each counts as the last, and the safety factor is that of the static strength
+    // ten cycles above the static strength: each counts as the last; the static strength sets the safety factor
     @Test
     void aBinAboveTheStaticStrengthFails() {
         assertThat(problems(
