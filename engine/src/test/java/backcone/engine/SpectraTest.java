@@ -84,8 +84,7 @@ class SpectraTest {
                 .isEmpty();
     }
 
-    // ten cycles above the static strength: each counts as the last, and the safety factor is that of the static
-    // strength
+    // ten cycles above the static strength: each counts as the last; the static strength sets the safety factor
     @Test
     void aBinAboveTheStaticStrengthFails() {
         assertThat(problems(
