@@ -93,6 +93,11 @@ final class Folder {
         return id.isHandbook() ? engine.handbook(id) : engine.analyse(id, text, before, newest);
     }
 
+    /** What can be done at a place of a text that was analysed here. */
+    List<backcone.engine.fixes.Fix> fixes(Analysis analysis, backcone.engine.text.Span range) {
+        return engine.fixes(analysis, range);
+    }
+
     /** A file that is not open. */
     Analysis analyse(FileId id) {
         return engine.analyse(id);
