@@ -51,7 +51,9 @@ final class Actions {
         List<Diagnostic> around = p.getContext() == null ? null : p.getContext().getDiagnostics();
         if (around != null) {
             for (Diagnostic d : around) {
-                if (d.getCode() != null && d.getCode().isLeft() && f.codes().contains(d.getCode().getLeft())) {
+                if (d.getCode() != null
+                        && d.getCode().isLeft()
+                        && f.codes().contains(d.getCode().getLeft())) {
                     mended.add(d);
                 }
             }
@@ -72,7 +74,8 @@ final class Actions {
 
     /** Only the kinds that the client asks for. */
     private static List<CodeAction> wanted(List<CodeAction> all, CodeActionParams p) {
-        @Nullable List<String> only = p.getContext() == null ? null : p.getContext().getOnly();
+        @Nullable
+        List<String> only = p.getContext() == null ? null : p.getContext().getOnly();
         if (only == null || only.isEmpty()) {
             return all;
         }
