@@ -57,7 +57,6 @@ class DesignDerivativesTest {
             }
         }
         Map<String, Count> counts = new TreeMap<>();
-        Map<String, Integer> open = new TreeMap<>();
         List<String> wrong = new ArrayList<>();
         for (int k = 0; k < all.size(); k++) {
             SampleGraphs.Named named = all.get(k);
@@ -79,7 +78,6 @@ class DesignDerivativesTest {
             }
         }
         assertThat(wrong).isEmpty();
-        assertThat(open).isEmpty();
         int compared = 0;
         int met = 0;
         for (Map.Entry<String, Count> c : counts.entrySet()) {
@@ -88,7 +86,6 @@ class DesignDerivativesTest {
             met += c.getValue().compared + c.getValue().bent + c.getValue().open;
         }
         assertThat(compared).as(counts.toString()).isGreaterThan(met / 2);
-        System.out.println(counts);
     }
 
     private static void compare(
@@ -117,8 +114,7 @@ class DesignDerivativesTest {
                 }
                 Count c = counts.computeIfAbsent(a.name(), k -> new Count());
                 double y = run.at(a.register());
-                Derivatives d =
-                        derivatives.computeIfAbsent(a.register(), k -> new Derivatives(run, k));
+                Derivatives d = derivatives.computeIfAbsent(a.register(), k -> new Derivatives(run, k));
                 if (Double.isNaN(y)) {
                     c.open++;
                     if (!Double.isNaN(d.by(input))) {
