@@ -21,8 +21,7 @@ import org.junit.jupiter.api.Test;
 
 /** Sensitivities that mechanics and dimensions dictate. */
 class SensitivitiesTest {
-    private static final String PAIR =
-            """
+    private static final String PAIR = """
             drive lift {
               let more = 2
               case rated {
@@ -131,12 +130,14 @@ class SensitivitiesTest {
                 if (Double.isNaN(y)) {
                     continue;
                 }
-                Derivatives d = new Derivatives(run, s.register());
-                assertThat(d.byLoad(g) / y).as(n.name() + ": " + s).isCloseTo(1, within(1e-12));
+                if (run.loadActsOn(s.register())) {
+                    Derivatives d = new Derivatives(run, s.register());
+                    assertThat(d.byLoad(g) / y).as(n.name() + ": " + s).isCloseTo(1, within(1e-12));
+                }
                 List<Sensitivity> all = Sensitivities.of(run, s.register(), 1000);
                 double load = 0;
                 for (Sensitivity x : all) {
-                    load += x.name().endsWith(".power") || x.name().endsWith(".torque") ? x.relative() : 0;
+                    load += x.name().endsWith("power") || x.name().endsWith("torque") ? x.relative() : 0;
                 }
                 assertThat(load).as(n.name() + ": " + s).isCloseTo(1, within(1e-12));
                 met++;

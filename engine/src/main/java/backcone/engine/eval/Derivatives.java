@@ -197,7 +197,7 @@ public final class Derivatives {
                 add(d, a, s, tape.table(b).slope(value[a]));
                 break;
             default:
-                // numbers, truths, and what goes in steps
+            // numbers, truths, and what goes in steps
         }
     }
 

@@ -173,11 +173,7 @@ public final class DriveGraph {
     }
 
     int addInput(
-            double value,
-            Expr.@Nullable Num literal,
-            @Nullable Unit unit,
-            @Nullable Slot slot,
-            @Nullable FileId file) {
+            double value, Expr.@Nullable Num literal, @Nullable Unit unit, @Nullable Slot slot, @Nullable FileId file) {
         int register = tape.emit(Op.INPUT, 0, inputs.size(), 0, value);
         inputs.add(new Input(value, literal, unit, slot, file, register));
         return register;
