@@ -5,6 +5,7 @@ import backcone.engine.Loader;
 import backcone.engine.answers.DriveAnswer;
 import backcone.engine.answers.Explanation;
 import backcone.engine.answers.RequirementAnswer;
+import backcone.engine.answers.Sensitivity;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.diagnostics.Severity;
 import backcone.engine.model.Suggest;
@@ -146,8 +147,26 @@ final class ExplainCommand implements Command {
         } else {
             boolean markdown = format.equals("markdown");
             tree(e, 0, depth, out, markdown);
+            sensitivities(e, out, markdown);
             caution(out, markdown);
         }
+    }
+
+    /** What the value hangs on most. */
+    private static void sensitivities(Explanation e, PrintWriter out, boolean markdown) {
+        if (e.sensitivities().isEmpty()) {
+            return;
+        }
+        StringBuilder b = new StringBuilder();
+        for (Sensitivity s : e.sensitivities()) {
+            b.append(b.length() == 0 ? "most sensitive to: " : ", ")
+                    .append(markdown ? "`" + s.name() + "`" : s.name())
+                    .append(s.sign() < 0 ? " −" : " +")
+                    .append(backcone.engine.units.Numbers.format(Math.abs(s.relative()), 3))
+                    .append(" %");
+        }
+        out.println();
+        out.println(b.append(" (for 1 % more)"));
     }
 
     private void caution(PrintWriter out, boolean markdown) {
@@ -316,6 +335,19 @@ final class ExplainCommand implements Command {
             }
         }
         g.writeEndArray();
+        if (!e.sensitivities().isEmpty()) {
+            g.writeArrayFieldStart("sensitivities");
+            for (Sensitivity s : e.sensitivities()) {
+                g.writeStartObject();
+                g.writeStringField("name", s.name());
+                JsonReport.number(g, "relative", s.relative());
+                JsonReport.number(g, "written", s.written());
+                g.writeStringField("unit", s.unit());
+                g.writeStringField("file", s.file().path());
+                g.writeEndObject();
+            }
+            g.writeEndArray();
+        }
         g.writeEndObject();
     }
 }

@@ -224,6 +224,7 @@ class CommandsTest {
         Ran one = run("explain", "--format", "json", f, "head.lewis_buckingham.wear");
         assertThat(one.status()).as(one.err()).isZero();
         valid("explain.schema.json", one.out());
+        assertThat(one.out()).containsOnlyOnce("\"sensitivities\"");
         Ran all = run("explain", "--format", "json", f, "head.lewis_buckingham");
         assertThat(all.status()).isZero();
         valid("explain.schema.json", all.out());
@@ -243,6 +244,18 @@ class CommandsTest {
                     .out();
             assertThat(out).contains("Given", "Computed, in order", "Required", "required >= 1", Caution.TEXT);
         }
+    }
+
+    @Test
+    void anExplanationEndsWithTheNumbersItHangsOnMost() throws IOException {
+        String f = file("a.drive", bevel());
+        String text = run("explain", f, "head.wheel.torque").out();
+        assertThat(text).containsPattern("most sensitive to: (\\S+ [+−]1 %(, )?){3} \\(for 1 % more\\)");
+        assertThat(run("explain", "--format", "markdown", f, "head.wheel.torque")
+                        .out())
+                .contains("most sensitive to: `");
+        // a number that is written hangs on nothing else
+        assertThat(run("explain", f, "head.pinion.teeth").out()).doesNotContain("most sensitive");
     }
 
     @Test

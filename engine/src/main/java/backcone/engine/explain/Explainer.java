@@ -2,6 +2,8 @@ package backcone.engine.explain;
 
 import backcone.engine.answers.Explanation;
 import backcone.engine.answers.Explanation.Status;
+import backcone.engine.answers.Sensitivities;
+import backcone.engine.answers.Sensitivity;
 import backcone.engine.answers.Why;
 import backcone.engine.eval.Run;
 import backcone.engine.graph.DriveBuilder;
@@ -31,6 +33,7 @@ import org.jspecify.annotations.Nullable;
 /** Traces values back to what was given, with the text of every equation and the numbers put in. */
 public final class Explainer {
     private static final int DEEPEST = 60;
+    private static final int SENSITIVITIES = 3;
     private final DriveGraph graph;
     private final Function<FileId, @Nullable String> texts;
     private final Library library;
@@ -51,7 +54,14 @@ public final class Explainer {
     public Optional<Explanation> explain(Slot s) {
         graph.demand(s);
         Run run = new Run(graph);
-        return Optional.of(of(s, run, new LinkedHashSet<>(), 0));
+        Explanation e = of(s, run, new LinkedHashSet<>(), 0);
+        return Optional.of(with(e, e.from(), e.remark(), sensitivities(s, run)));
+    }
+
+    /** None for a number that is written itself. */
+    private static List<Sensitivity> sensitivities(Slot s, Run run) {
+        List<Sensitivity> all = Sensitivities.of(run, s.register(), SENSITIVITIES);
+        return all.stream().allMatch(x -> x.name().equals(s.path())) ? List.of() : all;
     }
 
     /** Every value behind the checks of a rating, in calculation order: what is computed after what it rests on. */
@@ -139,6 +149,11 @@ public final class Explainer {
     }
 
     private static Explanation with(Explanation e, List<Explanation> from, @Nullable String remark) {
+        return with(e, from, remark, e.sensitivities());
+    }
+
+    private static Explanation with(
+            Explanation e, List<Explanation> from, @Nullable String remark, List<Sensitivity> sensitivities) {
         return new Explanation(
                 e.name(),
                 e.value(),
@@ -154,7 +169,8 @@ public final class Explainer {
                 remark,
                 e.file(),
                 e.span(),
-                List.copyOf(from));
+                List.copyOf(from),
+                sensitivities);
     }
 
     /** One value alone, without what it came from. */
@@ -227,6 +243,7 @@ public final class Explainer {
                 remark,
                 fact != null ? fact.file() : d.file,
                 fact != null ? fact.span() : d.span,
+                List.of(),
                 List.of());
     }
 

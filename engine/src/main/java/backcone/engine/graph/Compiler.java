@@ -165,7 +165,7 @@ final class Compiler {
         for (Note.Reading r : s.decl.readings) {
             Val other = coerce(s, eval(r.value(), ctx, f), r.value());
             if (other instanceof Val.Num m) {
-                int sw = graph.addInput(0, null, null);
+                int sw = graph.addInput(0, null, null, s, null);
                 graph.openPoints.add(new DriveGraph.OpenPoint(s, r.name().text(), graph.tape.b(sw)));
                 register = graph.tape.emit(Op.SELECT, sw, m.register(), register, 0);
             }
@@ -680,7 +680,7 @@ final class Compiler {
             return new Val.Num(0, d, f.drive ? Double.NaN : v);
         }
         if (f.drive) {
-            return new Val.Num(graph.addInput(v, n, unit), d, Double.NaN);
+            return new Val.Num(graph.addInput(v, n, unit, f.slot, f.file), d, Double.NaN);
         }
         return new Val.Num(constant(v), d, v);
     }

@@ -81,10 +81,17 @@ public final class DriveGraph {
     /** A top-level entry; a namespace of a {@code use … as} has several. */
     public record TopEntry(FileId file, Entry entry, Map<String, TopEntry> inside) {}
 
+    /**
+     * A number that may be replaced. {@code slot} is the value in whose text it stands, {@code file} that text; a switch
+     * between readings has no literal.
+     */
     public record Input(
             double value,
             Expr.@Nullable Num literal,
-            @Nullable Unit unit) {}
+            @Nullable Unit unit,
+            @Nullable Slot slot,
+            @Nullable FileId file,
+            int register) {}
 
     /** Another reading of an equation, switched by an input. */
     public record OpenPoint(Slot slot, String reading, int input) {}
@@ -165,9 +172,11 @@ public final class DriveGraph {
         return new FileId("");
     }
 
-    int addInput(double value, Expr.@Nullable Num literal, @Nullable Unit unit) {
-        inputs.add(new Input(value, literal, unit));
-        return tape.emit(Op.INPUT, 0, inputs.size() - 1, 0, value);
+    int addInput(
+            double value, Expr.@Nullable Num literal, @Nullable Unit unit, @Nullable Slot slot, @Nullable FileId file) {
+        int register = tape.emit(Op.INPUT, 0, inputs.size(), 0, value);
+        inputs.add(new Input(value, literal, unit, slot, file, register));
+        return register;
     }
 
     int load() {

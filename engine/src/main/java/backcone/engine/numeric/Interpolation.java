@@ -66,6 +66,49 @@ public final class Interpolation {
         return between(key, i);
     }
 
+    /**
+     * The rows between which the value at {@code key} is read: {@code i} for rows i and i + 1; at a row's own key the rows
+     * above it, at the last those below. −1 where the value does not move with the key: steps, listed keys only, held
+     * ends.
+     */
+    public int segment(double key) {
+        int n = keys.length;
+        if (Double.isNaN(key) || n < 2 || between == Between.EXACT || between == Between.STEP) {
+            return -1;
+        }
+        if (key < keys[0]) {
+            return below == Beyond.HOLD ? -1 : 0;
+        }
+        if (key > keys[n - 1]) {
+            return above == Beyond.HOLD ? -1 : n - 2;
+        }
+        return Math.min(index(key), n - 2);
+    }
+
+    /** The derivative of {@link #at} by the key, in the table's own units; NaN where the table may not be read. */
+    public double slope(double key) {
+        double y = at(key);
+        if (Double.isNaN(y)) {
+            return Double.NaN;
+        }
+        int i = segment(key);
+        if (i < 0) {
+            return 0;
+        }
+        double x0 = keys[i];
+        double x1 = keys[i + 1];
+        double y0 = values[i];
+        double y1 = values[i + 1];
+        switch (between) {
+            case INVERSE:
+                return -(y1 - y0) / (1 / x1 - 1 / x0) / (key * key);
+            case LOGLOG:
+                return y / key * Math.log(y1 / y0) / Math.log(x1 / x0);
+            default:
+                return (y1 - y0) / (x1 - x0);
+        }
+    }
+
     /** A key that differs from a row's by rounding only is that row's. */
     private double near(double key, int i) {
         return Math.abs(key - keys[i]) <= 1e-9 * Math.abs(keys[i]) ? values[i] : Double.NaN;
