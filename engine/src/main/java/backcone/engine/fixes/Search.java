@@ -41,9 +41,9 @@ final class Search {
     private final Steps steps = Steps.standard();
     private final Verdict now;
 
-    Search(Subject subject) {
+    Search(Subject subject, Trial trial) {
         this.subject = subject;
-        this.trial = new Trial(subject);
+        this.trial = trial;
         this.library = subject.shapes().library();
         this.now = Verdict.of(subject.drives(), subject.diagnostics());
     }
@@ -119,10 +119,14 @@ final class Search {
         return out;
     }
 
+    private static boolean reached(Goal goal, RequirementAnswer r) {
+        return goal.clear ? r.state() == State.CLEAR : r.state().isMet();
+    }
+
     private static boolean reached(Goal goal, Verdict v) {
         for (String id : goal.requirements) {
             RequirementAnswer r = v.requirements.get(id);
-            if (r == null || !(goal.clear ? r.state() == State.CLEAR : r.state().isMet())) {
+            if (r == null || !reached(goal, r)) {
                 return false;
             }
         }
@@ -511,6 +515,12 @@ final class Search {
         Verdict v = new Verdict();
         for (String d : goal.drives) {
             trial.run(d, values, v);
+            for (String id : goal.requirements) {
+                RequirementAnswer r = v.requirements.get(id);
+                if (r != null && !reached(goal, r)) {
+                    return null;
+                }
+            }
         }
         if (!reached(goal, v)) {
             return null;
