@@ -34,7 +34,7 @@ class LayersTest {
             Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
             Map.entry(
                     "fixes",
-                    List.of("text", "syntax", "units", "diagnostics", "model", "graph", "eval", "answers")));
+                    List.of("text", "syntax", "parse", "units", "diagnostics", "model", "graph", "eval", "answers")));
 
     @Test
     void enginePackagesSeeOnlyWhatIsListed() {

@@ -99,7 +99,9 @@ record Axis(
             }
             case LIST -> {
                 TreeSet<Double> all = new TreeSet<>();
-                Unit u = step.words().get(1).equals("1") ? null : unit(step.words().get(1));
+                Unit u = step.words().get(1).equals("1")
+                        ? null
+                        : unit(step.words().get(1));
                 for (int i = 2; i < step.words().size(); i++) {
                     Double v = converted(step.number(i), u);
                     if (v != null) {

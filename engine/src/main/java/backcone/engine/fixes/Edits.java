@@ -29,7 +29,8 @@ final class Edits {
             return new TextEdit(file, at, other);
         }
         int blanks = Math.max(2, after - gap - grown);
-        return new TextEdit(file, new Span(at.start(), after), other + text.substring(at.end(), gap) + " ".repeat(blanks));
+        return new TextEdit(
+                file, new Span(at.start(), after), other + text.substring(at.end(), gap) + " ".repeat(blanks));
     }
 
     /** Another number in the unit as written. */
@@ -110,7 +111,10 @@ final class Edits {
             String in = indent(text, block.start());
             StringBuilder b = new StringBuilder(" {");
             lines.forEach(l -> b.append(nl).append(in).append("  ").append(l));
-            return new TextEdit(file, new Span(end, end), b.append(nl).append(in).append('}').toString());
+            return new TextEdit(
+                    file,
+                    new Span(end, end),
+                    b.append(nl).append(in).append('}').toString());
         }
         String in = indent(text, block.start());
         int start = lineStart(text, brace);

@@ -32,6 +32,8 @@ public final class Fixes {
         out.addAll(new Conversions(subject).at(range));
         out.addAll(new Lets(subject).at(range));
         out.addAll(bars.deviations(range));
+        Tidy tidy = new Tidy(subject);
+        out.replaceAll(tidy::of);
         return out;
     }
 
@@ -51,7 +53,9 @@ public final class Fixes {
         Matcher word = QUOTED.matcher(d.message().substring(0, m.start()));
         while (word.find()) {
             int at = there.indexOf(word.group(1));
-            if (at >= 0 && there.indexOf(word.group(1), at + 1) < 0 && !word.group(1).equals(meant)) {
+            if (at >= 0
+                    && there.indexOf(word.group(1), at + 1) < 0
+                    && !word.group(1).equals(meant)) {
                 int from = d.span().start() + at;
                 Span span = new Span(from, from + word.group(1).length());
                 return new Fix(

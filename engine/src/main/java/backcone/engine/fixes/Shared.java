@@ -35,7 +35,9 @@ final class Shared {
         if (top) {
             moved(block, out);
             twice(block, out);
-        } else if (block.name() == null && block.on() == null && libraries(block).size() > 0) {
+        } else if (block.name() == null
+                && block.on() == null
+                && libraries(block).size() > 0) {
             referenced(block, out);
             named(block, out);
         }
@@ -90,8 +92,7 @@ final class Shared {
                         "refer to `" + e.getKey() + "`, which says the same",
                         Fix.Kind.REWRITE,
                         false,
-                        List.of(new TextEdit(
-                                subject.file(), block.span(), block.head() + " = " + e.getKey())),
+                        List.of(new TextEdit(subject.file(), block.span(), block.head() + " = " + e.getKey())),
                         List.of()));
             }
         }
@@ -105,11 +106,14 @@ final class Shared {
                 continue;
             }
             List<TextEdit> edits = new ArrayList<>();
-            edits.add(new TextEdit(
-                    subject.file(), block.span(), block.head() + " = " + lib.getValue() + name));
+            edits.add(new TextEdit(subject.file(), block.span(), block.head() + " = " + lib.getValue() + name));
             edits.add(appended(lib.getKey(), text, outdented(block, name)));
             out.add(new Fix(
-                    "move to " + lib.getKey().path() + " as `" + name + "`", Fix.Kind.EXTRACT, false, edits, List.of()));
+                    "move to " + lib.getKey().path() + " as `" + name + "`",
+                    Fix.Kind.EXTRACT,
+                    false,
+                    edits,
+                    List.of()));
         }
     }
 
@@ -126,7 +130,9 @@ final class Shared {
             List<TextEdit> edits = new ArrayList<>();
             edits.add(removed(block));
             edits.add(appended(
-                    lib.getKey(), text, subject.text().substring(block.span().start(), block.span().end())));
+                    lib.getKey(),
+                    text,
+                    subject.text().substring(block.span().start(), block.span().end())));
             out.add(new Fix(
                     "move `" + block.name() + "` to " + lib.getKey().path(),
                     Fix.Kind.EXTRACT,
@@ -165,7 +171,8 @@ final class Shared {
         for (Entry e : b.body() == null ? List.<Entry>of() : b.body()) {
             String t = e instanceof Entry.Fact f
                     ? f.path().text() + " = "
-                            + text.substring(f.value().span().start(), f.value().span().end())
+                            + text.substring(
+                                    f.value().span().start(), f.value().span().end())
                     : text.substring(e.span().start(), e.span().end());
             out.add(t.replaceAll("\\s+", " "));
         }

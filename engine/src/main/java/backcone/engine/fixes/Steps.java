@@ -16,9 +16,7 @@ final class Steps {
     record Step(Way way, String kind, String name, String second, double cost, List<String> words) {
         double number(int i) {
             String w = words.get(i);
-            return w.endsWith("%")
-                    ? Double.parseDouble(w.substring(0, w.length() - 1)) / 100
-                    : Double.parseDouble(w);
+            return w.endsWith("%") ? Double.parseDouble(w.substring(0, w.length() - 1)) / 100 : Double.parseDouble(w);
         }
 
         int count(int i) {

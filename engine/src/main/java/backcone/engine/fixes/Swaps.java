@@ -54,7 +54,8 @@ final class Swaps {
             }
             for (Map.Entry<String, Entry.Block> other : all.entrySet()) {
                 if (other.getValue() != was
-                        && library.isKind(other.getValue().head().text(), was.head().text())
+                        && library.isKind(
+                                other.getValue().head().text(), was.head().text())
                         && fits(was, other.getValue())) {
                     out.add(new Swap(slot, p.span(), other.getKey()));
                 }
@@ -92,12 +93,11 @@ final class Swaps {
             }
             Expr a = value(was, w);
             Expr b = value(other, w);
-            boolean ok =
-                    switch (how) {
-                        case "same" -> a != null && b != null && text(was, a).equals(text(other, b));
-                        case "keep" -> a == null ? b == null : b != null && text(was, a).equals(text(other, b));
-                        default -> higher(a, b);
-                    };
+            boolean ok = switch (how) {
+                case "same" -> a != null && b != null && text(was, a).equals(text(other, b));
+                case "keep" -> a == null ? b == null : b != null && text(was, a).equals(text(other, b));
+                default -> higher(a, b);
+            };
             if (!ok) {
                 return false;
             }
@@ -120,7 +120,8 @@ final class Swaps {
 
     private String text(Entry.Block block, Expr e) {
         for (FileId f : files()) {
-            FileSyntax t = f.equals(subject.file()) ? subject.syntax() : subject.used().get(f);
+            FileSyntax t =
+                    f.equals(subject.file()) ? subject.syntax() : subject.used().get(f);
             if (t != null && t.entries().contains(block)) {
                 String text = f.equals(subject.file()) ? subject.text() : subject.textOf(f);
                 if (text != null) {
@@ -151,7 +152,10 @@ final class Swaps {
         }
         Unit x = Axis.unit(ua.text());
         Unit y = Axis.unit(ub.text());
-        return x != null && y != null && x.dimension().equals(y.dimension()) && y.toBase(b.value()) > x.toBase(a.value());
+        return x != null
+                && y != null
+                && x.dimension().equals(y.dimension())
+                && y.toBase(b.value()) > x.toBase(a.value());
     }
 
     private static Expr.@Nullable Num low(@Nullable Expr e) {

@@ -70,8 +70,16 @@ final class Verdict {
         if (m.startsWith("In `")) {
             int end = m.indexOf("`: ", 4);
             if (end > 0) {
-                return key(m.substring(4, end), new Diagnostic(
-                        f.code(), f.severity(), f.file(), f.span(), m.substring(end + 3), f.related(), List.of()));
+                return key(
+                        m.substring(4, end),
+                        new Diagnostic(
+                                f.code(),
+                                f.severity(),
+                                f.file(),
+                                f.span(),
+                                m.substring(end + 3),
+                                f.related(),
+                                List.of()));
             }
         }
         int open = m.indexOf('`');

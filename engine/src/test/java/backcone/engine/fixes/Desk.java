@@ -59,9 +59,7 @@ final class Desk {
         }
         Path p = SAMPLES.resolve(f.path());
         try {
-            return Files.isRegularFile(p)
-                    ? new Loader.Loaded.Text(Files.readString(p))
-                    : new Loader.Loaded.Missing();
+            return Files.isRegularFile(p) ? new Loader.Loaded.Text(Files.readString(p)) : new Loader.Loaded.Missing();
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }

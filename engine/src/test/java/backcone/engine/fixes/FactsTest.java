@@ -67,7 +67,9 @@ class FactsTest {
                         + "      material =     # a material by its name: material\n"
                         + "    }\n");
         // nothing is assumed: it stays open and the empty places are errors
-        assertThat(after.analyse().diagnostics()).filteredOn(d -> d.code() == Code.MISSING_VALUE).hasSize(3);
+        assertThat(after.analyse().diagnostics())
+                .filteredOn(d -> d.code() == Code.MISSING_VALUE)
+                .hasSize(3);
         assertThat(states(after)).containsOnly(State.OPEN);
         // and it computes once they are filled in
         Desk filled = after.but("face_width     = ", "face_width     = 30 mm")
@@ -122,7 +124,8 @@ class FactsTest {
             for (String u : group) {
                 assertThat(java.util.Objects.requireNonNull(Axis.unit(u)).dimension())
                         .as(u)
-                        .isEqualTo(java.util.Objects.requireNonNull(Axis.unit(group.get(0))).dimension());
+                        .isEqualTo(java.util.Objects.requireNonNull(Axis.unit(group.get(0)))
+                                .dimension());
             }
         }
     }
@@ -164,8 +167,7 @@ class FactsTest {
 
     @Test
     void aDeviationIsTheLastOfAllAndCountsOnlyWhenAPersonHasSigned() {
-        Desk desk = Desk.sample("sluice_gate.drive")
-                .but("90 N*m           measured", "300 N*m          measured");
+        Desk desk = Desk.sample("sluice_gate.drive").but("90 N*m           measured", "300 N*m          measured");
         List<Fix> all = desk.at("wear >= 1.0");
         Fix last = all.get(all.size() - 1);
         assertThat(last.title()).startsWith("accept `wear` at 0.467 as a deviation");
@@ -235,7 +237,9 @@ class FactsTest {
     @Test
     void aMaterialWrittenInsideAMemberMovesToTheLibraryOrBecomesAReference() {
         Desk desk = Desk.of(OPEN)
-                .but("tooth_making   = formed", "tooth_making   = formed\n    tooth_system   = stub_20\n    face_width = 30 mm")
+                .but(
+                        "tooth_making   = formed",
+                        "tooth_making   = formed\n    tooth_system   = stub_20\n    face_width = 30 mm")
                 .but("support = overhung }", "support = overhung; material = steel_C45E_215 }");
         assertThat(states(desk)).doesNotContain(State.OPEN);
         Fix refer = desk.fix("material {", "refer to `steel_42CrMo4_265`");
@@ -245,8 +249,9 @@ class FactsTest {
         Desk after = desk.after(move);
         assertThat(after.text()).contains("      material = material_42CrMo4_QT\n    }\n");
         assertThat(after.text("library/through-hardened-steels.drive"))
-                .endsWith("}\n\nmaterial material_42CrMo4_QT {\n  designation      = \"42CrMo4 +QT\"\n"
-                        + "  class            = V_alloy\n  static_stress    = 245 MPa\n  surface_hardness = 265 HBW\n}\n");
+                .endsWith(
+                        "}\n\nmaterial material_42CrMo4_QT {\n  designation      = \"42CrMo4 +QT\"\n"
+                                + "  class            = V_alloy\n  static_stress    = 245 MPa\n  surface_hardness = 265 HBW\n}\n");
         same(desk.analyse(), after.analyse(), 0);
         // another strength is another state of the steel
         assertThat(desk.but("245 MPa", "250 MPa").at("material {"))

@@ -38,7 +38,6 @@ class SaidTest {
 
     @Test
     void whereNothingIsWrongAndNothingShortNothingIsMended() {
-        assertThat(Desk.sample("sluice_gate.drive").at("document"))
-                .noneMatch(f -> f.kind() == Fix.Kind.QUICK_FIX);
+        assertThat(Desk.sample("sluice_gate.drive").at("document")).noneMatch(f -> f.kind() == Fix.Kind.QUICK_FIX);
     }
 }
