@@ -149,6 +149,25 @@ class SearchTest {
     }
 
     @Test
+    void aBetterClaimForTheSameSteelIsNoFix() {
+        String same = "  number           = \"1.7225\"\n  class            = V_alloy\n"
+                + "  treatment        = quenched_tempered\n  static_stress    = 400 MPa\n";
+        Desk desk = Desk.sample("water_wheel.drive")
+                .but(
+                        "drive water_wheel",
+                        "material claimed_quality {\n" + same + "  quality          = ME\n"
+                                + "  surface_hardness = 330 HBW\n}\n\n"
+                                + "material claimed_strength {\n" + same + "  quality          = MQ\n"
+                                + "  surface_hardness = 265 HBW\n}\n\n"
+                                + "material harder {\n" + same + "  quality          = MQ\n"
+                                + "  surface_hardness = 330 HBW\n}\n\n"
+                                + "drive water_wheel");
+        List<Fix> fixes = desk.at("wear >= 1.0");
+        assertThat(fixes).anyMatch(f -> f.title().startsWith("pinion.material = harder "));
+        assertThat(fixes).noneMatch(f -> f.title().contains("claimed"));
+    }
+
+    @Test
     void aFixDoesNotBuySafetyWithPaper() {
         Steps steps = Steps.standard();
         assertThat(steps.never)
