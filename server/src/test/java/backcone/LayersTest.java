@@ -45,7 +45,9 @@ class LayersTest {
                             "answers",
                             "explain")),
             Map.entry("review", List.of("text", "syntax", "units", "model", "graph", "eval", "answers")),
-            Map.entry("fixes", List.of("text", "syntax", "units", "diagnostics", "model", "graph", "eval", "answers")));
+            Map.entry(
+                    "fixes",
+                    List.of("text", "syntax", "parse", "units", "diagnostics", "model", "graph", "eval", "answers")));
 
     @Test
     void enginePackagesSeeOnlyWhatIsListed() {

@@ -1,9 +1,12 @@
 package backcone.engine.fixes;
 
+import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.Expr;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
 import backcone.engine.units.Numbers;
+import java.util.List;
+import org.jspecify.annotations.Nullable;
 
 /** Small edits that leave the lines around them as they are. */
 final class Edits {
@@ -63,6 +66,36 @@ final class Edits {
         return text.substring(from, to);
     }
 
+    /** Facts behind the last fact of a body, in its column; null where that doesn't end its line, or there is none. */
+    static @Nullable TextEdit afterFacts(FileId file, String text, List<Entry> body, List<String[]> facts) {
+        Entry.Fact last = null;
+        for (Entry e : body) {
+            last = e instanceof Entry.Fact f ? f : last;
+        }
+        if (last == null) {
+            return null;
+        }
+        int from = lineStart(text, last.span().start());
+        int end = text.indexOf('\n', last.span().end());
+        if (end < 0
+                || !text.substring(from, last.span().start()).isBlank()
+                || text.substring(last.span().end(), end).indexOf('}') >= 0) {
+            return null;
+        }
+        int sign = text.indexOf('=', last.path().span().end());
+        int width = Math.max(0, sign - 1 - last.span().start());
+        String in = indent(text, from);
+        StringBuilder b = new StringBuilder();
+        for (String[] f : facts) {
+            b.append(in)
+                    .append(f[0])
+                    .append(" ".repeat(Math.max(0, width - f[0].length())))
+                    .append(f[1])
+                    .append(newline(text));
+        }
+        return new TextEdit(file, new Span(end + 1, end + 1), b.toString());
+    }
+
     /** The line end of this text. */
     static String newline(String text) {
         int i = text.indexOf('\n');
@@ -70,7 +103,7 @@ final class Edits {
     }
 
     /** Lines at the end of a block, in front of its closing brace. {@code block} ends behind the brace. */
-    static TextEdit atEndOf(FileId file, String text, Span block, java.util.List<String> lines) {
+    static TextEdit atEndOf(FileId file, String text, Span block, List<String> lines) {
         String nl = newline(text);
         int brace = text.lastIndexOf('}', block.end() - 1);
         if (brace < block.start()) {

@@ -22,8 +22,18 @@ public final class Fixes {
         if (subject.file().isMethodFile()) {
             return said(subject, range);
         }
+        Trial trial = new Trial(subject);
+        Bars bars = new Bars(subject, trial);
         List<Fix> out = new ArrayList<>(said(subject, range));
-        out.addAll(new Search(subject).at(range));
+        out.addAll(new Search(subject, trial).at(range));
+        out.addAll(new MissingInputs(subject, trial).at(range));
+        out.addAll(new Shared(subject).at(range));
+        out.addAll(bars.requirements(range));
+        out.addAll(new Conversions(subject).at(range));
+        out.addAll(new Lets(subject).at(range));
+        out.addAll(bars.deviations(range));
+        Tidy tidy = new Tidy(subject);
+        out.replaceAll(tidy::of);
         return out;
     }
 

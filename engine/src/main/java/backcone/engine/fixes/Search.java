@@ -5,6 +5,7 @@ import backcone.engine.answers.RequirementAnswer;
 import backcone.engine.answers.State;
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
+import backcone.engine.eval.Run;
 import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.DriveSource;
 import backcone.engine.graph.Element;
@@ -16,14 +17,13 @@ import backcone.engine.syntax.Expr;
 import backcone.engine.syntax.Note;
 import backcone.engine.text.Span;
 import backcone.engine.units.Numbers;
+import backcone.engine.units.Unit;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.HashSet;
 import java.util.IdentityHashMap;
-import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Map;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
 
@@ -35,15 +35,18 @@ final class Search {
     private static final int MOST = 6;
     private static final int MOST_TOGETHER = 6;
 
+    /** So near the bound a value is told to one digit more, so that it is not taken for the bound. */
+    private static final double NEAR = 0.01;
+
     private final Subject subject;
     private final Trial trial;
     private final Library library;
     private final Steps steps = Steps.standard();
     private final Verdict now;
 
-    Search(Subject subject) {
+    Search(Subject subject, Trial trial) {
         this.subject = subject;
-        this.trial = new Trial(subject);
+        this.trial = trial;
         this.library = subject.shapes().library();
         this.now = Verdict.of(subject.drives(), subject.diagnostics());
     }
@@ -54,7 +57,12 @@ final class Search {
     /** A change and what the tapes said to it. */
     private record Candidate(List<Axis.Setting> settings, Swaps.@Nullable Swap swap, double change) {}
 
-    private record Ranked(Candidate candidate, Verdict verdict, int failing, int hints) {}
+    private record Ranked(
+            Candidate candidate,
+            Verdict verdict,
+            int failing,
+            int hints,
+            @Nullable Subject after) {}
 
     List<Fix> at(Span range) {
         Goal goal = goal(range);
@@ -119,10 +127,14 @@ final class Search {
         return out;
     }
 
+    private static boolean reached(Goal goal, RequirementAnswer r) {
+        return goal.clear ? r.state() == State.CLEAR : r.state().isMet();
+    }
+
     private static boolean reached(Goal goal, Verdict v) {
         for (String id : goal.requirements) {
             RequirementAnswer r = v.requirements.get(id);
-            if (r == null || !(goal.clear ? r.state() == State.CLEAR : r.state().isMet())) {
+            if (r == null || !reached(goal, r)) {
                 return false;
             }
         }
@@ -137,7 +149,6 @@ final class Search {
     // ---- candidates
 
     private List<Fix> offer(Goal goal) {
-        Map<Expr.Num, Axis> axes = new LinkedHashMap<>();
         List<Axis> all = new ArrayList<>();
         List<Candidate> words = new ArrayList<>();
         List<List<Candidate>> families = new ArrayList<>();
@@ -160,7 +171,6 @@ final class Search {
                             for (Slot slot : g.givenSlots(e)) {
                                 Axis a = axis(goal, g, s, slot, s.name());
                                 if (a != null && known.add(a.literal().span() + " " + s)) {
-                                    axes.putIfAbsent(a.literal(), a);
                                     all.add(a);
                                 }
                             }
@@ -211,7 +221,7 @@ final class Search {
         for (Ranked r : verified) {
             if (out.size() < MOST) {
                 out.add(new Fix(
-                        title(r.candidate) + " — " + effect(goal, r.verdict),
+                        title(r.candidate) + " — " + effect(goal, r),
                         Fix.Kind.QUICK_FIX,
                         out.isEmpty() && r.failing == 0,
                         edits(goal, r.candidate),
@@ -352,7 +362,7 @@ final class Search {
                 v[k] = y;
             }
         }
-        double nuisance = new backcone.engine.eval.Run(g, v).at(slot.register());
+        double nuisance = new Run(g, v).at(slot.register());
         return nuisance > 1 ? 0.1 * Math.log(nuisance) : 0;
     }
 
@@ -513,6 +523,12 @@ final class Search {
         Verdict v = new Verdict();
         for (String d : goal.drives) {
             trial.run(d, values, v);
+            for (String id : goal.requirements) {
+                RequirementAnswer r = v.requirements.get(id);
+                if (r != null && !reached(goal, r)) {
+                    return null;
+                }
+            }
         }
         if (!reached(goal, v)) {
             return null;
@@ -524,7 +540,7 @@ final class Search {
                 }
             }
         }
-        return v.notWorseThan(before) ? new Ranked(c, v, v.failing().size(), v.newHints(before)) : null;
+        return v.notWorseThan(before) ? new Ranked(c, v, v.failing().size(), v.newHints(before), null) : null;
     }
 
     private @Nullable Verdict unchanged;
@@ -560,13 +576,14 @@ final class Search {
         Subject s = subject.edited(edits(goal, c));
         Verdict v = Verdict.of(s.drives(), s.diagnostics());
         return reached(goal, v) && v.notWorseThan(now)
-                ? new Ranked(c, v, v.failing().size(), v.newHints(now))
+                ? new Ranked(c, v, v.failing().size(), v.newHints(now), s)
                 : null;
     }
 
     // ---- what came of it
 
-    private String effect(Goal goal, Verdict v) {
+    private String effect(Goal goal, Ranked of) {
+        Verdict v = of.verdict;
         StringBuilder b = new StringBuilder();
         RequirementAnswer worst = null;
         for (String id : goal.requirements) {
@@ -578,13 +595,13 @@ final class Search {
         if (worst != null) {
             b.append(label(worst, goal.requirements.size() > 1))
                     .append(' ')
-                    .append(Numbers.format(worst.value(), 3))
+                    .append(Numbers.format(worst.value(), Math.abs(worst.margin()) < NEAR ? 4 : 3))
                     .append(worst.unit().isEmpty() ? "" : " " + worst.unit())
                     .append(", margin ")
                     .append(margin(worst.margin()))
                     .append(", ");
         } else {
-            b.append("within the limit, ");
+            b.append(limits(goal, of.after)).append(", ");
         }
         List<String> failing = v.failing();
         List<String> open = v.in(State.OPEN);
@@ -599,6 +616,35 @@ final class Search {
         }
         return b.append(failing.size() > 3 ? " and " + (failing.size() - 3) + " more" : "")
                 .toString();
+    }
+
+    /** {@code face width 30 mm, limit <= 30.23 mm}, as it is after the edit. */
+    private static String limits(Goal goal, @Nullable Subject after) {
+        Trial t = after == null ? null : new Trial(after);
+        for (String drive : goal.drives) {
+            for (DriveGraph g : t == null ? List.<DriveGraph>of() : t.graphs(drive)) {
+                for (DriveGraph.LimitUse l : g.limits()) {
+                    Entry.Limit x = l.def().syntax();
+                    Element space = l.at().space();
+                    String key = "|`" + (space == null ? l.at() : space).path() + "|the limit `" + x.name() + "`";
+                    if (l.left() < 0
+                            || l.compare() == null
+                            || goal.findings.stream().noneMatch(k -> k.endsWith(key))) {
+                        continue;
+                    }
+                    Run run = new Run(g);
+                    return (x.meaning() == null ? x.name().text() : x.meaning()) + " "
+                            + in(l.unit(), run.at(l.left())) + ", limit "
+                            + l.compare().ops().get(0).sign + " " + in(l.unit(), run.at(l.right()));
+                }
+            }
+        }
+        return "within the limit";
+    }
+
+    private static String in(@Nullable Unit u, double v) {
+        String text = u == null || u.text().equals("1") ? "" : " " + u.text();
+        return Numbers.format(u == null ? v : u.fromBase(v), 4) + text;
     }
 
     private String shortId(String id, RequirementAnswer r) {

@@ -39,6 +39,9 @@ final class Steps {
     final List<Step> all = new ArrayList<>();
     final Set<String> never = new HashSet<>();
 
+    /** Groups of units of one kind that a quantity can be written in. */
+    final List<List<String>> units = new ArrayList<>();
+
     private Steps() {}
 
     static Steps standard() {
@@ -72,6 +75,10 @@ final class Steps {
     private void line(List<String> word) {
         if (word.get(0).equals("never")) {
             never.addAll(word.subList(1, word.size()));
+            return;
+        }
+        if (word.get(0).equals("units")) {
+            units.add(List.copyOf(word.subList(1, word.size())));
             return;
         }
         Way way = Way.valueOf(word.get(0).toUpperCase(java.util.Locale.ROOT));

@@ -6,8 +6,6 @@ import backcone.engine.graph.Slot;
 import backcone.engine.model.Library;
 import backcone.engine.syntax.Entry;
 import backcone.engine.syntax.Expr;
-import backcone.engine.syntax.FileSyntax;
-import backcone.engine.syntax.Name;
 import backcone.engine.text.FileId;
 import backcone.engine.text.Span;
 import backcone.engine.units.Unit;
@@ -47,16 +45,17 @@ final class Swaps {
                     || !known.add(p.span() + " " + step.name())) {
                 continue;
             }
-            Map<String, Entry.Block> all = blocks();
-            Entry.Block was = all.get(p.text());
+            Map<String, Named> all = blocks();
+            Named was = all.get(p.text());
             if (was == null) {
                 continue;
             }
-            for (Map.Entry<String, Entry.Block> other : all.entrySet()) {
-                if (other.getValue() != was
+            for (Map.Entry<String, Named> other : all.entrySet()) {
+                Named now = other.getValue();
+                if (now.block != was.block
                         && library.isKind(
-                                other.getValue().head().text(), was.head().text())
-                        && fits(was, other.getValue())) {
+                                now.block.head().text(), was.block.head().text())
+                        && fits(was, now)) {
                     out.add(new Swap(slot, p.span(), other.getKey()));
                 }
             }
@@ -64,98 +63,95 @@ final class Swaps {
         return out;
     }
 
+    /** A block and the file it stands in. */
+    private record Named(Entry.Block block, FileId file) {}
+
     /** Blocks that the text can name, by the name it would write. */
-    private Map<String, Entry.Block> blocks() {
-        Map<String, Entry.Block> out = new LinkedHashMap<>();
+    private Map<String, Named> blocks() {
+        Map<String, Named> out = new LinkedHashMap<>();
         for (String n : subject.top().names()) {
             DriveGraph.TopEntry t = subject.top().find(n);
             if (t == null) {
                 continue;
             }
             if (t.entry() instanceof Entry.Block b) {
-                out.put(n, b);
+                out.put(n, new Named(b, t.file()));
             }
             t.inside().forEach((k, v) -> {
                 if (v.entry() instanceof Entry.Block b) {
-                    out.put(n + "." + k, b);
+                    out.put(n + "." + k, new Named(b, v.file()));
                 }
             });
         }
         return out;
     }
 
-    private boolean fits(Entry.Block was, Entry.Block other) {
+    private boolean fits(Named was, Named other) {
         String how = "";
         for (String w : step.words()) {
             if (w.equals("same") || w.equals("keep") || w.equals("raise")) {
                 how = w;
                 continue;
             }
-            Expr a = value(was, w);
-            Expr b = value(other, w);
-            boolean ok = switch (how) {
-                case "same" -> a != null && b != null && text(was, a).equals(text(other, b));
-                case "keep" -> a == null ? b == null : b != null && text(was, a).equals(text(other, b));
-                default -> higher(a, b);
-            };
-            if (!ok) {
+            List<Expr> a = values(was.block, w);
+            List<Expr> b = values(other.block, w);
+            boolean ok = how.equals("raise") ? higher(a, b) : texts(was, a).equals(texts(other, b));
+            if (!ok || how.equals("same") && a.isEmpty()) {
                 return false;
             }
         }
         return true;
     }
 
-    private static @Nullable Expr value(Entry.Block block, String name) {
-        Expr out = null;
+    /** All that a block says of a name: one spoken name may have a value on each of several scales. */
+    private static List<Expr> values(Entry.Block block, String name) {
+        List<Expr> out = new ArrayList<>();
         List<Entry> body = block.body();
         if (body != null) {
             for (Entry e : body) {
-                if (e instanceof Entry.Fact f && f.path().text().equals(name) && out == null) {
-                    out = f.value();
+                if (e instanceof Entry.Fact f && f.path().text().equals(name)) {
+                    out.add(f.value());
                 }
             }
         }
         return out;
     }
 
-    private String text(Entry.Block block, Expr e) {
-        for (FileId f : files()) {
-            FileSyntax t =
-                    f.equals(subject.file()) ? subject.syntax() : subject.used().get(f);
-            if (t != null && t.entries().contains(block)) {
-                String text = f.equals(subject.file()) ? subject.text() : subject.textOf(f);
-                if (text != null) {
-                    return text.substring(e.span().start(), e.span().end()).replaceAll("\\s+", " ");
-                }
+    private List<String> texts(Named in, List<Expr> values) {
+        String text = in.file.equals(subject.file()) ? subject.text() : subject.textOf(in.file);
+        List<String> out = new ArrayList<>();
+        for (Expr e : values) {
+            if (text != null) {
+                out.add(text.substring(e.span().start(), e.span().end()).replaceAll("\\s+", " "));
             }
         }
-        return "";
-    }
-
-    private List<FileId> files() {
-        List<FileId> out = new ArrayList<>(List.of(subject.file()));
-        out.addAll(subject.used().keySet());
         return out;
     }
 
-    /** Whether the lower end of one number lies above the lower end of the other, on one scale. */
-    private static boolean higher(@Nullable Expr was, @Nullable Expr now) {
-        Expr.Num a = low(was);
-        Expr.Num b = low(now);
-        if (a == null || b == null) {
-            return false;
+    /** Whether, on every scale that both are told on, the lower end of one lies above the lower end of the other. */
+    private static boolean higher(List<Expr> was, List<Expr> now) {
+        boolean any = false;
+        for (Expr x : was) {
+            for (Expr y : now) {
+                Expr.Num a = low(x);
+                Expr.Num b = low(y);
+                if (a == null || b == null) {
+                    return false;
+                }
+                Unit ua = a.unit() == null ? null : Axis.unit(a.unit().text());
+                Unit ub = b.unit() == null ? null : Axis.unit(b.unit().text());
+                boolean bare = a.unit() == null && b.unit() == null;
+                if (bare || ua != null && ub != null && ua.dimension().equals(ub.dimension())) {
+                    double p = bare || ua == null ? a.value() : ua.toBase(a.value());
+                    double q = bare || ub == null ? b.value() : ub.toBase(b.value());
+                    if (q <= p) {
+                        return false;
+                    }
+                    any = true;
+                }
+            }
         }
-        Name ua = a.unit();
-        Name ub = b.unit();
-        if (ua == null || ub == null) {
-            return ua == null && ub == null && b.value() > a.value();
-        }
-        Unit x = Axis.unit(ua.text());
-        Unit y = Axis.unit(ub.text());
-        return x != null
-                && y != null
-                && x.dimension().equals(y.dimension())
-                && y.toBase(b.value()) > x.toBase(a.value());
+        return any;
     }
 
     private static Expr.@Nullable Num low(@Nullable Expr e) {
