@@ -731,7 +731,8 @@ final class Elaborator {
                 || !e.isSpace()
                         && graph.shapes.library.methods.values().stream()
                                 .anyMatch(v -> v.stream()
-                                        .anyMatch(m -> graph.shapes.library.isKind(e.kind(), m.kind()) && hasChecks(m)));
+                                        .anyMatch(
+                                                m -> graph.shapes.library.isKind(e.kind(), m.kind()) && hasChecks(m)));
     }
 
     private void noMethod(Entry.Rate r, FileId file, Element mesh, String method) {
