@@ -137,6 +137,21 @@ class LanguageTest {
     }
 
     @Test
+    void aDifferenceOfTemperaturesIsExplainedAsADifference() {
+        String method = HOUSE + """
+            method warmth for bevel "how warm" {
+              rise "rise" : TemperatureDifference = 2 K * pinion.z     per own, derived
+              check warmest "warmest" : Temperature = 20 degC + rise     per own, derived
+            }
+            """;
+        Explanation e = specs("", "rate head by warmth { warmest <= 90 degC }")
+                .with("house.method", method)
+                .explain("head.warmth.warmest");
+        assertThat(e.value()).isCloseTo(60, within(1e-9));
+        assertThat(e.numbers()).endsWith("+ 40 K");
+    }
+
+    @Test
     void aShaftIsRatedSectionBySectionByAMethodForShafts() {
         String method = HOUSE + """
             method slender for shaft "a method for shafts" {

@@ -9,6 +9,7 @@ import backcone.engine.graph.Problems;
 import backcone.engine.graph.Shapes;
 import backcone.engine.graph.Slot;
 import backcone.engine.graph.Tape;
+import backcone.engine.graph.Val;
 import backcone.engine.model.BodyDef;
 import backcone.engine.model.Decl;
 import backcone.engine.model.KindDef;
@@ -103,6 +104,9 @@ public final class Examples {
             report.outcomes.add(outcome(run, body, x, e));
             reach(run, e.value(), report);
             Slot named = run.graph.find("it." + e.syntax().path().text());
+            if (named == null) {
+                named = run.graph.find(e.syntax().path().text()); // the example is of a whole drive
+            }
             if (named != null && named.factSpan() == null) {
                 report.reachedEquations.add(named.decl);
             }
@@ -143,7 +147,7 @@ public final class Examples {
             w.faults().forEach(f -> b.append(b.length() == 0 ? "" : "; ").append(f.message()));
             why = b.toString();
         }
-        Unit u = e.dimension() == null ? null : run.graph.shownUnit(e.dimension());
+        Unit u = e.dimension() == null ? null : run.graph.shownUnit(new Val.Num(e.value(), e.dimension(), Double.NaN));
         return new Outcome(
                 body.owner,
                 x.title(),

@@ -128,7 +128,7 @@ final class Texts {
     private String show(Expr x, String text) {
         Val v = slot.traced(x);
         if (v instanceof Val.Num n) {
-            Unit u = n.dimension() == null || n.dimension().isNone() ? null : graph.shownUnit(n.dimension());
+            Unit u = graph.shownUnit(n);
             double value = run.at(n.register());
             if (Double.isNaN(value)) {
                 return "open";

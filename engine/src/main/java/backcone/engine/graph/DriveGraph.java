@@ -519,6 +519,15 @@ public final class DriveGraph {
         return q == null ? null : q.shown();
     }
 
+    /** The unit for a value met on the way; on a scale with a zero of its own, what the value is decides, not its dimension. */
+    public @Nullable Unit shownUnit(Val.Num n) {
+        Unit u = n.dimension() == null || n.dimension().isNone() ? null : shownUnit(n.dimension());
+        Slot owner = u != null && u.fromBase(0) != 0 ? ownerOf(n.register()) : null;
+        return owner != null && owner.decl.kind instanceof backcone.engine.model.ValueKind.Quantity q
+                ? q.kind().shown()
+                : u;
+    }
+
     public boolean dependsOnInput(int register, int input) {
         for (int r = 0; r < tape.size(); r++) {
             if (tape.op(r) == Op.INPUT && tape.b(r) == input) {
