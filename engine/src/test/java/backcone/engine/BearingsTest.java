@@ -8,8 +8,7 @@ import org.junit.jupiter.api.Test;
 
 /** Life and static safety of a bearing, asked for in a drive. */
 class BearingsTest {
-    private static final String DRIVE =
-            """
+    private static final String DRIVE = """
             drive head "a shaft in bearings" {
               shaft input { speed = 1450 rpm }
               bearing near on input {
