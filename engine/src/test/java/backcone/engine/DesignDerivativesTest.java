@@ -33,6 +33,11 @@ class DesignDerivativesTest {
     private static final int VALUES = 4;
     private static final double STEP = 1e-4;
 
+    /** Of values on the way, less than this is what rounding leaves of zero. */
+    private static final double NOTHING = 1e-9;
+
+    private static final String ON_THE_WAY = "values on the way";
+
     private record Asked(String name, int register, int[] bends) {}
 
     /** What became of the comparisons of one check. */
@@ -72,7 +77,7 @@ class DesignDerivativesTest {
                 List<Asked> asked = new ArrayList<>(checks);
                 for (int j = 0; j < VALUES && !values.isEmpty(); j++) {
                     Slot s = values.get(random.nextInt(values.size()));
-                    asked.add(new Asked("values on the way", s.register(), bends(g.tape(), s.register())));
+                    asked.add(new Asked(ON_THE_WAY, s.register(), bends(g.tape(), s.register())));
                 }
                 compare(named.name(), run, inputs, asked, random, counts, wrong);
             }
@@ -120,6 +125,9 @@ class DesignDerivativesTest {
                 }
                 Count c = counts.computeIfAbsent(a.name(), k -> new Count());
                 double y = run.at(a.register());
+                if (a.name().equals(ON_THE_WAY) && Math.abs(y) < NOTHING) {
+                    continue;
+                }
                 Derivatives d = derivatives.computeIfAbsent(a.register(), k -> new Derivatives(run, k));
                 if (Double.isNaN(y)) {
                     c.open++;
