@@ -86,7 +86,9 @@ class DesignDerivativesTest {
         int compared = 0;
         int met = 0;
         for (Map.Entry<String, Count> c : counts.entrySet()) {
-            assertThat(c.getValue().compared)
+            // a check that steps in every design (a line of life that bends at its key, a bin that begins) can't be
+            // compared
+            assertThat(c.getValue().compared + c.getValue().bent)
                     .as(c.getKey() + ": " + c.getValue())
                     .isPositive();
             compared += c.getValue().compared;

@@ -159,6 +159,16 @@ final class Wire {
 
     private void take(byte[] body) {
         Message m = null;
+        int last = body.length - 1;
+        while (last >= 0 && body[last] <= ' ') {
+            last--;
+        }
+        if (last < 0 || body[last] != '}') { // cut off, or followed by what belongs to the next one
+            if (!resynchronise(body)) {
+                fail(ResponseErrorCode.ParseError, "This message is no JSON object that can be read.");
+            }
+            return;
+        }
         try {
             m = json.parseMessage(new String(body, StandardCharsets.UTF_8));
         } catch (MessageIssueException e) {

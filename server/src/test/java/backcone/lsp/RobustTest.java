@@ -145,10 +145,10 @@ class RobustTest {
             s.diagnostics(URI, 1);
             int version = 1;
             for (int i = 0; i < 500; i++) {
-                s.change(URI, ++version, 4, 16, 19, "@");
-                s.change(URI, ++version, 4, 16, 17, "900");
+                s.change(URI, ++version, 4, 24, 27, "@");
+                s.change(URI, ++version, 4, 24, 25, "900");
             }
-            s.change(URI, ++version, 4, 20, 23, "rmp");
+            s.change(URI, ++version, 4, 28, 31, "rmp");
             JsonObject last = s.diagnostics(URI, version);
             // held back while it is being typed, then told
             if (!last.toString().contains("BC3002")) {
