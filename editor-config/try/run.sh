@@ -13,7 +13,7 @@ for editor in "${@:-nvim emacs}"; do
     export SPEC=$work/clinker_elevator.drive
     case $editor in
         nvim) timeout 300 "${NVIM:-nvim}" --headless -u NONE -i NONE -n -l "$here/nvim.lua" || status=1 ;;
-        emacs) timeout 300 "${EMACS:-emacs}" -Q --batch -l "$here/eglot.el" || status=1 ;;
+        emacs) timeout 300 "${EMACS:-emacs}" -q --batch -l "$here/eglot.el" || status=1 ;;
         *) echo "no such editor: $editor" >&2; exit 64 ;;
     esac
     rm -rf "$work"

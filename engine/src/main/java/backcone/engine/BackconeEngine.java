@@ -34,7 +34,7 @@ public final class BackconeEngine implements Engine {
         if (!(o instanceof SourceText t)) {
             return FileAnalysis.unreadable(file, (Loader.Loaded) o);
         }
-        return FileAnalysis.of(t, this::load, Handbook.standard(), today);
+        return FileAnalysis.of(t, this::load, today);
     }
 
     /**

@@ -81,7 +81,19 @@ final class FileAnalysis implements Analysis {
                 : Diagnostic.of(Code.FILE_NOT_FOUND, file, Span.NONE, "There is no file `" + file.path() + "`.");
         SourceText none = new SourceText(file, "", BackconeEngine.empty(), List.of());
         return new FileAnalysis(
-                none, null, Handbook.standard().shapes(), List.of(d), List.of(), Map.of(), Map.of(), List.of());
+                none,
+                null,
+                Handbook.forMethods(Set.of()).shapes(),
+                List.of(d),
+                List.of(),
+                Map.of(),
+                Map.of(),
+                List.of());
+    }
+
+    /** With as much of the handbook as this text asks for. */
+    static FileAnalysis of(SourceText main, Function<FileId, Object> load, LocalDate today) {
+        return of(main, load, null, today, null, false);
     }
 
     static FileAnalysis of(SourceText main, Function<FileId, Object> load, Handbook handbook, LocalDate today) {
@@ -95,19 +107,21 @@ final class FileAnalysis implements Analysis {
     static FileAnalysis of(
             SourceText main,
             Function<FileId, Object> load,
-            Handbook handbook,
+            @Nullable Handbook handbook,
             LocalDate today,
             @Nullable FileAnalysis before,
             boolean editing) {
         if (main.file().isMethodFile()) {
-            return methodFile(main, handbook);
+            return methodFile(main, handbook == null ? Handbook.standard() : handbook);
         }
         Sources sources = new Sources(main, load);
         List<Diagnostic> found = new ArrayList<>(main.problems());
         found.addAll(sources.problems());
         boolean sameFiles =
                 before != null && before.sources != null && sameTexts(before.sources.used(), sources.used());
-        Shapes shapes = sameFiles ? java.util.Objects.requireNonNull(before).shapes : shapes(sources, handbook);
+        Shapes shapes = sameFiles
+                ? java.util.Objects.requireNonNull(before).shapes
+                : shapes(sources, handbook == null ? handbook(sources) : handbook);
         Set<Integer> changed = sameFiles ? changed(java.util.Objects.requireNonNull(before).main, main) : null;
         FileAnalysis kept = changed == null ? null : before;
         Problems own = new Problems();
@@ -284,6 +298,31 @@ final class FileAnalysis implements Analysis {
             DriveBuilder.library(shapes, sources, main.file(), blocks, own);
         }
         return List.copyOf(own.all());
+    }
+
+    /** The part of the handbook that these texts speak of. */
+    private static Handbook handbook(Sources sources) {
+        if (!sources.methodFiles().isEmpty()) {
+            return Handbook.standard(); // they may build on any method
+        }
+        Set<String> methods = new java.util.TreeSet<>();
+        methods(sources.main().tree().entries(), methods);
+        for (SourceText t : sources.used().values()) {
+            methods(t.tree().entries(), methods);
+        }
+        return Handbook.forMethods(methods);
+    }
+
+    private static void methods(List<Entry> entries, Set<String> out) {
+        for (Entry e : entries) {
+            if (e instanceof Entry.Rate r) {
+                out.add(r.method().text());
+            } else if (e instanceof Entry.Drive d) {
+                methods(d.body(), out);
+            } else if (e instanceof Entry.Variant v) {
+                methods(v.body(), out);
+            }
+        }
     }
 
     /** The handbook with the method files that a spec uses. */

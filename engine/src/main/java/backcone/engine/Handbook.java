@@ -12,25 +12,34 @@ import java.io.InputStream;
 import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
+import java.util.HashMap;
 import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import org.jspecify.annotations.Nullable;
 
-/** The shipped handbook: its texts are resources; their trees are precompiled, so that no text is parsed at start. */
+/**
+ * The shipped handbook: its texts are resources; their trees are precompiled, so that no text is parsed at start. A file that
+ * holds nothing but methods is read only where one of them is asked for.
+ */
 public final class Handbook {
     private static final String FOLDER = "handbook/";
     private static @Nullable Handbook standard;
+    private static @Nullable Handbook whole;
+    private static @Nullable Contents contents;
+    private static final Map<Set<String>, Handbook> SOME = new HashMap<>();
     private final Map<FileId, FileSyntax> trees = new LinkedHashMap<>();
     private final Shapes shapes;
     private final List<Diagnostic> problems;
 
-    private Handbook() {
+    private Handbook(List<String> files, boolean examples) {
         LibraryBuilder builder = new LibraryBuilder();
         List<Diagnostic> found = new ArrayList<>();
-        for (String name : names()) {
+        for (String name : files) {
             FileId id = new FileId(FileId.HANDBOOK + name + ".method");
-            FileSyntax tree = tree(name, id, found);
+            FileSyntax tree = tree(name, id, found, examples);
             trees.put(id, tree);
             builder.add(id, tree);
         }
@@ -40,14 +49,103 @@ public final class Handbook {
         problems = List.copyOf(found);
     }
 
-    /** Loaded once per process and shared. */
+    /** All files, without their worked examples. Loaded once per process and shared. */
     public static synchronized Handbook standard() {
         Handbook h = standard;
         if (h == null) {
-            h = new Handbook();
+            h = new Handbook(names(), false);
             standard = h;
         }
         return h;
+    }
+
+    /** All files with their worked examples, for pages and tests. */
+    public static synchronized Handbook whole() {
+        Handbook h = whole;
+        if (h == null) {
+            h = new Handbook(names(), true);
+            whole = h;
+        }
+        return h;
+    }
+
+    /**
+     * What a spec that rates by these methods needs: everything but the files of other methods. All files where one of the
+     * methods is not known, since it could be meant for another.
+     */
+    static synchronized Handbook forMethods(Set<String> methods) {
+        Contents c = contents();
+        if (standard != null || !c.knows(methods)) {
+            return standard();
+        }
+        Set<String> files = c.filesFor(methods);
+        Handbook h = SOME.get(files);
+        if (h == null) {
+            List<String> all = new ArrayList<>(names());
+            all.retainAll(files);
+            h = new Handbook(all, false);
+            SOME.put(files, h);
+        }
+        return h;
+    }
+
+    static synchronized Contents contents() {
+        Contents c = contents;
+        if (c == null) {
+            c = Contents.read(resource(FOLDER + "contents.txt"));
+            contents = c;
+        }
+        return c;
+    }
+
+    /** The table of contents that the build makes. */
+    record Contents(Set<String> always, Map<String, Set<String>> files, Map<String, Set<String>> included) {
+        static Contents read(@Nullable String text) {
+            Set<String> always = new LinkedHashSet<>();
+            Map<String, Set<String>> files = new HashMap<>();
+            Map<String, Set<String>> included = new HashMap<>();
+            for (String line : text == null ? new String[0] : text.split("\n")) {
+                String[] halves = line.split("\\|", 2);
+                String[] words = halves[0].strip().split(" +");
+                if (halves.length < 2 || words.length < 2) {
+                    continue;
+                }
+                if (words[1].equals("always")) {
+                    always.add(words[0]);
+                }
+                for (int i = 2; i < words.length; i++) {
+                    files.computeIfAbsent(words[i], k -> new LinkedHashSet<>()).add(words[0]);
+                }
+                for (String w : halves[1].strip().split(" +")) {
+                    if (!w.isEmpty()) {
+                        included.computeIfAbsent(words[0], k -> new LinkedHashSet<>())
+                                .add(w);
+                    }
+                }
+            }
+            return new Contents(always, files, included);
+        }
+
+        boolean knows(Set<String> methods) {
+            return !always.isEmpty() && files.keySet().containsAll(methods);
+        }
+
+        Set<String> filesFor(Set<String> methods) {
+            Set<String> out = new LinkedHashSet<>(always);
+            List<String> todo = new ArrayList<>(methods);
+            Set<String> seen = new LinkedHashSet<>();
+            while (!todo.isEmpty()) {
+                String m = todo.remove(todo.size() - 1);
+                if (!seen.add(m)) {
+                    continue;
+                }
+                for (String f : files.getOrDefault(m, Set.of())) {
+                    out.add(f);
+                    todo.addAll(included.getOrDefault(f, Set.of()));
+                }
+            }
+            return out;
+        }
     }
 
     /** The names of the shipped files, in the order in which they are read. */
@@ -66,8 +164,8 @@ public final class Handbook {
     }
 
     /** The tree made by the build; parsed afresh where there is none of this version, as in a half-built project. */
-    private static FileSyntax tree(String name, FileId id, List<Diagnostic> found) {
-        byte[] compiled = bytes(FOLDER + name + ".tree");
+    private static FileSyntax tree(String name, FileId id, List<Diagnostic> found, boolean examples) {
+        byte[] compiled = bytes(FOLDER + name + (examples ? ".tree" : ".lean"));
         FileSyntax tree = compiled == null ? null : TreeCodec.read(compiled);
         if (tree != null) {
             return tree;

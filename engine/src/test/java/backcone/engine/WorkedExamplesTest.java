@@ -47,7 +47,7 @@ class WorkedExamplesTest {
         Parser.Parsed p = Parser.parse(id, t.text());
         assertThat(p.problems()).as(t.name()).isEmpty();
         LibraryBuilder.Built built = new LibraryBuilder(
-                        Handbook.standard().shapes().library())
+                        Handbook.whole().shapes().library())
                 .add(id, p.tree())
                 .build();
         assertThat(built.problems()).as(t.name()).isEmpty();

@@ -102,6 +102,7 @@ final class CheckCommand implements Command {
     private static int check(List<Path> files, LocalDate day, Report report, boolean visible, PrintWriter err)
             throws IOException, InterruptedException {
         EngineFactory engine = new EngineFactory(FileSet.root(files), day);
+        engine.house().problems().forEach(err::println);
         Progress progress = new Progress("checking", files.size(), !visible && Terminal.err());
         int status = Status.FINE;
         try (Ahead<Path, Checked> ahead = new Ahead<>(files, f -> Checked.of(engine, f))) {

@@ -30,7 +30,9 @@ record Checked(
     }
 
     List<Diagnostic> diagnostics() {
-        return analysis == null ? List.of() : analysis.diagnostics();
+        return analysis == null
+                ? List.of()
+                : analysis.diagnostics().stream().map(engine.house()::of).toList();
     }
 
     List<DriveAnswer> drives() {

@@ -4,6 +4,7 @@ import backcone.engine.Analysis;
 import backcone.engine.BackconeEngine;
 import backcone.engine.Handbook;
 import backcone.engine.Loader;
+import backcone.engine.diagnostics.House;
 import backcone.engine.text.FileId;
 import java.nio.file.Path;
 import java.time.LocalDate;
@@ -15,10 +16,18 @@ final class EngineFactory {
     private final DiskLoader loader;
     private final BackconeEngine engine;
     private final Map<FileId, Places> places = new ConcurrentHashMap<>();
+    private final House house;
 
     EngineFactory(Path root, LocalDate today) {
         this.loader = new DiskLoader(root);
         this.engine = BackconeEngine.create(loader, today);
+        this.house =
+                loader.load(new FileId(House.NAME)) instanceof Loader.Loaded.Text t ? House.read(t.text()) : House.NONE;
+    }
+
+    /** The severities of this house. */
+    House house() {
+        return house;
     }
 
     Analysis analyse(Path file) {

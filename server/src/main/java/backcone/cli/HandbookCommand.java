@@ -48,7 +48,7 @@ final class HandbookCommand implements Command {
             out.print(code);
             return Status.FINE;
         }
-        HandbookPages pages = new HandbookPages(Handbook.standard().shapes(), Handbook::text);
+        HandbookPages pages = new HandbookPages(Handbook.whole().shapes(), Handbook::text);
         List<String> page = name == null ? pages.overview() : pages.page(name);
         if (name != null && page.isEmpty()) {
             List<String> names = new ArrayList<>(pages.names());

@@ -150,7 +150,8 @@ public final class BackconeServer implements LanguageServer {
                 CodeActionKind.QuickFix,
                 CodeActionKind.Refactor,
                 CodeActionKind.RefactorExtract,
-                CodeActionKind.RefactorInline)));
+                CodeActionKind.RefactorInline,
+                CodeActionKind.RefactorRewrite)));
         s.setCodeLensProvider(new CodeLensOptions(true));
         s.setDocumentFormattingProvider(true);
         s.setDocumentRangeFormattingProvider(true);

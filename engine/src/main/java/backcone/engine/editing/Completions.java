@@ -146,7 +146,11 @@ public final class Completions {
 
     // ---- specs
 
-    private void spec(String before, Spot spot, int at) {
+    private void spec(String line, Spot spot, int at) {
+        // the entry at hand, where several stand in one line
+        int open = Math.max(line.lastIndexOf('{'), line.lastIndexOf(';'));
+        String before =
+                open >= 0 && line.chars().filter(c -> c == '"').count() % 2 == 0 ? line.substring(open + 1) : line;
         Element el = spot.element();
         DriveGraph g = spot.graph();
         String stripped = before.strip();

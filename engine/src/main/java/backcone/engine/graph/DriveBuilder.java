@@ -171,6 +171,9 @@ public final class DriveBuilder {
             if (requirements != null) {
                 requirements.compile(ofDrive);
             }
+            // limits of single values, where those values were asked for
+            g.postponed.forEach(Runnable::run);
+            g.postponed.clear();
         }
         unusedLets(g);
         g.tape.finish();
@@ -253,6 +256,40 @@ public final class DriveBuilder {
 
     private static void limits(DriveGraph g, Element e, Ctx ctx, Shape shape, Element at) {
         for (BodyDef.LimitDef l : shape.limits) {
+            if (!l.ofMethod() && !l.syntax().targets().isEmpty()) {
+                g.postponed.add(() -> {
+                    if (asked(g, l, ctx)) {
+                        limit(g, l, ctx, at);
+                    }
+                });
+            } else {
+                limit(g, l, ctx, at);
+            }
+        }
+        for (Shape.Applies a : shape.applies) {
+            Val v = g.compiler.eval(a.syntax().condition(), ctx, Frame.at(a.body().file, false));
+            g.applies.add(new DriveGraph.AppliesUse(
+                    a.syntax(),
+                    a.body().file,
+                    at,
+                    v instanceof Val.Truth t ? t.register() : -1,
+                    !(v instanceof Val.Fixed x) || x.is()));
+        }
+    }
+
+    /** Whether something has asked for one of the values that a limit is about. */
+    private static boolean asked(DriveGraph g, BodyDef.LimitDef l, Ctx ctx) {
+        for (backcone.engine.syntax.Name n : l.syntax().targets()) {
+            Object x = g.scopes.path(new Expr.Path(List.of(n), n.span()), ctx, new Element[1], new int[1]);
+            if (!(x instanceof Slot s) || s.value() != null) {
+                return true;
+            }
+        }
+        return false;
+    }
+
+    private static void limit(DriveGraph g, BodyDef.LimitDef l, Ctx ctx, Element at) {
+        {
             Frame f = Frame.at(l.file(), false);
             Expr condition = l.syntax().condition();
             Val v = g.compiler.eval(condition, ctx, f);
@@ -283,15 +320,6 @@ public final class DriveBuilder {
                 }
             }
             g.limits.add(new DriveGraph.LimitUse(l, at, register, holds, targets, left, right, compare, unit));
-        }
-        for (Shape.Applies a : shape.applies) {
-            Val v = g.compiler.eval(a.syntax().condition(), ctx, Frame.at(a.body().file, false));
-            g.applies.add(new DriveGraph.AppliesUse(
-                    a.syntax(),
-                    a.body().file,
-                    at,
-                    v instanceof Val.Truth t ? t.register() : -1,
-                    !(v instanceof Val.Fixed x) || x.is()));
         }
     }
 

@@ -54,6 +54,10 @@ public final class DriveGraph {
     final Map<Integer, TableDef> tableOps = new HashMap<>();
     final List<RateUse> rates = new ArrayList<>();
     final List<LimitUse> limits = new ArrayList<>();
+
+    /** Limits that are looked at last, when it is known which values were asked for. */
+    final List<Runnable> postponed = new ArrayList<>();
+
     final List<AppliesUse> applies = new ArrayList<>();
     final List<RelationUse> relations = new ArrayList<>();
     final List<Agreement> agreements = new ArrayList<>();
