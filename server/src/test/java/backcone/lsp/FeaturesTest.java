@@ -70,7 +70,14 @@ class FeaturesTest {
     @Test
     void hoverTellsValueEquationSourceAndMargin() {
         String h = s.ask("textDocument/hover", at("pitting >= 1.20", 2)).toString();
-        assertThat(h).contains("safety factor against pitting", "sigma_HG / sigma_H", "margin", "iso_6336_b");
+        assertThat(h)
+                .contains(
+                        "safety factor against pitting",
+                        "sigma_HG / sigma_H",
+                        "margin",
+                        "iso_6336_b",
+                        "1 % more of these",
+                        "output.normal_module");
         assertThat(s.ask("textDocument/hover", at("helix_angle", 3)).toString()).contains("12 deg", "rad");
         assertThat(s.ask("textDocument/hover", at("= 45 kW", 6)).toString()).contains("kilowatt");
         assertThat(s.ask("textDocument/hover", at("rate input", 1)).toString()).contains("rates a mesh");
