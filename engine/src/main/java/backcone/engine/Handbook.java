@@ -18,6 +18,7 @@ import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
+import java.util.concurrent.ConcurrentHashMap;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -30,6 +31,10 @@ public final class Handbook {
     private static @Nullable Handbook whole;
     private static @Nullable Contents contents;
     private static final Map<Set<String>, Handbook> SOME = new HashMap<>();
+
+    /** Trees without worked examples, by the name of their file. */
+    private static final Map<String, @Nullable FileSyntax> LEAN = new ConcurrentHashMap<>();
+
     private final Map<FileId, FileSyntax> trees = new LinkedHashMap<>();
     private final Shapes shapes;
     private final List<Diagnostic> problems;
@@ -148,6 +153,24 @@ public final class Handbook {
         }
     }
 
+    /**
+     * Makes ready what a spec will need: the parser, what every spec reads of the handbook, and the files of the methods whose
+     * names stand in {@code text}. It may run beside the parsing of that spec; whoever comes first to a file reads it.
+     */
+    public static void readAhead(String text) {
+        Parser.prepare();
+        Contents c = contents();
+        Set<String> named = new LinkedHashSet<>();
+        for (String method : c.files().keySet()) {
+            if (text.contains(" " + method)) {
+                named.add(method);
+            }
+        }
+        for (String name : c.filesFor(named)) {
+            tree(name, new FileId(FileId.HANDBOOK + name + ".method"), new ArrayList<>(), false);
+        }
+    }
+
     /** The names of the shipped files, in the order in which they are read. */
     public static List<String> names() {
         List<String> out = new ArrayList<>();
@@ -165,8 +188,7 @@ public final class Handbook {
 
     /** The tree made by the build; parsed afresh where there is none of this version, as in a half-built project. */
     private static FileSyntax tree(String name, FileId id, List<Diagnostic> found, boolean examples) {
-        byte[] compiled = bytes(FOLDER + name + (examples ? ".tree" : ".lean"));
-        FileSyntax tree = compiled == null ? null : TreeCodec.read(compiled);
+        FileSyntax tree = examples ? decoded(name, ".tree") : LEAN.computeIfAbsent(name, n -> decoded(n, ".lean"));
         if (tree != null) {
             return tree;
         }
@@ -174,6 +196,11 @@ public final class Handbook {
         Parser.Parsed p = Parser.parse(id, text == null ? "" : text);
         found.addAll(p.problems());
         return p.tree();
+    }
+
+    private static @Nullable FileSyntax decoded(String name, String form) {
+        byte[] compiled = bytes(FOLDER + name + form);
+        return compiled == null ? null : TreeCodec.read(compiled);
     }
 
     /** The text of a shipped file, for explanations and for reading it. */

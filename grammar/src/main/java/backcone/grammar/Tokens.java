@@ -3,11 +3,7 @@ package backcone.grammar;
 import backcone.grammar.gen.BackconeLexer;
 import java.util.ArrayList;
 import java.util.List;
-import org.antlr.v4.runtime.CharStream;
 import org.antlr.v4.runtime.Token;
-import org.antlr.v4.runtime.TokenFactory;
-import org.antlr.v4.runtime.TokenSource;
-import org.antlr.v4.runtime.misc.Pair;
 
 /**
  * The token list of a text, ready for the parser, with the comments apart.
@@ -17,39 +13,14 @@ import org.antlr.v4.runtime.misc.Pair;
 public record Tokens(List<Tok> list, List<Tok> comments, List<Finding> findings) {
     private static final char BYTE_ORDER_MARK = '\uFEFF';
 
-    /** Makes tokens with the few extra marks we need. */
-    private static final TokenFactory<Tok> FACTORY = new TokenFactory<>() {
-        @Override
-        public Tok create(
-                Pair<TokenSource, CharStream> source,
-                int type,
-                String text,
-                int channel,
-                int start,
-                int stop,
-                int line,
-                int column) {
-            Tok t = new Tok(source, type, channel, start, stop);
-            t.setLine(line);
-            return t;
-        }
-
-        @Override
-        public Tok create(int type, String text) {
-            throw new UnsupportedOperationException("tokens are made from text only");
-        }
-    };
-
     public static Tokens of(String text) {
         int start = !text.isEmpty() && text.charAt(0) == BYTE_ORDER_MARK ? 1 : 0;
-        BackconeLexer lexer = new BackconeLexer(new TextStream(text, start));
-        lexer.setTokenFactory(FACTORY);
-        lexer.removeErrorListeners();
+        Scanner scanner = new Scanner(text, start);
         List<Finding> findings = new ArrayList<>();
         List<Tok> comments = new ArrayList<>();
         List<Tok> list = new ArrayList<>(text.length() / 4 + 8);
         while (true) {
-            Tok t = (Tok) lexer.nextToken();
+            Tok t = scanner.next();
             if (t.getType() == BackconeLexer.COMMENT) {
                 comments.add(t);
                 continue;

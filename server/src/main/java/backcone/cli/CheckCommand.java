@@ -4,7 +4,6 @@ import java.io.IOException;
 import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.time.LocalDate;
-import java.time.ZoneId;
 import java.time.format.DateTimeParseException;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
@@ -58,6 +57,7 @@ final class CheckCommand implements Command {
         String format = arguments.value("--format", "text");
         boolean json = !format.equals("text"); // for other programs: always a whole document
         FileSet set = FileSet.of(arguments.operands(), false);
+        Warm.up(set.files());
         for (String u : set.unreachable()) {
             err.println("backcone: " + u + ".");
         }
@@ -89,7 +89,7 @@ final class CheckCommand implements Command {
 
     private static LocalDate day(@Nullable String text) throws WrongUsage {
         if (text == null) {
-            return LocalDate.now(ZoneId.systemDefault());
+            return Today.day();
         }
         try {
             return LocalDate.parse(text);

@@ -11,7 +11,6 @@ import java.io.PrintWriter;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.LocalDate;
-import java.time.ZoneId;
 import java.time.format.DateTimeParseException;
 import java.util.ArrayList;
 import java.util.List;
@@ -85,7 +84,7 @@ final class CompareCommand implements Command {
 
     static LocalDate day(@Nullable String text) throws WrongUsage {
         if (text == null) {
-            return LocalDate.now(ZoneId.systemDefault());
+            return Today.day();
         }
         try {
             return LocalDate.parse(text);

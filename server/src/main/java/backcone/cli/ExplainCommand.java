@@ -13,8 +13,6 @@ import com.fasterxml.jackson.core.JsonGenerator;
 import java.io.IOException;
 import java.io.PrintWriter;
 import java.nio.file.Path;
-import java.time.LocalDate;
-import java.time.ZoneId;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Objects;
@@ -74,7 +72,8 @@ final class ExplainCommand implements Command {
             return Status.WRONG_TEXT;
         }
         Path whole = path.toAbsolutePath().normalize();
-        EngineFactory engine = new EngineFactory(FileSet.root(List.of(whole)), LocalDate.now(ZoneId.systemDefault()));
+        Warm.up(List.of(whole));
+        EngineFactory engine = new EngineFactory(FileSet.root(List.of(whole)), Today.day());
         Analysis analysis = engine.analyse(whole);
         warn(file, analysis, err);
         Optional<List<Explanation>> rating = analysis.explainRating(name);

@@ -12,8 +12,11 @@ import java.nio.charset.Charset;
 import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Map;
 import java.util.function.IntSupplier;
+import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
 
 /** The door for people and for CI: {@code backcone COMMAND}. */
@@ -54,18 +57,26 @@ public final class Main {
         return new PrintWriter(new BufferedWriter(new OutputStreamWriter(new FileOutputStream(to), charset), 1 << 15));
     }
 
+    /** In the order of the help; a command is made when it is asked for. */
+    private static final Map<String, Supplier<Command>> COMMANDS = new LinkedHashMap<>();
+
+    static {
+        COMMANDS.put("check", CheckCommand::new);
+        COMMANDS.put("explain", ExplainCommand::new);
+        COMMANDS.put("format", FormatCommand::new);
+        COMMANDS.put("handbook", HandbookCommand::new);
+        COMMANDS.put("start", StartCommand::new);
+        COMMANDS.put("ledger", LedgerCommand::new);
+        COMMANDS.put("compare", CompareCommand::new);
+        COMMANDS.put("history", HistoryCommand::new);
+        COMMANDS.put("register", RegisterCommand::new);
+        COMMANDS.put("serve", ServeCommand::new);
+    }
+
     static List<Command> commands() {
-        return List.of(
-                new CheckCommand(),
-                new ExplainCommand(),
-                new FormatCommand(),
-                new HandbookCommand(),
-                new StartCommand(),
-                new LedgerCommand(),
-                new CompareCommand(),
-                new HistoryCommand(),
-                new RegisterCommand(),
-                new ServeCommand());
+        List<Command> out = new ArrayList<>();
+        COMMANDS.values().forEach(c -> out.add(c.get()));
+        return out;
     }
 
     /** Runs a command line with its output going to the given writers; returns the exit status. */
@@ -128,12 +139,8 @@ public final class Main {
     }
 
     private static @Nullable Command find(String name) {
-        for (Command c : commands()) {
-            if (c.usage().name().equals(name)) {
-                return c;
-            }
-        }
-        return null;
+        Supplier<Command> c = COMMANDS.get(name);
+        return c == null ? null : c.get();
     }
 
     private static String unknown(String typed) {

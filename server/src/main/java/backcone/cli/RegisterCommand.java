@@ -7,7 +7,6 @@ import java.io.IOException;
 import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.time.LocalDate;
-import java.time.ZoneId;
 import java.util.ArrayList;
 import java.util.Comparator;
 import java.util.LinkedHashMap;
@@ -60,7 +59,7 @@ final class RegisterCommand implements Command {
     public int run(Arguments arguments, PrintWriter out, PrintWriter err)
             throws WrongUsage, IOException, InterruptedException {
         String on = arguments.value("--on");
-        LocalDate day = on == null ? LocalDate.now(ZoneId.systemDefault()) : CompareCommand.day(on);
+        LocalDate day = on == null ? Today.day() : CompareCommand.day(on);
         FileSet set = FileSet.of(arguments.operands(), false);
         for (String u : set.unreachable()) {
             err.println("backcone: " + u + ".");

@@ -8,6 +8,7 @@ import backcone.engine.graph.DriveGraph;
 import backcone.engine.graph.DriveSource;
 import backcone.engine.graph.Element;
 import backcone.engine.graph.Problems;
+import backcone.engine.graph.Reach;
 import backcone.engine.graph.RequirementUse;
 import backcone.engine.graph.Slot;
 import backcone.engine.syntax.Entry;
@@ -41,6 +42,9 @@ public final class DriveResults {
     private final Trusts trusts = new Trusts();
     private final boolean statesOnly;
 
+    /** Of the requirement at hand among those of its graph. */
+    private int index;
+
     private DriveResults(DriveSource source, LocalDate today, Problems problems, boolean statesOnly) {
         this.source = source;
         this.today = today;
@@ -61,8 +65,10 @@ public final class DriveResults {
         for (Run run : runs) {
             new Facts(run, problems).report();
             Map<DriveGraph.LimitUse, Boolean> passed = limits(run);
-            for (RequirementUse u : run.graph.requirements()) {
-                requirement(run, u, passed);
+            List<RequirementUse> all = run.graph.requirements();
+            for (int i = 0; i < all.size(); i++) {
+                index = i;
+                requirement(run, all.get(i), passed);
             }
             if (!statesOnly) {
                 rest(run);
@@ -438,11 +444,11 @@ public final class DriveResults {
     }
 
     /** With {@code for y} only what depends on y; of a limit said for one member, only what depends on that member's values. */
-    private static boolean concerns(Run run, DriveGraph.LimitUse l, RequirementUse u) {
+    private boolean concerns(Run run, DriveGraph.LimitUse l, RequirementUse u) {
         if (!l.targets().isEmpty()) {
             for (Slot s : l.targets()) {
                 int r = s.register();
-                if (r >= 0 && (r == u.value || run.graph.tape().depends(u.value, r))) {
+                if (run.graph.reach().of(index, r)) {
                     return true;
                 }
             }
@@ -458,11 +464,12 @@ public final class DriveResults {
     // ---- load reserve and open points
 
     private double reserve(Run run, RequirementUse u, double required) {
-        if (!run.loadActsOn(u.value)
+        Reach reach = run.graph.reach();
+        if (!reach.of(index, run.graph.loadRegister())
                 || (u.form != RequirementUse.Form.AT_LEAST && u.form != RequirementUse.Form.AT_MOST)) {
             return Double.NaN;
         }
-        java.util.function.DoubleUnaryOperator scaled = run.underLoad(u.value);
+        java.util.function.DoubleUnaryOperator scaled = run.underLoad(reach, index);
         boolean metNow = met(u.form, run.at(u.value), required, Double.NaN);
         double inner = 1;
         double outer = 1;
@@ -480,24 +487,19 @@ public final class DriveResults {
         if (!found) {
             return Double.NaN;
         }
-        for (int i = 0; i < 60; i++) {
-            double mid = (inner + outer) / 2;
-            if (mid == inner || mid == outer) {
-                break;
-            }
-            if (met(u.form, scaled.applyAsDouble(mid), required, Double.NaN) == metNow) {
-                inner = mid;
-            } else {
-                outer = mid;
-            }
-        }
-        return metNow ? inner : outer;
+        return Reserve.between(inner, outer, metNow, load -> distance(u.form, scaled.applyAsDouble(load), required));
+    }
+
+    /** How far a value lies on the good side of its bound; not negative where the bound is met. */
+    private static double distance(RequirementUse.Form f, double v, double required) {
+        double slack = SLACK * Math.abs(required);
+        return f == RequirementUse.Form.AT_LEAST ? v - (required - slack) : required + slack - v;
     }
 
     private List<RequirementAnswer.Band> bands(Run run, RequirementUse u, State state, double required) {
         List<RequirementAnswer.Band> out = new ArrayList<>();
         for (DriveGraph.OpenPoint p : run.graph.openPoints()) {
-            if (!run.graph.dependsOnInput(u.value, p.input())) {
+            if (!run.graph.reach().of(index, run.graph.inputs().get(p.input()).register())) {
                 continue;
             }
             double v = run.with(p.input(), 1)[u.value];

@@ -19,13 +19,18 @@ import org.jspecify.annotations.Nullable;
 final class Trusts {
     private @Nullable Trust weakest;
     private final Set<String> recalled = new LinkedHashSet<>();
+    private @Nullable Run run;
+    private boolean[] seen = new boolean[0];
 
     void add(Run run, int register) {
         if (register < 0) {
             return;
         }
         Tape tape = run.graph.tape();
-        boolean[] seen = new boolean[tape.size()];
+        if (this.run != run) {
+            this.run = run;
+            seen = new boolean[tape.size()];
+        }
         List<Integer> todo = new ArrayList<>();
         todo.add(register);
         while (!todo.isEmpty()) {

@@ -1,6 +1,7 @@
 package backcone.engine.eval;
 
 import backcone.engine.graph.Op;
+import backcone.engine.graph.Steps;
 import backcone.engine.graph.Tape;
 import org.jspecify.annotations.Nullable;
 
@@ -9,171 +10,144 @@ public final class Evaluator {
     private static final int MOST_STEPS = 200;
     private final Tape tape;
     private final double[] value;
-    private final int[] order;
-    private final int[] blockEnd;
+    private final Steps steps;
 
     public Evaluator(Tape tape) {
         this.tape = tape;
         this.value = new double[tape.size()];
-        this.order = new int[tape.length()];
-        this.blockEnd = new int[tape.length()];
-        for (int i = 0; i < order.length; i++) {
-            order[i] = tape.at(i);
-            blockEnd[i] = tape.blockEnd(i);
-        }
+        this.steps = tape.all();
     }
 
-    /**
-     * Runs only what of {@code register} changes with {@code cause}; everything else keeps its value from {@code base}.
-     * Same digits as a full run.
-     */
-    public Evaluator(Tape tape, double[] base, int register, int cause) {
+    /** Runs only {@code steps} of the tape; everything else keeps its value from {@code base}. Same digits as a full run. */
+    public Evaluator(Tape tape, double[] base, Steps steps) {
         this.tape = tape;
         this.value = base.clone();
-        boolean[] keep = tape.between(register, cause);
-        int n = 0;
-        for (int i = 0; i < tape.length(); i++) {
-            n += keep[tape.at(i)] ? 1 : 0;
-        }
-        this.order = new int[n];
-        this.blockEnd = new int[n];
-        int[] start = new int[tape.size()];
-        int k = 0;
-        for (int i = 0; i < tape.length(); i++) {
-            int r = tape.at(i);
-            if (keep[r]) {
-                order[k] = r;
-                Op op = tape.op(r);
-                if (op == Op.ROOT || op == Op.SETTLE) {
-                    start[r] = k;
-                } else if (op == Op.END) {
-                    blockEnd[start[tape.a(r)]] = k;
-                }
-                k++;
-            }
-        }
+        this.steps = steps;
     }
 
     /** Runs with the constants and inputs of the tape. {@code inputs} replaces INPUT registers where not null. */
     public double[] run(double load, double @Nullable [] inputs) {
-        span(0, order.length, load, inputs);
+        span(0, steps.count, load, inputs);
         return value;
     }
 
     private void span(int from, int to, double load, double @Nullable [] inputs) {
+        Op[] ops = steps.op;
+        int[] registers = steps.register;
+        double[] v = value;
         for (int i = from; i < to; i++) {
-            int r = order[i];
-            Op op = tape.op(r);
+            Op op = ops[i];
             if (op == Op.ROOT) {
-                int end = blockEnd[i];
+                int end = steps.end[i];
                 root(i, end, load, inputs);
                 i = end;
             } else if (op == Op.SETTLE) {
-                int end = blockEnd[i];
+                int end = steps.end[i];
                 settle(i, end, load, inputs);
                 i = end;
             } else if (op != Op.END) {
-                double v = step(op, r, load, inputs);
-                value[r] = Double.isFinite(v) ? v : Double.NaN;
+                double x = step(op, i, v, load, inputs);
+                v[registers[i]] = Double.isFinite(x) ? x : Double.NaN;
             }
         }
     }
 
-    private double step(Op op, int r, double load, double @Nullable [] inputs) {
-        double[] v = value;
+    private double step(Op op, int i, double[] v, double load, double @Nullable [] inputs) {
+        int[] a = steps.a;
+        int[] b = steps.b;
         switch (op) {
             case CONST:
-                return tape.constant(r);
+                return tape.constant(steps.register[i]);
             case INPUT:
-                return inputs == null ? tape.constant(r) : inputs[tape.b(r)];
+                return inputs == null ? tape.constant(steps.register[i]) : inputs[b[i]];
             case LOAD:
                 return load;
             case OPEN:
                 return Double.NaN;
             case NEG:
-                return -v[tape.a(r)];
+                return -v[a[i]];
             case NOT: {
-                double x = v[tape.a(r)];
+                double x = v[a[i]];
                 return Double.isNaN(x) ? x : x == 0 ? 1 : 0;
             }
             case ABS:
-                return Math.abs(v[tape.a(r)]);
+                return Math.abs(v[a[i]]);
             case SIGN:
-                return Math.signum(v[tape.a(r)]);
+                return Math.signum(v[a[i]]);
             case SQRT:
-                return Math.sqrt(v[tape.a(r)]);
+                return Math.sqrt(v[a[i]]);
             case EXP:
-                return Math.exp(v[tape.a(r)]);
+                return Math.exp(v[a[i]]);
             case LN:
-                return Math.log(v[tape.a(r)]);
+                return Math.log(v[a[i]]);
             case LOG10:
-                return Math.log10(v[tape.a(r)]);
+                return Math.log10(v[a[i]]);
             case SIN:
-                return Math.sin(v[tape.a(r)]);
+                return Math.sin(v[a[i]]);
             case COS:
-                return Math.cos(v[tape.a(r)]);
+                return Math.cos(v[a[i]]);
             case TAN:
-                return Math.tan(v[tape.a(r)]);
+                return Math.tan(v[a[i]]);
             case ASIN:
-                return Math.asin(v[tape.a(r)]);
+                return Math.asin(v[a[i]]);
             case ACOS:
-                return Math.acos(v[tape.a(r)]);
+                return Math.acos(v[a[i]]);
             case ATAN:
-                return Math.atan(v[tape.a(r)]);
+                return Math.atan(v[a[i]]);
             case FLOOR:
-                return Math.floor(v[tape.a(r)] + 1e-9);
+                return Math.floor(v[a[i]] + 1e-9);
             case CEIL:
-                return Math.ceil(v[tape.a(r)] - 1e-9);
+                return Math.ceil(v[a[i]] - 1e-9);
             case ROUND:
-                return Math.rint(v[tape.a(r)]);
+                return Math.rint(v[a[i]]);
             case ADD:
-                return v[tape.a(r)] + v[tape.b(r)];
+                return v[a[i]] + v[b[i]];
             case SUB:
-                return v[tape.a(r)] - v[tape.b(r)];
+                return v[a[i]] - v[b[i]];
             case MUL:
-                return v[tape.a(r)] * v[tape.b(r)];
+                return v[a[i]] * v[b[i]];
             case DIV:
-                return v[tape.a(r)] / v[tape.b(r)];
+                return v[a[i]] / v[b[i]];
             case POW:
-                return power(v[tape.a(r)], v[tape.b(r)]);
+                return power(v[a[i]], v[b[i]]);
             case ATAN2:
-                return Math.atan2(v[tape.a(r)], v[tape.b(r)]);
+                return Math.atan2(v[a[i]], v[b[i]]);
             case MIN:
-                return Math.min(v[tape.a(r)], v[tape.b(r)]);
+                return Math.min(v[a[i]], v[b[i]]);
             case MAX:
-                return Math.max(v[tape.a(r)], v[tape.b(r)]);
+                return Math.max(v[a[i]], v[b[i]]);
             case COMMON_DIVISOR:
-                return commonDivisor(v[tape.a(r)], v[tape.b(r)]);
+                return commonDivisor(v[a[i]], v[b[i]]);
             case LT:
             case LE:
             case GT:
             case GE:
             case EQ:
             case NE:
-                return compare(op, v[tape.a(r)], v[tape.b(r)]);
+                return compare(op, v[a[i]], v[b[i]]);
             case AND: {
-                double x = v[tape.a(r)];
-                double y = v[tape.b(r)];
+                double x = v[a[i]];
+                double y = v[b[i]];
                 return x == 0 || y == 0 ? 0 : x * y;
             }
             case OR: {
-                double x = v[tape.a(r)];
-                double y = v[tape.b(r)];
+                double x = v[a[i]];
+                double y = v[b[i]];
                 return x == 1 || y == 1 ? 1 : x + y;
             }
             case SELECT: {
-                double x = v[tape.a(r)];
-                return Double.isNaN(x) ? x : x != 0 ? v[tape.b(r)] : v[tape.c(r)];
+                double x = v[a[i]];
+                return Double.isNaN(x) ? x : x != 0 ? v[b[i]] : v[steps.c[i]];
             }
             case TABLE:
-                return tape.table(tape.b(r)).at(v[tape.a(r)]);
+                return tape.table(b[i]).at(v[a[i]]);
             case NEAREST_KEY:
-                return tape.table(tape.b(r)).nearestKey(v[tape.a(r)]);
+                return tape.table(b[i]).nearestKey(v[a[i]]);
             case NEXT_KEY:
-                return tape.table(tape.b(r)).nextKey(v[tape.a(r)]);
+                return tape.table(b[i]).nextKey(v[a[i]]);
             case LISTED_KEY: {
-                double x = v[tape.a(r)];
-                return Double.isNaN(x) ? x : tape.table(tape.b(r)).listed(x);
+                double x = v[a[i]];
+                return Double.isNaN(x) ? x : tape.table(b[i]).listed(x);
             }
             default:
                 throw new IllegalStateException(op.name());
@@ -236,14 +210,14 @@ public final class Evaluator {
     }
 
     private double residual(int i, int end, double x, double load, double @Nullable [] inputs) {
-        value[order[i]] = x;
+        value[steps.register[i]] = x;
         span(i + 1, end, load, inputs);
-        return value[tape.b(order[end])];
+        return value[steps.b[end]];
     }
 
     /** Bracketed root by the Illinois rule with bisection as its net; the sign change is checked before. */
     private void root(int i, int end, double load, double @Nullable [] inputs) {
-        int r = order[i];
+        int r = steps.register[i];
         double lo = value[tape.a(r)];
         double hi = value[tape.b(r)];
         double flo = residual(i, end, lo, load, inputs);
@@ -306,7 +280,7 @@ public final class Evaluator {
     }
 
     private void settle(int i, int end, double load, double @Nullable [] inputs) {
-        int r = order[i];
+        int r = steps.register[i];
         double x = value[tape.a(r)];
         double tolerance = value[tape.b(r)];
         int most = (int) tape.constant(r);

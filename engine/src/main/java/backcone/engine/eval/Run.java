@@ -1,6 +1,7 @@
 package backcone.engine.eval;
 
 import backcone.engine.graph.DriveGraph;
+import backcone.engine.graph.Reach;
 import org.jspecify.annotations.Nullable;
 
 /** The values of a graph for the numbers as written, and for other loads, readings or numbers. */
@@ -35,23 +36,31 @@ public final class Run {
 
     /** One register as a function of the factor on the load; only what changes with the load is computed again. */
     public java.util.function.DoubleUnaryOperator underLoad(int register) {
-        Evaluator e = new Evaluator(graph.tape(), value, register, graph.loadRegister());
+        Evaluator e = new Evaluator(graph.tape(), value, graph.tape().between(register, graph.loadRegister()));
         return load -> e.run(load, inputs)[register];
     }
 
-    /** All registers with one input replaced; asked again for the same input, the answer is kept. */
+    /** The target number {@code target} of {@code reach} as a function of the factor on the load. */
+    public java.util.function.DoubleUnaryOperator underLoad(Reach reach, int target) {
+        int register = reach.register(target);
+        Evaluator e = new Evaluator(graph.tape(), value, graph.tape().between(reach, target, graph.loadRegister()));
+        return load -> e.run(load, inputs)[register];
+    }
+
+    /** All registers with one input replaced; only what changes is computed again, and the answer is kept. */
     public double[] with(int input, double v) {
         return others.computeIfAbsent(input + "=" + v, k -> {
             double[] other = inputs.clone();
             other[input] = v;
-            return new Evaluator(graph.tape()).run(1, other).clone();
+            int register = graph.inputs().get(input).register();
+            return new Evaluator(graph.tape(), value, graph.tape().after(register)).run(1, other);
         });
     }
 
     /** Whether load acts on a register at all. */
     public boolean loadActsOn(int register) {
         int load = graph.loadRegister();
-        return load >= 0 && register >= 0 && graph.tape().depends(register, load);
+        return load >= 0 && register >= 0 && graph.tape().between(register, load).count > 0;
     }
 
     public double @Nullable [] inputs() {

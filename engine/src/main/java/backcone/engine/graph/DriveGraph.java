@@ -47,6 +47,7 @@ public final class DriveGraph {
     final Map<Integer, Slot> owners = new HashMap<>();
     private final List<@Nullable Slot> origin = new ArrayList<>();
     final List<Input> inputs = new ArrayList<>();
+    private @Nullable Reach reach;
     final List<OpenPoint> openPoints = new ArrayList<>();
     final List<Whole> wholes = new ArrayList<>();
     final List<InRange> ranges = new ArrayList<>();
@@ -532,13 +533,18 @@ public final class DriveGraph {
                 : u;
     }
 
-    public boolean dependsOnInput(int register, int input) {
-        for (int r = 0; r < tape.size(); r++) {
-            if (tape.op(r) == Op.INPUT && tape.b(r) == input) {
-                return tape.depends(register, r);
-            }
+    /** What the values of the requirements rest on, in the order of {@link #requirements()}. */
+    public Reach reach() {
+        Reach r = reach;
+        if (r == null) {
+            r = new Reach(tape, requirements().stream().mapToInt(u -> u.value).toArray());
+            reach = r;
         }
-        return false;
+        return r;
+    }
+
+    public boolean dependsOnInput(int register, int input) {
+        return register >= 0 && tape.between(register, inputs.get(input).register()).count > 0;
     }
 
     public FileId fileOfElement(Element e) {

@@ -4,6 +4,8 @@ import backcone.engine.numeric.Interpolation;
 import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
+import java.util.Map;
+import java.util.concurrent.ConcurrentHashMap;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -12,19 +14,22 @@ import org.jspecify.annotations.Nullable;
  * region of an unknown stands between its ROOT or SETTLE and its END.
  */
 public final class Tape {
-    private byte[] op = new byte[256];
-    private int[] a = new int[256];
-    private int[] b = new int[256];
-    private int[] c = new int[256];
+    byte[] op = new byte[256];
+    int[] a = new int[256];
+    int[] b = new int[256];
+    int[] c = new int[256];
     private double[] constant = new double[256];
-    private int size;
-    private int[] order = new int[256];
-    private int ordered;
+    int size;
+    int[] order = new int[256];
+    int ordered;
     private final List<Interpolation> tables = new ArrayList<>();
     private final List<@Nullable Object> reasons = new ArrayList<>();
     private int[] blockEnd = new int[0];
+    private final Map<Long, Steps> steps = new ConcurrentHashMap<>();
+    private final Map<Integer, boolean[]> changing = new ConcurrentHashMap<>();
 
     private static final Op[] OPS = Op.values();
+    private static final byte END = (byte) Op.END.ordinal();
 
     int emit(Op o, int x, int y, int z, double value) {
         if (size == op.length) {
@@ -147,6 +152,8 @@ public final class Tape {
 
     /** Finds where each region ends; call once when the tape is complete. */
     void finish() {
+        steps.clear();
+        changing.clear();
         blockEnd = new int[ordered];
         int[] start = new int[size];
         for (int i = 0; i < ordered; i++) {
@@ -203,44 +210,59 @@ public final class Tape {
         return reasons.get(index);
     }
 
-    /** The registers on the ways from {@code cause} to {@code r}, with the ends of the regions among them. */
-    public boolean[] between(int r, int cause) {
-        boolean[] above = new boolean[size];
-        int[] stack = new int[size * 3 + 3];
-        int n = 0;
-        stack[n++] = r;
-        while (n > 0) {
-            int x = stack[--n];
-            if (above[x]) {
-                continue;
+    /** All operations in order. */
+    public Steps all() {
+        return steps.computeIfAbsent(-1L, k -> new Steps(this, null));
+    }
+
+    /** What of {@code register} changes with {@code cause}. */
+    public Steps between(int register, int cause) {
+        return between(new Reach(this, new int[] {register}), 0, cause);
+    }
+
+    /** What of the target number {@code target} of {@code reach} changes with {@code cause}. */
+    public Steps between(Reach reach, int target, int cause) {
+        return steps.computeIfAbsent((long) reach.register(target) << 32 | cause, k -> {
+            boolean[] keep = changing(cause).clone();
+            for (int r = 0; r < size; r++) {
+                keep[r] &= op[r] == END ? reach.of(target, a[r]) : reach.of(target, r);
             }
-            above[x] = true;
-            int count = operands(x);
-            boolean unknown = op(x) == Op.ROOT || op(x) == Op.SETTLE;
-            if (count > 0) {
-                stack[n++] = a[x];
+            return new Steps(this, keep);
+        });
+    }
+
+    /** Everything that changes with {@code cause}. */
+    public Steps after(int cause) {
+        return steps.computeIfAbsent(1L << 62 | cause, k -> new Steps(this, changing(cause)));
+    }
+
+    /** Whether a register changes with {@code cause}, register by register; the END of a region as its unknown. */
+    private boolean[] changing(int cause) {
+        return changing.computeIfAbsent(cause, k -> {
+            boolean[] keep = new boolean[size];
+            for (int i = 0; i < ordered; i++) {
+                int x = order[i];
+                if (op[x] != END) {
+                    keep[x] |= x == cause || uses(x, keep);
+                    continue;
+                }
+                int unknown = a[x];
+                if (keep[b[x]] && !keep[unknown]) {
+                    keep[unknown] = true;
+                    i = startOf(i, unknown); // its region once more
+                }
+                keep[x] = keep[unknown];
             }
-            if (count > 1) {
-                stack[n++] = b[x];
-            }
-            if (count > 2 || unknown) {
-                stack[n++] = c[x];
-            }
+            return keep;
+        });
+    }
+
+    private int startOf(int end, int unknown) {
+        int i = end;
+        while (order[i] != unknown) {
+            i--;
         }
-        boolean[] keep = new boolean[size];
-        for (int i = 0; i < ordered; i++) {
-            int x = order[i];
-            if (op(x) == Op.END) {
-                keep[x] = keep[a[x]];
-                continue;
-            }
-            if (!above[x]) {
-                continue;
-            }
-            boolean unknown = op(x) == Op.ROOT || op(x) == Op.SETTLE;
-            keep[x] = x == cause || uses(x, keep) || (unknown && depends(c[x], cause));
-        }
-        return keep;
+        return i;
     }
 
     /** Whether {@code r} depends on {@code on}, whatever the numbers are. */

@@ -24,6 +24,11 @@ public final class Parser {
 
     private Parser() {}
 
+    /** Loads the tables of the grammar, which takes a while in a new process. */
+    public static void prepare() {
+        new BackconeParser(new TokenList(Tokens.of("").list()));
+    }
+
     public static Parsed parse(FileId file, String text) {
         if (text.length() > MOST_CHARACTERS) {
             Span start = new Span(0, 0);
