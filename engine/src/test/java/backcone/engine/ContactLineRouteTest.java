@@ -144,7 +144,13 @@ class ContactLineRouteTest {
 
     private static String[] readOfBevel() {
         List<String> reads = new ArrayList<>(List.of(
-                "head.p_vet", "head.g_va", "head.beta_vb", "head.b_eff", "head.eps_va", "head.eps_vb", "head.main.f_max"));
+                "head.p_vet",
+                "head.g_va",
+                "head.beta_vb",
+                "head.b_eff",
+                "head.eps_va",
+                "head.eps_vb",
+                "head.main.f_max"));
         reads.addAll(List.of("head.main.l_bm01", "head.main.Z_LS", "head.main.eps_vg"));
         for (String s : List.of("flank", "root_side")) {
             for (String l : LINES) {
@@ -183,7 +189,8 @@ class ContactLineRouteTest {
         if (overlap >= 1) {
             return 0;
         }
-        // a second pair meets at the one end of the path (flank), or leaves at the other (root): this one is a pitch off
+        // a second pair meets at the one end of the path (flank), or leaves at the other (root): this one is a pitch
+        // off
         double spur = root ? -action / 2 + pitch : action / 2 - pitch;
         return spur * (1 - overlap);
     }
@@ -303,7 +310,8 @@ class ContactLineRouteTest {
             double overlap = d.at("head.eps_b");
             double[] lines = lines(d, width);
             double share = d.at("head.main.Z_eps") * d.at("head.main.Z_eps");
-            // what the lines carry on the average is what a face of that length would; spur teeth carry more than their mean
+            // what the lines carry on the average is what a face of that length would; spur teeth carry more than their
+            // mean
             double mean = width / lines[1];
             double fewest = width / lines[0];
             if (overlap >= 1) {
@@ -323,7 +331,9 @@ class ContactLineRouteTest {
                 } else {
                     // the rest is the value of the spur pair with the same path of contact
                     double spur = (share - overlap * mean) / (1 - overlap);
-                    assertThat(spur).as(d.toString()).isCloseTo((4 - d.at("head.eps_a")) / 3, within(1e-4 / (1 - overlap)));
+                    assertThat(spur)
+                            .as(d.toString())
+                            .isCloseTo((4 - d.at("head.eps_a")) / 3, within(1e-4 / (1 - overlap)));
                 }
             }
         }

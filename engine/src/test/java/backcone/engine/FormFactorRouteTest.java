@@ -129,25 +129,6 @@ class FormFactorRouteTest {
         return low + (high - low) * r.nextDouble();
     }
 
-    /** Contact ratio of two involute gears: the tip circles cut off a piece of the tangent to both base circles. */
-    static double contactRatio(double base1, double tip1, double base2, double tip2, double axes, double teeth1) {
-        double phi = Math.acos((base1 + base2) / axes);
-        // touches the first base circle here, and runs on square to the radius
-        double[] at = {base1 * Math.cos(phi), base1 * Math.sin(phi)};
-        double[] on = {Math.sin(phi), -Math.cos(phi)};
-        double out = leaves(at, on, new double[] {0, 0}, tip1, 1);
-        double in = leaves(at, on, new double[] {axes, 0}, tip2, -1);
-        return (out - in) / (2 * Math.PI * base1 / teeth1);
-    }
-
-    /** Where a line leaves (or enters) a circle. */
-    private static double leaves(double[] from, double[] on, double[] middle, double radius, int side) {
-        double dx = from[0] - middle[0];
-        double dy = from[1] - middle[1];
-        double half = dx * on[0] + dy * on[1];
-        return -half + side * Math.sqrt(half * half - dx * dx - dy * dy + radius * radius);
-    }
-
     @Test
     void ofCylindricalGears() {
         List<String> reads = new ArrayList<>(List.of("head.a_w"));
@@ -186,7 +167,7 @@ class FormFactorRouteTest {
             double baseHelix = Math.asin(Math.sin(beta) * Math.cos(angle));
             double base = Math.cos(Math.atan(Math.tan(angle) / Math.cos(beta))) / Math.cos(beta) / 2;
             double a = d.at("head.a_w");
-            double eps = contactRatio(
+            double eps = Plane.contactRatio(
                     base * z[0], d.at("head.pinion.d_a") / 2, base * z[1], d.at("head.wheel.d_a") / 2, a, z[0]);
             if (!(d.at("head.pinion.s_an") > 0.1 && d.at("head.wheel.s_an") > 0.1 && eps > 1)) {
                 continue;
@@ -258,7 +239,8 @@ class FormFactorRouteTest {
             for (int i = 0; i < 2; i++) {
                 double edge = between(random, 0.2, 0.34);
                 double out = random.nextInt(3) > 0 ? 0 : between(random, 0, 0.04);
-                d.set("head." + member[i] + ".tool.edge_radius", edge).set("head." + member[i] + ".tool.protuberance", out);
+                d.set("head." + member[i] + ".tool.edge_radius", edge)
+                        .set("head." + member[i] + ".tool.protuberance", out);
                 double zn = d.at("head." + member[i] + ".z_vn");
                 int sign = i == 0 ? 1 : -1;
                 tooth[i] = new Tooth(zn, angle, depth, edge, out, sign * shift, sign * thicker);

@@ -30,20 +30,14 @@ final class Tooth {
      * @param shift distance of the reference line from the pitch circle, outward
      * @param thicker half of what the tooth has more in thickness at the reference line
      */
-    Tooth(
-            double teeth,
-            double angle,
-            double depth,
-            double edge,
-            double protuberance,
-            double shift,
-            double thicker) {
+    Tooth(double teeth, double angle, double depth, double edge, double protuberance, double shift, double thicker) {
         this.radius = teeth / 2;
         this.angle = angle;
         this.depth = depth;
         this.edge = edge;
         this.shift = shift;
-        // half a tooth of the tool at its reference line; the flank comes nearer to the middle of the tool's tooth below
+        // half a tooth of the tool at its reference line; the flank comes nearer to the middle of the tool's tooth
+        // below
         this.flankAt = Math.PI / 4 - thicker;
         // the corner touches the flank, moved out by the protuberance, and the line of the tips
         double down = depth - edge;
@@ -148,7 +142,7 @@ final class Tooth {
     /** Roll at which the flank is touched at this distance from the axis. */
     double rollAtRadius(double wanted) {
         // on the line of action, from the base circle outward
-        double base = (flankAt - shift * Math.tan(angle) - radius * Math.tan(angle)) / radius;
+        double base = rollAtBase();
         return bisect(
                 r -> {
                     double[] p = flank(r);
@@ -156,6 +150,33 @@ final class Tooth {
                 },
                 base,
                 base + 2);
+    }
+
+    double rollAtBase() {
+        return (flankAt - shift * Math.tan(angle) - radius * Math.tan(angle)) / radius;
+    }
+
+    /** Half of the tooth at a distance from the axis, as an angle at the axis. */
+    double halfAngle(double wanted) {
+        double[] p = flank(rollAtRadius(wanted));
+        return Math.atan2(p[0], p[1]);
+    }
+
+    /** Distance of two parallel planes that touch the outer flanks of teeth whose middles stand {@code spread} to each side. */
+    double span(double spread) {
+        double base = rollAtBase();
+        double c = Math.cos(spread);
+        double s = Math.sin(spread);
+        // turned aside, the flank reaches farthest where it runs along the plane
+        double roll = bisect(
+                r -> {
+                    double[] d = derivative(this::flank, r, FINE);
+                    return d[0] * c + d[1] * s;
+                },
+                base + 4 * FINE,
+                base + 1.5);
+        double[] p = flank(roll);
+        return 2 * (p[0] * c + p[1] * s);
     }
 
     double filletRadius(double roll) {

@@ -19,7 +19,8 @@ final class Varied {
         for (String name : read) {
             Slot s = graph.find(name);
             if (s == null) {
-                throw new AssertionError("nothing is called " + name + "\n" + Specs.of(text).messages());
+                throw new AssertionError(
+                        "nothing is called " + name + "\n" + Specs.of(text).messages());
             }
             graph.demand(s);
             slots.put(name, s);
@@ -49,6 +50,15 @@ final class Varied {
             return this;
         }
 
+        /** The number that stands at a name now. */
+        double written(String path) {
+            Integer i = inputs.get(path);
+            if (i == null) {
+                throw new AssertionError("no number is written at " + path);
+            }
+            return numbers[i];
+        }
+
         double at(String name) {
             Run r = run;
             if (r == null) {
@@ -65,7 +75,8 @@ final class Varied {
         @Override
         public String toString() {
             StringBuilder b = new StringBuilder();
-            inputs.forEach((k, i) -> b.append(k).append(" = ").append(numbers[i]).append(", "));
+            inputs.forEach(
+                    (k, i) -> b.append(k).append(" = ").append(numbers[i]).append(", "));
             return b.toString();
         }
     }
