@@ -354,4 +354,94 @@ class ContactLineRouteTest {
         }
         return new double[] {least, sum / STEPS};
     }
+
+    // ---- curvature where the lines of the single pair stand
+
+    /** Root of the product of both radii of curvature at a point of the line of action. */
+    private static double curved(double[] at, double base1, double base2, double axes) {
+        double one = Math.sqrt(at[0] * at[0] + at[1] * at[1] - base1 * base1);
+        double two = Math.sqrt((at[0] - axes) * (at[0] - axes) + at[1] * at[1] - base2 * base2);
+        return Math.sqrt(one * two);
+    }
+
+    private static double[] towards(double[] from, double[] to, double far) {
+        double length = Math.hypot(to[0] - from[0], to[1] - from[1]);
+        return new double[] {from[0] + (to[0] - from[0]) * far / length, from[1] + (to[1] - from[1]) * far / length};
+    }
+
+    /** The line of action meets the line of centres at the pitch point. */
+    private static double[] pitchPoint(double base1, double base2, double axes) {
+        return new double[] {axes * base1 / (base1 + base2), 0};
+    }
+
+    @Test
+    void singleContactOfCylindricalPairs() {
+        String[] reads = {
+            "head.a_w",
+            "head.p_bt",
+            "head.pinion.d_b",
+            "head.wheel.d_b",
+            "head.pinion.d_a",
+            "head.wheel.d_a",
+            "head.main.M_1",
+            "head.main.M_2"
+        };
+        Varied drive = new Varied(CYLINDRICAL, reads);
+        Random random = new Random(63364);
+        for (int i = 0; i < DESIGNS; i++) {
+            int z = 17 + random.nextInt(40);
+            Varied.Design d = drive.design()
+                    .set("head.pinion.teeth", z)
+                    .set("head.wheel.teeth", z + random.nextInt(60))
+                    .set("head.helix_angle", i % 2 == 0 ? 0 : Math.toRadians(between(random, 2, 30)))
+                    .set("head.pinion.profile_shift", between(random, 0, 0.4))
+                    .set("head.wheel.profile_shift", between(random, 0, 0.4));
+            double base1 = d.at("head.pinion.d_b") / 2;
+            double base2 = d.at("head.wheel.d_b") / 2;
+            double axes = d.at("head.a_w");
+            double[][] path = Plane.path(base1, d.at("head.pinion.d_a") / 2, base2, d.at("head.wheel.d_a") / 2, axes);
+            double pitch = curved(pitchPoint(base1, base2, axes), base1, base2, axes);
+            // the pair before it leaves at the pinion's tip: this one has just come to be alone
+            double inner = curved(towards(path[1], path[0], d.at("head.p_bt")), base1, base2, axes);
+            double outer = curved(towards(path[0], path[1], d.at("head.p_bt")), base1, base2, axes);
+            assertThat(d.at("head.main.M_1")).as(d.toString()).isCloseTo(pitch / inner, within(EXACT));
+            assertThat(d.at("head.main.M_2")).as(d.toString()).isCloseTo(pitch / outer, within(EXACT));
+        }
+    }
+
+    /** The bevel factor belongs to the place where the middle line crosses the line of action. */
+    @Test
+    void middleLineOfBevelPairs() {
+        Varied drive = new Varied(
+                BEVEL,
+                "head.a_v",
+                "head.p_vet",
+                "head.beta_vb",
+                "head.eps_va",
+                "head.eps_vb",
+                "head.pinion.d_vb",
+                "head.wheel.d_vb",
+                "head.pinion.d_va",
+                "head.wheel.d_va",
+                "head.main.Z_MB",
+                "head.main.flank.f_m",
+                "head.g_va");
+        Random random = new Random(103004);
+        for (int i = 0; i < DESIGNS; i++) {
+            Varied.Design d = drawn(drive, random, i);
+            double base1 = d.at("head.pinion.d_vb") / 2;
+            double base2 = d.at("head.wheel.d_vb") / 2;
+            double axes = d.at("head.a_v");
+            double[][] path = Plane.path(base1, d.at("head.pinion.d_va") / 2, base2, d.at("head.wheel.d_va") / 2, axes);
+            double action = Math.hypot(path[1][0] - path[0][0], path[1][1] - path[0][1]);
+            assertThat(d.at("head.g_va")).isCloseTo(action, within(EXACT * axes));
+            double middle = middleLine(d.at("head.p_vet"), action, d.at("head.eps_vb"), false);
+            double[] at = towards(path[0], path[1], action / 2 + middle);
+            double expected =
+                    curved(pitchPoint(base1, base2, axes), base1, base2, axes) / curved(at, base1, base2, axes);
+            assertThat(d.at("head.main.Z_MB")).as(d.toString()).isCloseTo(expected, within(EXACT * 10));
+            assertThat(d.at("head.main.flank.f_m"))
+                    .isCloseTo(middle * Math.cos(d.at("head.beta_vb")), within(EXACT * axes));
+        }
+    }
 }

@@ -179,6 +179,44 @@ final class Tooth {
         return 2 * (p[0] * c + p[1] * s);
     }
 
+    /**
+     * Roll at which the fillet is narrowest against a load on the middle of the tooth at height {@code load}: the widest
+     * parabola with its apex there that still lies in the tooth touches it. NaN where it is not inside the fillet.
+     */
+    double rollAtParabola(double load) {
+        double bottom = centre / radius;
+        double flank = bottom - (depth - edge - shift) / Math.tan(angle) / radius;
+        DoubleUnaryOperator wide = r -> {
+            double[] p = fillet(r);
+            return p[0] * p[0] / (load - p[1]);
+        };
+        // coarse first, then between the neighbours
+        int best = 0;
+        int n = 400;
+        for (int k = 1; k <= n; k++) {
+            if (wide.applyAsDouble(flank + (bottom - flank) * k / n)
+                    < wide.applyAsDouble(flank + (bottom - flank) * best / n)) {
+                best = k;
+            }
+        }
+        if (best == 0 || best == n) {
+            return Double.NaN;
+        }
+        double h = (bottom - flank) * 1e-3;
+        return bisect(
+                r -> 45 * (wide.applyAsDouble(r + h) - wide.applyAsDouble(r - h))
+                        - 9 * (wide.applyAsDouble(r + 2 * h) - wide.applyAsDouble(r - 2 * h))
+                        + wide.applyAsDouble(r + 3 * h)
+                        - wide.applyAsDouble(r - 3 * h),
+                flank + (bottom - flank) * (best - 1) / n,
+                flank + (bottom - flank) * (best + 1) / n);
+    }
+
+    /** Radius of the fillet at its bottom, where the tool's corner stands deepest. */
+    double radiusAtBottom() {
+        return filletRadius(centre / radius);
+    }
+
     double filletRadius(double roll) {
         double[] d = derivative(this::fillet, roll, step());
         double[] dd = second(this::fillet, roll, step());
