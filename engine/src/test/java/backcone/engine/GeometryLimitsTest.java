@@ -75,6 +75,16 @@ class GeometryLimitsTest {
         assertThat(Specs.of(HELICAL).messages()).isEmpty();
     }
 
+    /** The drive has a text called `standard`; the depth taper of that name is a word all the same. */
+    @Test
+    void aBlankOfStandardTaperIsComputed() {
+        String text = BEVEL.replace("proportions    = traditional", "proportions = iso_23509\n depth_taper = standard");
+        assertThat(Specs.of(text).value("head.pinion.delta_a"))
+                .isEqualTo(Specs.of(text.replace("drive d {", "drive d {\n standard = \"ours\""))
+                        .value("head.pinion.delta_a"))
+                .isPositive();
+    }
+
     @ParameterizedTest(name = "{2}")
     @CsvSource(
             delimiter = '|',

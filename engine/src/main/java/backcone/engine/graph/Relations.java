@@ -239,6 +239,12 @@ final class Relations {
     }
 
     private boolean path(Expr.Path p, Ctx ctx, Slot s, @Nullable Decl decl) {
+        // a word of the choice asked for is that word, even where something else around it has the same name
+        if (s.decl.kind instanceof ValueKind.Choice c
+                && p.names().size() == 1
+                && c.kind().has(p.text())) {
+            return true;
+        }
         Expr.Path real = p;
         if (decl != null) {
             for (Note.Taken t : decl.taking) {
