@@ -58,7 +58,7 @@ final class GeneratedDrives {
                 out.add(new Text(t.path(), otherSizes(t.text(), random)));
             }
         }
-        for (int k = 0; k < 24; k++) {
+        for (int k = 0; k < 16; k++) {
             out.add(new Text("train.drive", train(random)));
         }
         return out;
