@@ -56,6 +56,10 @@ final class SampleGraphs {
     }
 
     private static List<Named> of(BackconeEngine engine, FileId file) {
+        return of(engine, file, false);
+    }
+
+    static List<Named> of(BackconeEngine engine, FileId file, boolean traced) {
         SourceText main = (SourceText) engine.load(file);
         Sources sources = new Sources(main, engine::load);
         Shapes shapes = FileAnalysis.shapes(sources, Handbook.standard());
@@ -66,7 +70,7 @@ final class SampleGraphs {
             for (String c : DriveBuilder.casesInUse(d)) {
                 out.add(new Named(
                         file + ", " + d.name() + " under " + c,
-                        DriveBuilder.build(shapes, sources, d, c, new Problems(), false)));
+                        DriveBuilder.build(shapes, sources, d, c, new Problems(), traced)));
             }
         }
         return out;

@@ -24,6 +24,7 @@ import java.util.HashSet;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Set;
+import java.util.function.Predicate;
 import org.jspecify.annotations.Nullable;
 
 /** Runs the worked examples that stand in handbook texts and tells which equations they reach. */
@@ -55,20 +56,25 @@ public final class Examples {
             Set<TableDef> reachedTables) {}
 
     /** The examples of all files for which {@code wanted} holds. */
-    public static Report run(Shapes shapes, java.util.function.Predicate<FileId> wanted) {
+    public static Report run(Shapes shapes, Predicate<FileId> wanted) {
+        return run(shapes, wanted, x -> true);
+    }
+
+    /** Of these files, the examples for which {@code example} holds. */
+    public static Report run(Shapes shapes, Predicate<FileId> wanted, Predicate<Entry.Example> example) {
         Library library = shapes.library();
         Report report = new Report(new ArrayList<>(), new ArrayList<>(), new HashSet<>(), new HashSet<>());
         for (KindDef k : library.kinds.values()) {
-            all(shapes, k.name(), null, k.body(), wanted, report);
+            all(shapes, k.name(), null, k.body(), wanted, example, report);
         }
         for (List<MethodDef> cs : library.chapters.values()) {
             for (MethodDef c : cs) {
-                all(shapes, c.kind(), null, c.body(), wanted, report);
+                all(shapes, c.kind(), null, c.body(), wanted, example, report);
             }
         }
         for (List<MethodDef> ms : library.methods.values()) {
             for (MethodDef m : ms) {
-                all(shapes, m.kind(), m, m.body(), wanted, report);
+                all(shapes, m.kind(), m, m.body(), wanted, example, report);
             }
         }
         return report;
@@ -79,17 +85,20 @@ public final class Examples {
             String kind,
             @Nullable MethodDef method,
             BodyDef body,
-            java.util.function.Predicate<FileId> wanted,
+            Predicate<FileId> wanted,
+            Predicate<Entry.Example> example,
             Report report) {
         if (!wanted.test(body.file)) {
             return;
         }
         for (Entry.Example x : body.examples) {
-            one(shapes, kind, method, body, x, report);
+            if (example.test(x)) {
+                one(shapes, kind, method, body, x, report);
+            }
         }
         for (List<BodyDef> each : body.each.values()) {
             for (BodyDef b : each) {
-                all(shapes, kind, method, b, wanted, report);
+                all(shapes, kind, method, b, wanted, example, report);
             }
         }
     }

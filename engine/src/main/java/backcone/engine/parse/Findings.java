@@ -219,7 +219,14 @@ final class Findings {
                     .withFix("write `" + instead + "`", span, instead);
         }
         int c = text.codePointAt(0);
-        if ("\u201C\u201D\u201E\u00AB\u00BB'\u2018\u2019".indexOf(c) >= 0) {
+        if (c == '\'') {
+            return of(
+                    Code.BAD_CHARACTER,
+                    span,
+                    "`'` has no meaning here: texts stand between straight quotes, `\"…\"`, and minutes of arc are"
+                            + " written `arcmin`");
+        }
+        if ("\u201C\u201D\u201E\u00AB\u00BB\u2018\u2019".indexOf(c) >= 0) {
             return of(
                     Code.BAD_CHARACTER,
                     span,

@@ -3,10 +3,12 @@ package backcone.engine.parse;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import backcone.engine.syntax.Entry;
+import java.io.IOException;
 import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.regex.Pattern;
 import org.junit.jupiter.api.Test;
 
 /**
@@ -14,6 +16,7 @@ import org.junit.jupiter.api.Test;
  * with their text and nesting, and a cut line may cost one finding.
  */
 class HalfTypedTextTest {
+    private static final Pattern BLANKS = Pattern.compile("\\s+");
 
     /** Where an entry stands among others, and what of it stands on its first lines, the body left out. */
     private record Item(String key, int start, int end) {}
@@ -42,6 +45,24 @@ class HalfTypedTextTest {
         }
         System.out.println("lines without braces: " + plain);
         System.out.println("lines with braces:    " + braces);
+        check(plain, braces);
+    }
+
+    /** The same for every sample and every library that samples use. */
+    @Test
+    void neighboursSurviveInSamples() throws IOException {
+        Tally plain = new Tally();
+        Tally braces = new Tally();
+        for (String text : Texts.samples()) {
+            cutAll(text, plain, braces);
+        }
+        System.out.println("samples, lines without braces: " + plain);
+        System.out.println("samples, lines with braces:    " + braces);
+        assertThat(plain.cuts).isGreaterThan(5000);
+        check(plain, braces);
+    }
+
+    private static void check(Tally plain, Tally braces) {
         assertThat(plain.withLosses).isLessThanOrEqualTo(plain.cuts / 200);
         assertThat(plain.withMore).isZero();
         assertThat(braces.withLosses).isLessThanOrEqualTo(braces.cuts / 50);
@@ -49,7 +70,9 @@ class HalfTypedTextTest {
     }
 
     private static void cutAll(String text, Tally plain, Tally braces) {
-        List<Entry> whole = Texts.parse(text).tree().entries();
+        List<Entry> entries = Texts.parse(text).tree().entries();
+        List<Item> nested = items(entries, text, true);
+        List<Item> flat = items(entries, text, false);
         int start = 0;
         while (start < text.length()) {
             int end = text.indexOf('\n', start);
@@ -60,14 +83,14 @@ class HalfTypedTextTest {
                 if (!left.isEmpty()
                         && !left.startsWith("#")
                         && !line.substring(0, column).isBlank()) {
-                    cut(text, whole, start + column, end, !brace, brace ? braces : plain);
+                    cut(text, brace ? flat : nested, start + column, end, !brace, brace ? braces : plain);
                 }
             }
             start = end + 1;
         }
     }
 
-    private static void cut(String text, List<Entry> whole, int at, int end, boolean nested, Tally tally) {
+    private static void cut(String text, List<Item> whole, int at, int end, boolean nested, Tally tally) {
         String cut = text.substring(0, at) + text.substring(end);
         Parser.Parsed parsed = Texts.parse(cut);
         Map<String, Integer> there = new HashMap<>();
@@ -75,7 +98,7 @@ class HalfTypedTextTest {
             there.merge(i.key(), 1, Integer::sum);
         }
         int lost = 0;
-        for (Item i : items(whole, text, nested)) {
+        for (Item i : whole) {
             boolean touched = i.start() < end && i.end() > at - 2;
             if (!touched && there.merge(i.key(), -1, Integer::sum) < 0) {
                 lost++;
@@ -101,7 +124,8 @@ class HalfTypedTextTest {
             List<Entry> body = body(e);
             int brace = body == null ? -1 : own.indexOf('{');
             int end = brace < 0 ? e.span().end() : e.span().start() + brace;
-            String head = text.substring(e.span().start(), end).strip().replaceAll("\\s+", " ");
+            String head = text.substring(e.span().start(), end).strip();
+            head = BLANKS.matcher(head).replaceAll(" ");
             out.add(new Item(
                     parent + "/" + e.getClass().getSimpleName() + ":" + head,
                     e.span().start(),

@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThat;
 import backcone.engine.diagnostics.Code;
 import backcone.engine.diagnostics.Diagnostic;
 import backcone.engine.text.Span;
+import java.io.IOException;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
@@ -88,6 +89,24 @@ class HostileTextTest {
         for (int end = 0; end <= text.length(); end++) {
             check(text.substring(0, end));
         }
+    }
+
+    /** Every place where the typing of a sample may have stopped. */
+    @Test
+    void everyPrefixOfEverySample() throws IOException {
+        int prefixes = 0;
+        for (String text : Texts.samples()) {
+            for (int end = 0; end <= text.length(); end++) {
+                Parser.Parsed parsed = Texts.parse(text.substring(0, end));
+                for (Diagnostic d : parsed.problems()) {
+                    if (d.span().end() > end) {
+                        throw new AssertionError(d + " lies behind the end of\n" + text.substring(0, end));
+                    }
+                }
+                prefixes++;
+            }
+        }
+        assertThat(prefixes).isGreaterThan(50_000);
     }
 
     @Test

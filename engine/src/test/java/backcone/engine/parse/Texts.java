@@ -5,7 +5,11 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
+import java.util.stream.Stream;
 
 /** The texts that these tests share: between them they hold every form of the language. */
 final class Texts {
@@ -23,6 +27,24 @@ final class Texts {
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
+    }
+
+    /** The samples, and the libraries that they use as far as the first blocks: the rest is more of the same. */
+    static List<String> samples() throws IOException {
+        List<String> out = new ArrayList<>();
+        Path samples = Path.of("..", "samples");
+        for (Path folder : List.of(samples, samples.resolve("library"))) {
+            try (Stream<Path> files = Files.list(folder)) {
+                for (Path p : files.filter(f -> f.toString().endsWith(".drive"))
+                        .sorted()
+                        .toList()) {
+                    String text = Files.readString(p);
+                    int end = folder.equals(samples) ? -1 : text.indexOf("\n}\n", 1000);
+                    out.add(end < 0 ? text : text.substring(0, end + 3));
+                }
+            }
+        }
+        return out;
     }
 
     static FileId id(String name) {

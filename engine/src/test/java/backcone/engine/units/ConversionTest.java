@@ -6,8 +6,10 @@ import static org.assertj.core.api.Assertions.within;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.util.ArrayList;
+import java.util.HashSet;
 import java.util.List;
 import java.util.Random;
+import java.util.Set;
 import javax.measure.MetricPrefix;
 import javax.measure.quantity.Acceleration;
 import javax.measure.quantity.Temperature;
@@ -126,6 +128,25 @@ class ConversionTest {
                 newton.divide(MetricPrefix.MILLI(Units.METRE).multiply(MetricPrefix.MICRO(Units.METRE))),
                 pascal));
         p.add(new Pair("kg*m^2", "N*m*s^2", kilogram.multiply(metre.pow(2)), newtonMetre.multiply(second.pow(2))));
+        p.add(new Pair("µm", "m", MetricPrefix.MICRO(Units.METRE), metre));
+        p.add(new Pair("\u03BCm", "m", MetricPrefix.MICRO(Units.METRE), metre));
+        p.add(new Pair("µin", "m", MetricPrefix.MICRO(USCustomary.INCH), metre));
+        p.add(new Pair("L", "m^3", Units.LITRE, metre.pow(3)));
+        p.add(new Pair("ml", "m^3", MetricPrefix.MILLI(Units.LITRE), metre.pow(3)));
+        p.add(new Pair("mL", "m^3", MetricPrefix.MILLI(Units.LITRE), metre.pow(3)));
+        p.add(new Pair("°", "rad", NonSI.DEGREE_ANGLE, Units.RADIAN));
+        p.add(new Pair("mrad", "rad", MetricPrefix.MILLI(Units.RADIAN), Units.RADIAN));
+        p.add(new Pair("urad", "rad", MetricPrefix.MICRO(Units.RADIAN), Units.RADIAN));
+        p.add(new Pair("turn", "rad", USCustomary.REVOLUTION, Units.RADIAN));
+        p.add(new Pair("kHz", "1/s", MetricPrefix.KILO(Units.HERTZ), second.inverse()));
+        p.add(new Pair("daN", "N", MetricPrefix.DECA(Units.NEWTON), newton));
+        p.add(new Pair("kp", "N", kgf, newton));
+        p.add(new Pair("mbar", "Pa", MetricPrefix.HECTO(Units.PASCAL), pascal));
+        p.add(new Pair("kPa", "Pa", MetricPrefix.KILO(Units.PASCAL), pascal));
+        p.add(new Pair("kNm", "N*m", MetricPrefix.KILO(Units.NEWTON).multiply(metre), newtonMetre));
+        p.add(new Pair("Nmm", "N*m", newton.multiply(MetricPrefix.MILLI(Units.METRE)), newtonMetre));
+        p.add(new Pair("MJ", "J", MetricPrefix.MEGA(Units.JOULE), joule));
+        p.add(new Pair("MW", "W", MetricPrefix.MEGA(Units.WATT), watt));
         p.add(new Pair("%", "1", Units.PERCENT, tech.units.indriya.AbstractUnit.ONE));
         return p;
     }
@@ -137,6 +158,23 @@ class ConversionTest {
             tests.add(DynamicTest.dynamicTest(p.unit + " in " + p.of, () -> compare(p)));
         }
         return tests;
+    }
+
+    /** Hardness and grades are no multiples of anything, and cycles are counted; all other words are compared. */
+    @Test
+    void noWordOfTheTableIsLeftOut() {
+        Set<String> compared = new HashSet<>(List.of("K", "degC", "degF", "°C", "°F", "cycles"));
+        for (Pair p : pairs()) {
+            compared.add(p.unit);
+            compared.add(p.of);
+        }
+        Set<String> scales = Set.of("HBW", "HB", "HV", "HRC", "HR15N", "ISO17485", "ISO1328", "AGMA_Q", "AGMA_A");
+        UnitTable table = UnitTable.load();
+        assertThat(table.words().stream()
+                        .filter(w -> table.instead(w) == null)
+                        .filter(w -> !w.equals("s") && !scales.contains(w))
+                        .filter(w -> !compared.contains(w)))
+                .isEmpty();
     }
 
     private static void compare(Pair p) throws javax.measure.IncommensurableException {
@@ -159,6 +197,8 @@ class ConversionTest {
                     .isCloseTo(Units.CELSIUS.getConverterTo(kelvin).convert(v), within(1e-12));
             assertThat(unit("degF").toBase(v))
                     .isCloseTo(USCustomary.FAHRENHEIT.getConverterTo(kelvin).convert(v), within(1e-12));
+            assertThat(unit("°C").toBase(v)).isEqualTo(unit("degC").toBase(v));
+            assertThat(unit("°F").toBase(v)).isEqualTo(unit("degF").toBase(v));
         }
     }
 

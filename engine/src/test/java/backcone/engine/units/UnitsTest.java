@@ -357,7 +357,7 @@ class UnitsTest {
                 assertThat(unit(w).text()).isEqualTo(w);
             }
         }
-        assertThat(table.words()).containsAll(List.of("mm", "%", "°", "'", "AGMA_Q", "in", "HB"));
+        assertThat(table.words()).containsAll(List.of("mm", "%", "°", "AGMA_Q", "in", "HB"));
         assertThat(UNITS.words()).isEqualTo(table.words());
     }
 
