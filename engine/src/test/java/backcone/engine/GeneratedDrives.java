@@ -16,7 +16,8 @@ import java.util.stream.Stream;
 /** Texts of drives for properties that hold for any drive: the samples, the samples with other numbers, and made-up trains. */
 final class GeneratedDrives {
     private static final Path SAMPLES = Path.of("..", "samples");
-    private static final Pattern LOAD = Pattern.compile("(?m)^(\\s*(?:[\\w]+\\.)*(?:power|torque|peak_torque)\\s*=\\s*)([0-9.]+)");
+    private static final Pattern LOAD =
+            Pattern.compile("(?m)^(\\s*(?:[\\w]+\\.)*(?:power|torque|peak_torque)\\s*=\\s*)([0-9.]+)");
     private static final Pattern SIZE = Pattern.compile(
             "(?m)^(\\s*(?:outer_module|normal_module|face_width|power|torque|speed)\\s*=\\s*)([0-9.]+)( +[a-zA-Z*/]+)");
     private static final Pattern TEETH = Pattern.compile("(?m)^(\\s*teeth\\s*=\\s*)([0-9]+)$");
@@ -75,8 +76,7 @@ final class GeneratedDrives {
             double v = Double.parseDouble(m.group(2)) * (0.85 + 0.3 * random.nextDouble());
             return Matcher.quoteReplacement(m.group(1) + String.format(Locale.ROOT, "%.4g", v) + m.group(3));
         });
-        return TEETH.matcher(sized)
-                .replaceAll(m -> m.group(1) + (Integer.parseInt(m.group(2)) + random.nextInt(4)));
+        return TEETH.matcher(sized).replaceAll(m -> m.group(1) + (Integer.parseInt(m.group(2)) + random.nextInt(4)));
     }
 
     /** Straight bevel and spur stages one behind the other, by the classic method. */
@@ -87,8 +87,10 @@ final class GeneratedDrives {
         b.append("drive train \"made up\" {\n");
         b.append("  tight_limit = ").append(3 + random.nextInt(20)).append(" %\n");
         b.append("  case rated {\n    at = s0\n    ");
-        b.append(random.nextBoolean() ? "power = " + number(random, 0.5, 30) + " kW" : "torque = "
-                        + number(random, 20, 400) + " N*m")
+        b.append(
+                        random.nextBoolean()
+                                ? "power = " + number(random, 0.5, 30) + " kW"
+                                : "torque = " + number(random, 20, 400) + " N*m")
                 .append("\n    basis = measured_load\n    service_factor = ")
                 .append(number(random, 1, 1.6))
                 .append("\n    required_life = ")
@@ -102,7 +104,9 @@ final class GeneratedDrives {
             b.append("  shaft s").append(i + 1).append("\n");
             b.append(bevel ? "  bevel p" : "  cylindrical p").append(i).append(" {\n");
             if (bevel) {
-                b.append("    tooth_form = straight\n    outer_module = ").append(m).append(" mm\n");
+                b.append("    tooth_form = straight\n    outer_module = ")
+                        .append(m)
+                        .append(" mm\n");
                 b.append("    proportions = traditional\n");
                 width = Math.min(width, 6 * Integer.parseInt(m));
             } else {
@@ -110,7 +114,9 @@ final class GeneratedDrives {
             }
             b.append("    face_width = ").append(width).append(" mm\n");
             b.append("    pressure_angle = 20 deg\n    tooth_system = full_depth_20\n");
-            b.append("    tooth_making = ").append(bevel ? "formed" : "generated").append("\n");
+            b.append("    tooth_making = ")
+                    .append(bevel ? "formed" : "generated")
+                    .append("\n");
             b.append("    finish_class = carefully_cut\n");
             member(b, "pinion", i, 17 + random.nextInt(8), bevel, "steel_42CrMo4_265");
             member(b, "wheel", i + 1, 30 + random.nextInt(60), bevel, "steel_34CrMo4_225");

@@ -114,7 +114,8 @@ class HandbookMutationTest {
             add(id, Objects.requireNonNull(Handbook.text(id)));
         }
         try (Stream<Path> files = Files.list(WORKED)) {
-            for (Path p : files.filter(f -> f.toString().endsWith(".method")).sorted().toList()) {
+            for (Path p :
+                    files.filter(f -> f.toString().endsWith(".method")).sorted().toList()) {
                 add(new FileId("worked/" + p.getFileName()), Files.readString(p));
             }
         }
@@ -259,9 +260,10 @@ class HandbookMutationTest {
     private String report(Map<Mutant, Fate> fates) {
         StringBuilder b = new StringBuilder();
         b.append("# Turned signs in the handbook\n\n");
-        b.append("Written by `HandbookMutationTest` with `-Dbackcone.mutants=all`: in every equation each `*` is turned into `/`"
-                + " and each `/` into `*`, one at a time.\nA turned sign is noticed where dimensions no longer fit or a worked"
-                + " example is no longer met.\n\n");
+        b.append(
+                "Written by `HandbookMutationTest` with `-Dbackcone.mutants=all`: in every equation each `*` is turned into `/`"
+                        + " and each `/` into `*`, one at a time.\nA turned sign is noticed where dimensions no longer fit or a worked"
+                        + " example is no longer met.\n\n");
         b.append("| file | signs | noticed by dimensions | by examples | unnoticed |\n|---|---|---|---|---|\n");
         Map<String, int[]> rows = new LinkedHashMap<>();
         int[] total = new int[4];

@@ -276,7 +276,9 @@ class PropertiesTest {
                 b.append(
                         bare.indexOf('"') >= 0 || bare.indexOf('#') >= 0
                                 ? bare
-                                : bare.replace(" = ", " ".repeat(random.nextInt(3)) + "=" + " ".repeat(random.nextInt(3)))
+                                : bare.replace(
+                                                " = ",
+                                                " ".repeat(random.nextInt(3)) + "=" + " ".repeat(random.nextInt(3)))
                                         .replace(" {", " ".repeat(random.nextInt(3)) + "{"));
                 switch (random.nextInt(8)) {
                     case 0 -> b.append(" \n");
@@ -373,10 +375,13 @@ class PropertiesTest {
             double tight = tightLimit(t);
             for (RequirementAnswer r : requirements(analyse(t))) {
                 String what = t.path() + " " + r.id() + " " + r.value() + " " + r.comparison() + " " + r.required();
-                if (Double.isNaN(r.value()) || (Double.isNaN(r.required()) && !r.comparison().equals("=="))) {
+                if (Double.isNaN(r.value())
+                        || (Double.isNaN(r.required()) && !r.comparison().equals("=="))) {
                     assertThat(r.state()).as(what).isEqualTo(State.OPEN);
                     assertThat(r.margin()).as(what).isNaN();
-                    assertThat(r.missing().isEmpty() && r.fault() == null).as(what).isFalse();
+                    assertThat(r.missing().isEmpty() && r.fault() == null)
+                            .as(what)
+                            .isFalse();
                     continue;
                 }
                 double margin = margin(r);
@@ -385,19 +390,25 @@ class PropertiesTest {
                         .as(what)
                         .isEqualTo(r.state() == State.OUTSIDE);
                 switch (r.state()) {
-                    case CLEAR -> assertThat(margin).as(what).isGreaterThanOrEqualTo(r.rating() == null ? -1e-8 : tight - 1e-8);
+                    case CLEAR ->
+                        assertThat(margin).as(what).isGreaterThanOrEqualTo(r.rating() == null ? -1e-8 : tight - 1e-8);
                     case TIGHT -> assertThat(margin).as(what).isBetween(-1e-8, tight);
                     case SHORT -> assertThat(margin).as(what).isNegative();
                     case ACCEPTED -> {
                         assertThat(margin).as(what).isNegative();
-                        assertThat(r.value()).isGreaterThanOrEqualTo(Objects.requireNonNull(r.accepted()).accepted());
-                        assertThat(Objects.requireNonNull(r.accepted()).expired()).isFalse();
+                        assertThat(r.value())
+                                .isGreaterThanOrEqualTo(
+                                        Objects.requireNonNull(r.accepted()).accepted());
+                        assertThat(Objects.requireNonNull(r.accepted()).expired())
+                                .isFalse();
                     }
                     case OUTSIDE -> {}
                     case OPEN -> assertThat(r.fault()).as(what).isNotNull();
                 }
                 if (!Double.isNaN(r.loadReserve()) && Math.abs(margin) > 1e-6) {
-                    assertThat(r.loadReserve() >= 1).as(what + " reserve " + r.loadReserve()).isEqualTo(margin >= 0);
+                    assertThat(r.loadReserve() >= 1)
+                            .as(what + " reserve " + r.loadReserve())
+                            .isEqualTo(margin >= 0);
                 }
             }
         }
@@ -408,8 +419,8 @@ class PropertiesTest {
         return switch (r.comparison()) {
             case ">=" -> r.value() / r.required() - 1;
             case "<=" -> r.required() / r.value() - 1;
-            case "between" -> Math.min(r.value() - r.required(), r.upper() - r.value())
-                    / ((r.upper() - r.required()) / 2);
+            case "between" ->
+                Math.min(r.value() - r.required(), r.upper() - r.value()) / ((r.upper() - r.required()) / 2);
             default -> 0;
         };
     }
